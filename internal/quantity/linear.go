@@ -1,0 +1,144 @@
+package quantity
+
+import (
+	"slices"
+
+	"github.com/shopspring/decimal"
+)
+
+// A Variable is one thing that is known only between two ends: a missing component of one ingredient, a stated range, a
+// fatty acid whose group is open. Index orders variables and identifies them within a recipe.
+type Variable struct {
+	Index     int
+	Low, High Ratio
+	Central   Ratio
+	Typical   bool // Central is set
+}
+
+type term struct {
+	v *Variable
+	c Ratio
+}
+
+// A Linear is an exact value plus multiples of variables. Because variables stay apart until the end, what is uncertain
+// in two places but is the same thing cancels instead of adding up.
+type Linear struct {
+	Known Ratio
+	terms []term // by index, no zero coefficients
+}
+
+// Exactly is a linear form without uncertainty.
+func Exactly(r Ratio) Linear { return Linear{Known: r} }
+
+// Of is the variable itself.
+func Of(v *Variable) Linear {
+	if v.Low.Cmp(v.High) == 0 {
+		return Linear{Known: v.Low}
+	}
+	return Linear{terms: []term{{v, FromInt(1)}}}
+}
+
+// Determined reports that nothing is uncertain.
+func (l Linear) Determined() bool { return len(l.terms) == 0 }
+
+// Add is l + m.
+func (l Linear) Add(m Linear) Linear {
+	s := Linear{Known: l.Known.Add(m.Known)}
+	switch {
+	case len(m.terms) == 0:
+		s.terms = l.terms
+	case len(l.terms) == 0:
+		s.terms = m.terms
+	default:
+		s.terms = mergeTerms(l.terms, m.terms)
+	}
+	return s
+}
+
+func mergeTerms(a, b []term) []term {
+	out := make([]term, 0, len(a)+len(b))
+	for len(a) > 0 && len(b) > 0 {
+		switch {
+		case a[0].v.Index < b[0].v.Index:
+			out, a = append(out, a[0]), a[1:]
+		case a[0].v.Index > b[0].v.Index:
+			out, b = append(out, b[0]), b[1:]
+		default:
+			if c := a[0].c.Add(b[0].c); !c.IsZero() {
+				out = append(out, term{a[0].v, c})
+			}
+			a, b = a[1:], b[1:]
+		}
+	}
+	return append(append(out, a...), b...)
+}
+
+// Sub is l - m.
+func (l Linear) Sub(m Linear) Linear { return l.Add(m.Mul(FromInt(-1))) }
+
+// Mul is l multiplied by an exact number.
+func (l Linear) Mul(r Ratio) Linear {
+	if r.IsZero() {
+		return Linear{}
+	}
+	s := Linear{Known: l.Known.Mul(r)}
+	if len(l.terms) > 0 {
+		s.terms = make([]term, len(l.terms))
+		for i, t := range l.terms {
+			s.terms[i] = term{t.v, t.c.Mul(r)}
+		}
+	}
+	return s
+}
+
+// Times is l multiplied by a decimal.
+func (l Linear) Times(d decimal.Decimal) Linear { return l.Mul(FromDecimal(d)) }
+
+// Low is the least value over all variables, High the greatest.
+func (l Linear) Low() Ratio { return l.end(true) }
+
+// High is the greatest value over all variables.
+func (l Linear) High() Ratio { return l.end(false) }
+
+func (l Linear) end(low bool) Ratio {
+	s := l.Known
+	for _, t := range l.terms {
+		x := t.v.High
+		if low == (t.c.Sign() > 0) {
+			x = t.v.Low
+		}
+		s = s.Add(t.c.Mul(x))
+	}
+	return s
+}
+
+// Central is the value where every uncertain part has a typical one.
+func (l Linear) Central() (Ratio, bool) {
+	s := l.Known
+	for _, t := range l.terms {
+		if !t.v.Typical {
+			return Ratio{}, false
+		}
+		s = s.Add(t.c.Mul(t.v.Central))
+	}
+	return s, true
+}
+
+// Variables lists what the form still depends on, in order.
+func (l Linear) Variables() []*Variable {
+	out := make([]*Variable, len(l.terms))
+	for i, t := range l.terms {
+		out[i] = t.v
+	}
+	return out
+}
+
+// Merge orders and unites lists of variables.
+func Merge(lists ...[]*Variable) []*Variable {
+	var all []*Variable
+	for _, l := range lists {
+		all = append(all, l...)
+	}
+	slices.SortFunc(all, func(a, b *Variable) int { return a.Index - b.Index })
+	return slices.CompactFunc(all, func(a, b *Variable) bool { return a.Index == b.Index })
+}

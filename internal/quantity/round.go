@@ -1,0 +1,106 @@
+package quantity
+
+import (
+	"math/big"
+
+	"github.com/shopspring/decimal"
+)
+
+// Ties says where an amount exactly half-way between two steps goes.
+type Ties string
+
+// Rules for ties. The empty value is TiesUp.
+const (
+	TiesUp   Ties = "up"
+	TiesEven Ties = "even"
+)
+
+// Round gives the multiple of step (above zero) nearest to r. It decides on the exact value.
+func (r Ratio) Round(step decimal.Decimal, ties Ties) decimal.Decimal {
+	n, d := r.fraction()
+	sn, sd := FromDecimal(step).fraction()
+	// r/step = (n·sd) / (d·sn)
+	num := new(big.Int).Mul(n, sd)
+	den := new(big.Int).Mul(d, sn)
+	k := nearest(num, den, ties)
+	return normal(decimal.NewFromBigInt(k, 0).Mul(step))
+}
+
+func nearest(num, den *big.Int, ties Ties) *big.Int {
+	k, m := new(big.Int).DivMod(num, den, new(big.Int))
+	switch twice := m.Lsh(m, 1); twice.Cmp(den) {
+	case 1:
+		k.Add(k, one)
+	case 0:
+		if ties != TiesEven || k.Bit(0) == 1 {
+			k.Add(k, one)
+		}
+	}
+	return k
+}
+
+// RoundFigures gives r with the stated number of significant figures; zero stays zero.
+func (r Ratio) RoundFigures(figures int, ties Ties) decimal.Decimal {
+	if r.IsZero() {
+		return decimal.Zero
+	}
+	e := r.magnitude() - int32(figures) + 1
+	return r.Round(decimal.New(1, e), ties)
+}
+
+// magnitude is the power of ten of the leading digit.
+func (r Ratio) magnitude() int32 {
+	n, d := r.fraction()
+	n = new(big.Int).Abs(n)
+	e := int32(len(n.Text(10)) - len(d.Text(10)))
+	if cmpPow(n, d, e) < 0 {
+		e--
+	}
+	return e
+}
+
+// cmpPow compares n/d with 10^e.
+func cmpPow(n, d *big.Int, e int32) int {
+	if e >= 0 {
+		return n.Cmp(new(big.Int).Mul(d, Pow10(e)))
+	}
+	return new(big.Int).Mul(n, Pow10(-e)).Cmp(d)
+}
+
+// ShownDigits is how many significant digits Exact shows of a number that does not end before.
+const ShownDigits = 20
+
+// An Exact is a ratio as a decimal: complete, or its first 20 significant digits with the ratio beside it.
+type Exact struct {
+	Decimal   decimal.Decimal
+	Truncated bool
+	Num, Den  string // set when truncated
+}
+
+// Exact writes the ratio out.
+func (r Ratio) Exact() Exact {
+	if r.IsZero() {
+		return Exact{}
+	}
+	n, d := r.fraction()
+	e := r.magnitude() - ShownDigits + 1
+	num, den := n, d
+	if e < 0 {
+		num = new(big.Int).Mul(n, Pow10(-e))
+	} else {
+		den = new(big.Int).Mul(d, Pow10(e))
+	}
+	q, m := new(big.Int).QuoRem(num, den, new(big.Int))
+	x := Exact{Decimal: normal(decimal.NewFromBigInt(q, e))}
+	if m.Sign() != 0 {
+		g := new(big.Int).GCD(nil, nil, new(big.Int).Abs(n), d)
+		x.Truncated = true
+		x.Num, x.Den = new(big.Int).Quo(n, g).String(), new(big.Int).Quo(d, g).String()
+	}
+	return x
+}
+
+// Brief is the ratio to the stated number of decimals, for people; never for a decision.
+func (r Ratio) Brief(decimals int32) string {
+	return r.Round(decimal.New(1, -decimals), TiesUp).String()
+}

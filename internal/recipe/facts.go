@@ -1,0 +1,41 @@
+package recipe
+
+// A FactKind is the form of a fact's value.
+type FactKind uint8
+
+// Forms of a fact.
+const (
+	YesNo FactKind = iota
+	OneOf
+	Measure
+)
+
+// A FactRule describes one fact of the closed register.
+type FactRule struct {
+	Name   string
+	Kind   FactKind
+	Values []string // of OneOf
+	Unit   string   // of Measure
+	Says   string
+}
+
+// Facts is the closed register. An unstated fact is unknown, never false; what a market takes instead stands in its rules.
+var Facts = []FactRule{
+	{Name: "meal type", Kind: OneOf, Values: []string{"individual food", "main dish", "meal", "prepackaged meal"}, Says: "what the food is sold as"},
+	{Name: "intended for", Kind: OneOf, Values: []string{"general population", "children 1 to 3", "infants", "pregnant or lactating"}, Says: "for whom the food is made"},
+	{Name: "annual food sales", Kind: OneOf, Values: []string{"10 million or more", "under 10 million"}, Says: "the maker's yearly food sales in the market's currency, where transition dates depend on them"},
+	{Name: "alcohol by volume", Kind: Measure, Unit: "%", Says: "ethanol, per cent by volume"},
+	{Name: "naturally free", Kind: YesNo, Says: "foods of this kind are free of or low in the nutrient without special processing"},
+	{Name: "specially processed", Kind: YesNo, Says: "the nutrient was lowered by processing, alteration or formulation"},
+	{Name: "fat ingredients added", Kind: YesNo, Says: "an added ingredient is a fat or generally understood to contain fat"},
+	{Name: "saturated fat ingredients added", Kind: YesNo, Says: "an added ingredient is generally understood to contain saturated fat"},
+	{Name: "cholesterol ingredients added", Kind: YesNo, Says: "an added ingredient is generally understood to contain cholesterol"},
+	{Name: "sugars added", Kind: YesNo, Says: "sugars, or an ingredient used for its sweetening, are added"},
+	{Name: "salt added", Kind: YesNo, Says: "salt or another sodium-bearing ingredient is added"},
+	{Name: "sweetening ingredients", Kind: YesNo, Says: "the food has sweeteners or sweetening ingredients"},
+	{Name: "vitamins or minerals added", Kind: YesNo, Says: "vitamins or minerals are added as such"},
+	{Name: "sold to", Kind: OneOf, Values: []string{"final consumer", "other business"}, Says: "who buys the food"},
+	{Name: "table-top sweetener", Kind: YesNo, Says: "the food is a table-top sweetener"},
+	{Name: "beverage", Kind: YesNo, Says: "the food is a drink"},
+	{Name: "trans origin", Kind: OneOf, Values: []string{"ruminant", "industrial"}, Says: "where all trans fatty acids of the product come from"},
+}
