@@ -1,0 +1,74 @@
+package rulebook
+
+import (
+	"slices"
+	"strings"
+)
+
+// A Rule is one rule of a kind with its versions, oldest first.
+type Rule[T any] struct {
+	ID       string              `json:"id"`
+	ForEach  []map[string]string `json:"for each,omitzero"` // expanded by the loader
+	Versions []Version[T]        `json:"versions"`
+}
+
+// A Version is one dated wording of a rule.
+type Version[T any] struct {
+	Head `json:",inline"`
+	Body T `json:",inline"`
+}
+
+// Name is the last segment of a rule's identifier.
+func Name(id string) string { return id[strings.LastIndexByte(id, '/')+1:] }
+
+// A Book is a loaded, linted rule set. It is never changed after Load.
+type Book struct {
+	Version string // of the set, for people
+	Digest  string // "sha256:" over all files
+	markets map[string]*Rules
+
+	Presumptions []Rule[Presumption]
+	Origins      []Rule[Origin]
+}
+
+// Rules are all rules of one market.
+type Rules struct {
+	Market           Market
+	Definitions      []Rule[Definition]
+	Energy           []Rule[Energy]
+	References       []Rule[Reference]
+	Roundings        []Rule[Rounding]
+	Declarations     []Rule[Declaration]
+	ReferenceAmounts []Rule[ReferenceAmount]
+	Claims           []Rule[Claim]
+	Disclosures      []Rule[Disclosure]
+	Limits           []Rule[Limit]
+}
+
+// Jurisdictions lists the markets of the set, sorted.
+func (b *Book) Jurisdictions() []string {
+	out := make([]string, 0, len(b.markets))
+	for j := range b.markets {
+		out = append(out, j)
+	}
+	slices.Sort(out)
+	return out
+}
+
+// Rules gives one market's rules, all versions.
+func (b *Book) Rules(jurisdiction string) (*Rules, bool) {
+	r, ok := b.markets[jurisdiction]
+	return r, ok
+}
+
+// ListsClaim tells whether any market of the set lists a claim of this shared name.
+func (b *Book) ListsClaim(name string) bool {
+	for _, m := range b.markets {
+		for _, c := range m.Claims {
+			if Name(c.ID) == name {
+				return true
+			}
+		}
+	}
+	return false
+}

@@ -1,0 +1,182 @@
+package rulebook
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/quantity"
+)
+
+func (c *checker) declarations() {
+	bodies(c.m.Declarations, func(id, field string, d *Declaration) {
+		bad := func(f, format string, args ...any) { c.bad("declaration", id, field+f, format, args...) }
+		for _, lang := range c.m.Market.Languages {
+			if _, ok := d.Number[lang]; !ok {
+				bad("/number", "says nothing about %q", lang)
+			}
+		}
+		seen := map[string]bool{}
+		for i := range d.Lines {
+			line, at := &d.Lines[i], fmt.Sprintf("/lines/%d", i)
+			if seen[line.Quantity] {
+				bad(at, "the quantity %s has a line already", line.Quantity)
+			}
+			seen[line.Quantity] = true
+			c.line(id, field+at, line)
+		}
+		for i, s := range d.Statements {
+			c.statement("declaration", id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
+		}
+	})
+}
+
+func (c *checker) line(id, at string, line *Line) {
+	bad := func(f, format string, args ...any) { c.bad("declaration", id, at+f, format, args...) }
+	c.quantity("declaration", id, at+"/quantity", line.Quantity, quantity.NoDimension)
+	if _, ok := food.Lookup(line.Component); !ok {
+		bad("/component", "%q is no component of the register", line.Component)
+	}
+	if !slices.Contains([]string{"mandatory", "optional", "forbidden"}, line.Presence) {
+		bad("/presence", "%q is none of mandatory, optional, forbidden", line.Presence)
+	}
+	if !slices.Contains([]string{"shown", "optional", "none"}, line.Percent) {
+		bad("/percent", "%q is none of shown, optional, none", line.Percent)
+	}
+	if u, ok := quantity.ParseUnit(line.Unit); line.Unit != "" && (!ok || u.Dimension() != c.dims[line.Quantity]) {
+		bad("/unit", "%q does not fit the quantity", line.Unit)
+	}
+	for _, lang := range c.m.Market.Languages {
+		if len(line.Terms[lang]) == 0 {
+			bad("/terms", "has no words in %q", lang)
+		}
+	}
+	node := "line/" + line.Quantity
+	c.condition("declaration", id, at+"/mandatory if", node, line.MandatoryIf)
+	c.condition("declaration", id, at+"/leave out if", node, line.LeaveOutIf)
+}
+
+func (c *checker) statement(kind, id, at, node string, s Statement) {
+	c.words(kind, id, at+"/text", s.Text)
+	if !slices.Contains([]string{"", "mandatory", "optional"}, s.Presence) {
+		c.bad(kind, id, at+"/presence", "%q is neither mandatory nor optional", s.Presence)
+	}
+	c.condition(kind, id, at+"/if", node, s.If)
+}
+
+func (c *checker) claims() {
+	bodies(c.m.Claims, func(id, field string, cl *Claim) {
+		node := "claim/" + Name(id)
+		c.words("claims", id, field+"/name", cl.Name)
+		if cl.Condition == nil && !cl.Prohibited {
+			c.bad("claims", id, field+"/condition", "is missing")
+		}
+		if cl.Condition.Relative() != cl.Against {
+			c.bad("claims", id, field+"/needs reference food", "must be true exactly when the condition compares with one")
+		}
+		c.condition("claims", id, field+"/condition", node, cl.Condition)
+		for i, s := range cl.Statements {
+			c.statement("claims", id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
+		}
+		for _, q := range cl.NeedsLines {
+			c.quantity("claims", id, field+"/mandatory lines", q, quantity.NoDimension)
+		}
+		c.stated(id, field+"/stated", cl.Stated)
+	})
+}
+
+func (c *checker) stated(id, field string, s *Stated) {
+	if s == nil {
+		return
+	}
+	for _, q := range sorted(s.Of) {
+		c.quantity("claims", id, field+"/of", q, quantity.NoDimension)
+	}
+	if s.As != "reduction" && s.As != "increase" && s.As != "amount" {
+		c.bad("claims", id, field+"/as", "%q is none of reduction, increase, amount", s.As)
+	}
+}
+
+func (c *checker) limits() {
+	bodies(c.m.Disclosures, func(id, field string, d *Disclosure) {
+		c.quantity("disclosure", id, field+"/quantity", d.Quantity, quantity.NoDimension)
+		if d.Effect != "statement" && d.Effect != "bars" {
+			c.bad("disclosure", id, field+"/effect", "%q is neither statement nor bars", d.Effect)
+		}
+		if d.Condition == nil {
+			c.bad("disclosure", id, field+"/condition", "is missing")
+		}
+		c.condition("disclosure", id, field+"/when", "disclosure/"+Name(id), d.When)
+		c.condition("disclosure", id, field+"/condition", "disclosure/"+Name(id), d.Condition)
+	})
+	bodies(c.m.Limits, func(id, field string, l *Limit) {
+		if !slices.Contains([]string{"refused", "warning", "note"}, l.Severity) {
+			c.bad("limits", id, field+"/severity", "%q is none of refused, warning, note", l.Severity)
+		}
+		if l.Condition == nil || !plainName(l.Code) {
+			c.bad("limits", id, field, "needs a condition and a code")
+		}
+		c.words("limits", id, field+"/says", l.Says)
+		c.condition("limits", id, field+"/where", "limit/"+Name(id), l.Where)
+		c.condition("limits", id, field+"/condition", "limit/"+Name(id), l.Condition)
+	})
+}
+
+// cycles walks the graph of what depends on what and reports one cycle.
+func (c *checker) cycles() {
+	const (
+		open = 1
+		done = 2
+	)
+	state := map[string]int{}
+	var path []string
+	var visit func(string) bool
+	visit = func(n string) bool {
+		switch state[n] {
+		case done:
+			return true
+		case open:
+			c.bad("claims", "", "", "rules depend on each other in a circle: %s", strings.Join(append(path, n), " -> "))
+			return false
+		}
+		state[n] = open
+		path = append(path, n)
+		for _, d := range c.deps[n] {
+			if !visit(d) {
+				return false
+			}
+		}
+		path = path[:len(path)-1]
+		state[n] = done
+		return true
+	}
+	for _, n := range sorted(c.deps) {
+		if !visit(n) {
+			return
+		}
+	}
+}
+
+func (l *loader) presumptions() {
+	bodies(l.book.Presumptions, func(id, field string, p *Presumption) {
+		file := "practice/presumptions.json"
+		for _, tag := range p.Components {
+			if _, ok := food.Lookup(tag); !ok {
+				l.problem(file, id, field+"/components", "%q is no component of the register", tag)
+			}
+		}
+		if !slices.Contains([]string{"zero", "equal to", "at most"}, p.Take) {
+			l.problem(file, id, field+"/take", "%q is none of zero, equal to, at most", p.Take)
+		}
+		if _, ok := food.Lookup(p.Of); (p.Take != "zero") != ok {
+			l.problem(file, id, field+"/of", "%q must be a component exactly when something other than zero is taken", p.Of)
+		}
+		if (p.Take == "at most") != (p.Share != nil) {
+			l.problem(file, id, field+"/share", "goes with at most, and only with it")
+		}
+		if p.Reason == "" {
+			l.problem(file, id, field+"/reason", "is empty")
+		}
+	})
+}

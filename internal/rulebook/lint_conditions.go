@@ -1,0 +1,125 @@
+package rulebook
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/quantity"
+)
+
+// A Per is a parsed basis: an amount of the food, of energy, or of a quantity.
+type Per struct {
+	Name     string          // "serving", "reference amount", "package"; else ""
+	Amount   quantity.Amount // otherwise: 100 g, 100 mL, 100 kcal, 1 MJ as 1000 kJ
+	Quantity string          // "fat" in "100 g fat"; "" is the food
+}
+
+// ParsePer reads a basis: "serving", "reference amount", "package", "100 g", "50 g", "100 mL", "100 kcal", "1 MJ",
+// "100 g fat", "100 g fatty acids".
+func ParsePer(s string) (Per, error) {
+	switch s {
+	case "serving", "reference amount", "package":
+		return Per{Name: s}, nil
+	case "1 MJ":
+		return Per{Amount: quantity.Amount{Value: decimal.New(1000, 0), Unit: quantity.Kilojoule}}, nil
+	}
+	words := strings.SplitN(s, " ", 3)
+	if len(words) < 2 {
+		return Per{}, fmt.Errorf("%q is no basis", s)
+	}
+	a, err := quantity.ParseAmount(words[0] + " " + words[1])
+	if err != nil || !a.Value.IsPositive() || a.Unit.Dimension() == quantity.Percent {
+		return Per{}, fmt.Errorf("%q is no basis", s)
+	}
+	p := Per{Amount: a}
+	if len(words) == 3 {
+		p.Quantity = strings.ReplaceAll(words[2], " ", "-")
+	}
+	return p, nil
+}
+
+// Shares are the denominators a comparison can name besides bases.
+var Shares = []string{"share of energy", "share of fatty acids", "share of fat", "share of reference value"}
+
+func (c *checker) depend(from, on string) {
+	if !slices.Contains(c.deps[from], on) {
+		c.deps[from] = append(c.deps[from], on)
+	}
+}
+
+// condition checks one condition that the result of node depends on.
+func (c *checker) condition(kind, id, field, node string, cond *Condition) {
+	cond.Walk(func(p *Condition) {
+		bad := func(format string, args ...any) { c.bad(kind, id, field, format, args...) }
+		switch p.Op {
+		case OpCompare:
+			c.compare(kind, id, field, node, p)
+		case OpDeclared:
+			c.quantity(kind, id, field, p.Name, quantity.NoDimension)
+			if p.Is == "" {
+				c.depend(node, "line/"+p.Name)
+			} else {
+				c.depend(node, "declared/"+p.Name)
+			}
+		case OpMeets:
+			c.meets(kind, id, field, node, p)
+		case OpCount:
+			if p.N < 1 || p.N > len(p.Parts) {
+				bad("%d of %d conditions cannot hold", p.N, len(p.Parts))
+			}
+		case OpAmount:
+			if len(p.Amounts) == 0 {
+				bad("reference amount is compared with nothing")
+			}
+		}
+	})
+}
+
+func (c *checker) meets(kind, id, field, node string, p *Condition) {
+	if !slices.ContainsFunc(c.m.Claims, func(r Rule[Claim]) bool { return r.ID == p.Name }) {
+		c.bad(kind, id, field, "%q is no claim of this market", p.Name)
+	}
+	if p.Subject == "" {
+		c.depend(node, "claim/"+Name(p.Name))
+	}
+}
+
+func (c *checker) compare(kind, id, field, node string, p *Condition) {
+	bad := func(format string, args ...any) { c.bad(kind, id, field, format, args...) }
+	dim := quantity.NoDimension
+	for _, q := range sorted(p.Of) {
+		c.quantity(kind, id, field, q, dim)
+		dim = c.dims[q]
+		c.depend(node, "quantity/"+q)
+	}
+	for _, s := range p.Per {
+		per, err := ParsePer(s)
+		if err != nil {
+			bad("%v", err)
+		}
+		if per.Quantity != "" {
+			c.quantity(kind, id, field, per.Quantity, quantity.Mass)
+		}
+	}
+	want := dim
+	switch {
+	case p.As != "" && !slices.Contains(Shares, p.As):
+		bad("%q is none of %s", p.As, strings.Join(Shares, ", "))
+	case p.As != "":
+		want = quantity.Percent
+	case p.Relation == ReducedBy || p.Relation == IncreasedBy:
+		want = quantity.Percent
+	}
+	if p.Relation != NotMore && p.Threshold.Unit.Dimension() != want {
+		bad("the threshold %s has the wrong dimension", p.Threshold)
+	}
+	if len(p.Per) == 0 && (p.As == "" || p.As == "share of reference value") && !p.Relation.Relative() {
+		bad("comparison has no basis")
+	}
+	if p.As == "share of fatty acids" {
+		c.quantity(kind, id, field, "fatty-acids", quantity.Mass)
+	}
+}

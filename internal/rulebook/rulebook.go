@@ -1,0 +1,301 @@
+// Package rulebook holds the law as data: rules by jurisdiction and kind, each with dated versions, a source, its force
+// and the evidence for it.
+//
+// Load reads a rule set and refuses one that fails lint. Book.At picks, for one market and one labelling date, the
+// versions that hold, and returns them as a Law. Nothing in this package knows any market: what differs between
+// markets stands in rules/.
+package rulebook
+
+import (
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/lipid"
+	"gramlaw/internal/quantity"
+)
+
+// A Source says where a rule stands, how well it is known and how binding it is.
+type Source struct {
+	Ref      string `json:"ref"`
+	Evidence string `json:"evidence"` // one of Evidences
+	Force    string `json:"force"`    // one of Forces
+	Seen     string `json:"seen,omitzero"`
+	Note     string `json:"note,omitzero"`
+}
+
+// Evidences, strongest first. What is derived takes the grade of its weakest input.
+var Evidences = []string{"official text", "secondary", "memory"}
+
+// Forces a rule can have.
+var Forces = []string{"law", "guidance", "enforcement policy", "practice"}
+
+// A Required is a date from which a version must be used, where the law staggers dates by a condition.
+type Required struct {
+	Date string     `json:"date"`
+	When *Condition `json:"when,omitzero"`
+}
+
+// A Head is what every version says of itself. Dates are yyyy-mm-dd; From is the first day of use, Until the first day
+// on which the version no longer holds.
+type Head struct {
+	From         string     `json:"from"`
+	RequiredFrom []Required `json:"required_from,omitzero"`
+	Until        string     `json:"until,omitzero"`
+	Edition      string     `json:"edition,omitzero"`
+	AppliesTo    string     `json:"applies_to,omitzero"` // one of AppliesTo
+	Source       Source     `json:"source"`
+}
+
+// Attachments a version's dates can have: what must have happened by then. Empty means labelled.
+var Attachments = []string{"", "labelled", "placed on the market", "manufactured"}
+
+// Words are prescribed or shown words by language.
+type Words map[string]string
+
+// In gives the words in a language, else in English, else in any language that comes first by name.
+func (w Words) In(language string) string {
+	if s, ok := w[language]; ok {
+		return s
+	}
+	if s, ok := w["en"]; ok {
+		return s
+	}
+	best := ""
+	for l := range w {
+		if best == "" || l < best {
+			best = l
+		}
+	}
+	return w[best]
+}
+
+// A Market is a jurisdiction's own page.
+type Market struct {
+	Jurisdiction string      `json:"jurisdiction"`
+	Name         string      `json:"name"`
+	Languages    []string    `json:"languages"`
+	Editions     []Edition   `json:"editions"`
+	Assumed      []Assumed   `json:"assumed"`
+	Unlisted     *Unlisted   `json:"unlisted_claims"`
+	Gaps         []string    `json:"gaps"` // what the rule set is known to lack
+	Caution      string      `json:"caution"`
+	DefaultBases []BasisRule `json:"bases"`
+}
+
+// An Edition is a reform whose versions go together on one label.
+type Edition struct {
+	Edition      string     `json:"edition"`
+	From         string     `json:"from"`
+	RequiredFrom []Required `json:"required_from,omitzero"`
+	Until        string     `json:"until,omitzero"`
+	AppliesTo    string     `json:"applies_to,omitzero"`
+	Source       Source     `json:"source"`
+}
+
+// Assumed is what a market takes for a fact nobody stated.
+type Assumed struct {
+	Fact string `json:"fact"`
+	Is   string `json:"is"` // "yes", "no" or the value
+	Why  string `json:"why"`
+}
+
+// Unlisted says what a law does with nutrition claims it does not list.
+type Unlisted struct {
+	Verdict string `json:"verdict"` // "refused" or "not-listed"
+	Says    Words  `json:"says"`
+	Source  Source `json:"source"`
+}
+
+// A BasisRule names a basis on which the declaration is given.
+type BasisRule struct {
+	Per      string `json:"per"`
+	Presence string `json:"presence"` // "mandatory" or "optional"
+}
+
+// A Definition says what a law counts as a quantity, by the first way whose data are complete.
+type Definition struct {
+	Name        Words  `json:"name"`
+	Unit        string `json:"unit"`                  // unit in which the quantity is shown
+	ExpressedAs string `json:"expressed as,omitzero"` // "fatty acid" (default) or "triglyceride", for predicate ways
+	EnergyAs    string `json:"energy as,omitzero"`    // quantity whose energy factor a share of energy uses
+	Ways        []Way  `json:"ways"`
+	Claimless   bool   `json:"no claims,omitzero"` // values from the last way cannot carry a claim
+}
+
+// A Way is one route to a quantity. Exactly one of Acids, Sum and Of is set.
+type Way struct {
+	Acids *lipid.Predicate           `json:"acids,omitzero"` // over a complete fatty-acid profile
+	Sum   map[string]decimal.Decimal `json:"sum,omitzero"`   // over components, by tagname
+	Of    map[string]decimal.Decimal `json:"of,omitzero"`    // over quantities of the same law
+	Note  string                     `json:"note,omitzero"`
+	class *lipid.Class
+}
+
+// Class is the compiled predicate of an Acids way.
+func (w *Way) Class() *lipid.Class { return w.class }
+
+// An Energy gives the energy of a food from its quantities.
+type Energy struct {
+	Name    Words    `json:"name"`
+	Unit    string   `json:"unit"`    // "kcal" or "kJ"
+	Methods []Method `json:"methods"` // the first is taken, the others are alternatives
+}
+
+// A Method is one lawful way to compute energy; factors are per gram of the quantity, in the unit of the rule.
+type Method struct {
+	Method  string                     `json:"method"`
+	Factors map[string]decimal.Decimal `json:"factors"`
+	Note    string                     `json:"note,omitzero"`
+}
+
+// A Reference is a daily value, reference intake or the like, by population.
+type Reference struct {
+	Quantity string                     `json:"quantity"`
+	Amounts  map[string]quantity.Amount `json:"amounts"` // by the values of the fact "intended for"
+}
+
+// A Rounding turns exact values of some quantities into declared ones.
+type Rounding struct {
+	Quantities []string      `json:"quantities"`
+	Bands      []Band        `json:"bands,omitzero"`
+	Ties       quantity.Ties `json:"ties"`
+	TiesSource *Source       `json:"ties source,omitzero"` // where the rule for ties has another source
+	Percent    *Percent      `json:"percent,omitzero"`
+}
+
+// A Band is one step of a rounding. The first band whose edge takes the value, and whose If holds, decides.
+type Band struct {
+	Below    *quantity.Amount `json:"below,omitzero"`   // value < edge
+	AtMost   *quantity.Amount `json:"at most,omitzero"` // value <= edge
+	If       *Condition       `json:"if,omitzero"`
+	Nearest  *quantity.Amount `json:"nearest,omitzero"`
+	Figures  int              `json:"figures,omitzero"`
+	Declare  *quantity.Amount `json:"declare,omitzero"`
+	LessThan *quantity.Amount `json:"less than,omitzero"`
+	Or       []Band           `json:"or,omitzero"` // what else the law allows here, in order of preference; no edges
+}
+
+// A Percent is the per cent of the reference value beside an amount.
+type Percent struct {
+	From   string     `json:"from"`        // "exact" or "declared": the amount it is computed from
+	Or     string     `json:"or,omitzero"` // the other one, where the law allows both
+	ZeroIf *Condition `json:"zero if,omitzero"`
+	Bands  []Band     `json:"bands"` // edges and steps in %
+}
+
+// A Declaration is the table of a market: lines in order, statements under it, how numbers look.
+type Declaration struct {
+	Title      Words             `json:"title"`
+	Number     map[string]Number `json:"number"` // by language
+	Lines      []Line            `json:"lines"`
+	Statements []Statement       `json:"statements,omitzero"`
+}
+
+// A Number is how numbers look in a language.
+type Number struct {
+	Decimal       string `json:"decimal"`
+	TrailingZeros bool   `json:"trailing zeros,omitzero"`
+	Unit          string `json:"unit"`      // "{} g" with {} for number and the unit following: "{n} {u}"
+	LessThan      string `json:"less than"` // "less than {n} {u}"
+}
+
+// A Line is one line of a declaration.
+type Line struct {
+	Quantity    string     `json:"quantity"`
+	Component   string     `json:"component"` // INFOODS tagname nearest to the line
+	Terms       Terms      `json:"terms"`
+	Level       int        `json:"level,omitzero"`
+	Unit        string     `json:"unit,omitzero"` // "" shows no amount
+	Percent     string     `json:"percent"`       // "shown", "optional" or "none"
+	Presence    string     `json:"presence"`      // "mandatory", "optional" or "forbidden"
+	MandatoryIf *Condition `json:"mandatory if,omitzero"`
+	LeaveOutIf  *Condition `json:"leave out if,omitzero"`
+	LeftOut     Words      `json:"left out says,omitzero"`
+}
+
+// Terms are the words a line may carry, by language, the preferred first.
+type Terms map[string][]string
+
+// A Statement is text that must or may stand somewhere.
+type Statement struct {
+	If       *Condition `json:"if,omitzero"`
+	Text     Words      `json:"text"`
+	Place    string     `json:"place,omitzero"`
+	Presence string     `json:"presence,omitzero"` // "mandatory" (default) or "optional"
+}
+
+// A ReferenceAmount is the amount of a category customarily eaten at one time.
+type ReferenceAmount struct {
+	Names   map[string][]string `json:"names"`
+	Amount  quantity.Amount     `json:"amount"`
+	Measure string              `json:"measure,omitzero"`
+}
+
+// A Claim is a listed claim: what it needs and what it brings with it.
+type Claim struct {
+	Name       Words       `json:"name"`
+	About      []string    `json:"about"` // subjects, for conditions that ask what is claimed about
+	Condition  *Condition  `json:"condition"`
+	Against    bool        `json:"needs reference food,omitzero"`
+	Statements []Statement `json:"statements,omitzero"`
+	NeedsLines []string    `json:"mandatory lines,omitzero"`
+	Stated     *Stated     `json:"stated,omitzero"`
+	Wordings   Wordings    `json:"wordings,omitzero"`
+	Prohibited bool        `json:"prohibited,omitzero"` // the law names the claim in order to forbid it
+}
+
+// Stated checks the number in a claim against the exact value: a claim of "30 %" less must be true.
+type Stated struct {
+	Of map[string]decimal.Decimal `json:"of"`
+	As string                     `json:"as"` // "reduction" or "amount"
+	// Per is the basis of a stated amount.
+	Per string `json:"per,omitzero"`
+}
+
+// Wordings are the listed words of a claim by language.
+type Wordings map[string][]string
+
+// A Disclosure is a level that makes claims carry a statement, or bars them.
+type Disclosure struct {
+	Quantity  string     `json:"quantity"`
+	Named     Words      `json:"named"` // how the statement names the quantity
+	When      *Condition `json:"when,omitzero"`
+	Condition *Condition `json:"condition"` // holds = level exceeded
+	Effect    string     `json:"effect"`    // "statement" or "bars"
+	Statement Words      `json:"statement,omitzero"`
+	Place     string     `json:"place,omitzero"`
+}
+
+// A Limit must hold for the product to be sold.
+type Limit struct {
+	Name      Words      `json:"name"`
+	Where     *Condition `json:"where,omitzero"`
+	Condition *Condition `json:"condition"`
+	Severity  string     `json:"severity"` // "refused", "warning" or "note"
+	Code      string     `json:"code"`
+	Says      Words      `json:"says"`
+}
+
+// A Presumption is what practice takes for a component nobody stated.
+type Presumption struct {
+	Components []string         `json:"components"`
+	Foods      Selection        `json:"foods"`
+	Take       string           `json:"take"`           // "zero", "equal to" or "at most"
+	Of         string           `json:"of,omitzero"`    // tagname, for "equal to" and "at most"
+	Share      *quantity.Amount `json:"share,omitzero"` // per cent of Of, for "at most"
+	Reason     string           `json:"reason"`
+}
+
+// A Selection picks foods of the embedded table by group, words of the name and single reference.
+type Selection struct {
+	Groups  []string `json:"groups,omitzero"`  // four-digit food group codes; empty is all
+	Foods   []string `json:"foods,omitzero"`   // "sr:19335"; when set, only these
+	Words   []string `json:"words,omitzero"`   // one of these must occur in the name
+	Without []string `json:"without,omitzero"` // none of these may occur
+}
+
+// An Origin says where the trans fatty acids of some foods come from.
+type Origin struct {
+	Foods  Selection `json:"foods"`
+	Origin string    `json:"origin"` // "ruminant" or "industrial"
+	Reason string    `json:"reason"`
+}
