@@ -1,0 +1,18 @@
+// Package schemas embeds the published JSON Schemas, so that the program that reads documents also serves what
+// describes them. Most callers need Files; Recipe is the one that the recipe decoder explains faults by.
+package schemas
+
+import "embed"
+
+// Files holds every schema of this folder by its file name.
+//
+//go:embed *.schema.json
+var Files embed.FS
+
+// RecipeID is the $id of the recipe schema.
+const RecipeID = "urn:gramlaw:schema:recipe"
+
+// Recipe is the text of recipe.schema.json.
+//
+//go:embed recipe.schema.json
+var Recipe string
