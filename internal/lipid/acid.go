@@ -55,7 +55,7 @@ func (a FattyAcid) MethylEnd() int {
 }
 
 // String is the LIPID MAPS shorthand at full structure level, without stereocentres.
-// Reference: Liebisch et al. 2020, J Lipid Res 61:1539, Table 2B.
+// Reference: LIPID MAPS shorthand update 2020, J Lipid Res 61:1539, Table 2B.
 func (a FattyAcid) String() string {
 	b := make([]byte, 0, 48)
 	b = append(b, "FA "...)

@@ -30,7 +30,8 @@ func mark(s featureSet, f int) featureSet { return s&with[f] | s&^with[f]<<(1<<f
 // features is the one combination of an acid.
 func (a FattyAcid) features() featureSet {
 	s, all := noBonds, a.cis|a.trans
-	conjugated := all & (all<<2 | all>>2)
+	pairs := all & (all >> 2) &^ (all >> 1) // neighbours two carbons apart
+	conjugated := pairs | pairs<<2
 	upper := all & (all - 1) // all but the bond nearest the carboxyl end
 	uneven := upper>>3&^all | all&(upper>>1|upper>>2)
 	facts := [6]bool{a.trans != 0, a.cis != 0, a.trans&^conjugated != 0, uneven != 0, conjugated != 0, all&^conjugated != 0}
@@ -154,15 +155,21 @@ func (g group) admitted() featureSet {
 	return ok
 }
 
-// empty reports that no acid fits the group.
-func (g group) empty() bool {
-	for _, s := range g.reach(^uint64(0)) {
-		if s != 0 {
-			return false
+// somewhere reports that some member has its bond nearest the methyl end at a position in ends. Few double bonds are tried
+// first: nearly every group has its members there.
+func (g group) somewhere(ends uint64) bool {
+	for d := g.bonds.lo; d <= g.bonds.hi; d++ {
+		h := g
+		h.bonds = span{d, d}
+		if h.reach(ends)[d] != 0 {
+			return true
 		}
 	}
-	return true
+	return false
 }
+
+// empty reports that no acid fits the group.
+func (g group) empty() bool { return !g.somewhere(^uint64(0)) }
 
 // admits reports whether acid a is a member.
 func (g group) admits(a FattyAcid) bool {

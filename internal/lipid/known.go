@@ -17,11 +17,11 @@ type Evidence string
 
 const (
 	computed Evidence = ""     // written by the grammar
-	seen     Evidence = "seen" // Liebisch et al. 2020, J Lipid Res 61:1539, Table 2B
+	seen     Evidence = "seen" // LIPID MAPS shorthand update 2020, J Lipid Res 61:1539, Table 2B
 )
 
 // MeltingPointSource grades every melting point and trivial name of Known: from memory, not checked against the books.
-const MeltingPointSource = "Lipid Handbook and CRC tables (Gunstone), from memory"
+const MeltingPointSource = "Lipid Handbook and CRC tables, from memory"
 
 // Known lists the acids known by name. The list is a fresh copy.
 func Known() []Record { return append([]Record(nil), known...) }

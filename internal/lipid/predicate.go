@@ -264,13 +264,3 @@ func (c *Class) longer(g group) bool {
 	g.carbons.lo = max(g.carbons.lo, c.carbons.hi+1)
 	return !g.empty()
 }
-
-// somewhere reports a member whose bond nearest the methyl end is at one of the given positions.
-func (g group) somewhere(ends uint64) bool {
-	for _, s := range g.reach(ends) {
-		if s != 0 {
-			return true
-		}
-	}
-	return false
-}
