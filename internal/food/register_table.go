@@ -209,7 +209,7 @@ var register = [Count]entry{
 		within: []ID{98}, disjoint: []ID{105, 109, 110, 111, 114, 116, 117, 118, 119, 120, 242, 247, 248}, wholes: Set{0x40, 0x400000000, 0x2800000, 0x0, 0x0}, apart: Set{0x1fffff92, 0xf5ffee03fffffff8, 0xff90fac004100001, 0xffffeffc000fe7ff, 0x1e0fff}},
 	{Component: Component{ID: 100, Tag: "F18D2CN6", Unit: "g", Name: "fatty acid 18:2 n-6 c,c", USDA: 675, Decimals: 3, Own: false, Evidence: "official text", Note: ""},
 		within: []ID{99, 157, 236}, disjoint: []ID{101}, wholes: Set{0x40, 0xc00000000, 0x2a800000, 0x100000000000, 0x0}, apart: Set{0x1fffff92, 0xffffffe3fffffff8, 0xff90fac054100001, 0xffffeffc000fe7ff, 0x1eefff}},
-	{Component: Component{ID: 101, Tag: "F18D2CLA", Unit: "g", Name: "fatty acid 18:2 CLAs", USDA: 670, Decimals: 3, Own: false, Evidence: "official text", Note: "Counted in F18D2 and FAPU, not in FATRN."},
+	{Component: Component{ID: 101, Tag: "F18D2CLA", Unit: "g", Name: "fatty acid 18:2 CLAs", USDA: 670, Decimals: 3, Own: false, Evidence: "official text", Note: "Counted in F18D2 and FAPU, not in FATRN. A trans total stated under a wording that counts conjugated acids is not FATRN."},
 		within: []ID{99}, disjoint: []ID{100, 121, 155}, wholes: Set{0x40, 0xc00000000, 0x2800000, 0x0, 0x0}, apart: Set{0x1fffff92, 0xffffffd3fffffff8, 0xff90fac07c100001, 0xffffeffc000fe7ff, 0x1effff}},
 	{Component: Component{ID: 102, Tag: "F18D2TT", Unit: "g", Name: "fatty acid 18:2 t,t", USDA: 669, Decimals: 3, Own: false, Evidence: "official text", Note: ""},
 		within: []ID{99, 123}, disjoint: []ID{103, 104, 108}, wholes: Set{0x40, 0xa00000c00000000, 0x2800000, 0x0, 0x0}, apart: Set{0x1fffff92, 0xf5ffffb3fffffff8, 0xff90fac07c100001, 0xffffeffc000fe7ff, 0x1e3fff}},

@@ -1,7 +1,6 @@
 package food
 
 import (
-	"cmp"
 	"slices"
 
 	"gramlaw/internal/food/layout"
@@ -38,10 +37,10 @@ func Search(text string, limit int) []Food {
 	for i, word := range wanted {
 		meet(found, uint8(i), word)
 	}
-	ranked := rank(found, uint8(len(wanted)))
-	foods := make([]Food, 0, min(limit, len(ranked)))
-	for _, r := range ranked[:min(limit, len(ranked))] {
-		foods = append(foods, foodAt(r.position))
+	best := rank(found, uint8(len(wanted)))
+	foods := make([]Food, 0, min(limit, len(best)))
+	for _, position := range best[:min(limit, len(best))] {
+		foods = append(foods, foodAt(position))
 	}
 	return foods
 }
@@ -134,24 +133,21 @@ func oneError(a, b string) bool {
 	return i+1 < len(a) && a[i] == b[i+1] && a[i+1] == b[i] && a[i+2:] == b[i+2:]
 }
 
-type ranked struct {
-	penalty  uint8
-	length   int
-	position int
-}
-
-func rank(found []hit, all uint8) []ranked {
-	var list []ranked
+// rank gives the positions of the foods that met every word, best first.
+func rank(found []hit, all uint8) []int {
+	var keys []uint64
 	index, records := section(layout.Index), section(layout.Records)
 	for position, h := range found {
 		if h.met == all {
 			offset := layout.Uint32(index, position*layout.IndexWidth+4)
 			length, _ := layout.Uvarint(records, offset)
-			list = append(list, ranked{h.penalty, int(length), position})
+			keys = append(keys, uint64(h.penalty)<<48|length<<32|uint64(position))
 		}
 	}
-	slices.SortFunc(list, func(a, b ranked) int {
-		return cmp.Or(cmp.Compare(a.penalty, b.penalty), cmp.Compare(a.length, b.length), cmp.Compare(a.position, b.position))
-	})
-	return list
+	slices.Sort(keys)
+	positions := make([]int, 0, len(keys))
+	for _, key := range keys {
+		positions = append(positions, int(key&(1<<32-1)))
+	}
+	return positions
 }

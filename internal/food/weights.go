@@ -2,14 +2,14 @@ package food
 
 // Weight is a household measure of a food in grams.
 type Weight struct {
-	Sequence  int
-	Amount    Number // how many of the measure, e.g. 1 or 0.25
-	Measure   string // "cup", "tbsp", as published
-	Grams     Number
-	Samples   int // 0 where not published
-	HasSample bool
-	StdDev    Number // of the grams
-	HasStdDev bool
+	Sequence   int
+	Amount     Number // how many of the measure, e.g. 1 or 0.25
+	Measure    string // "cup", "tbsp", as published
+	Grams      Number
+	Samples    int // 0 where not published
+	HasSamples bool
+	StdDev     Number // of the grams
+	HasStdDev  bool
 }
 
 // Footnote is a published remark on a food or on one of its values.
@@ -41,7 +41,7 @@ func readWeight(r *reader) Weight {
 	w.Measure = text(r.number())
 	w.Grams = Number{int64(r.number()), -int8(decimals & 15)}
 	if n := r.number(); n > 0 {
-		w.Samples, w.HasSample = n-1, true
+		w.Samples, w.HasSamples = n-1, true
 	}
 	if n := r.number(); n > 0 {
 		w.StdDev, w.HasStdDev = Number{int64(n - 1), -int8(r.byte())}, true

@@ -141,7 +141,7 @@ func (c *checker) weights(t *table, rows [][]string, f food.Food) {
 	for i, row := range rows[:min(len(rows), len(weights))] {
 		w, where := weights[i], f.Ref()+" weight "
 		samples := ""
-		if w.HasSample {
+		if w.HasSamples {
 			samples = strconv.Itoa(w.Samples)
 		}
 		c.same(where+"sequence", t.cell(row, "seq"), strconv.Itoa(w.Sequence))
