@@ -236,3 +236,44 @@ func trimZeros(c *big.Int, e int32) (*big.Int, int32) {
 	}
 	return c, e
 }
+
+// Reduced is the same number in lowest terms, powers of ten apart.
+func (r Ratio) Reduced() Ratio {
+	if r.IsZero() || r.d == nil || r.d == one {
+		return r
+	}
+	n, d, e := new(big.Int).Set(r.n), new(big.Int).Set(r.d), r.e
+	g := new(big.Int).GCD(nil, nil, new(big.Int).Abs(n), d)
+	n.Quo(n, g)
+	d.Quo(d, g)
+	d, down := trimZeros(d, 0)
+	if e -= down; d.Cmp(one) == 0 {
+		d = one
+	}
+	return Ratio{n: n, d: d, e: e}
+}
+
+// Denominator is what the ratio is over, its power of ten apart. Never change it.
+func (r Ratio) Denominator() *big.Int { return r.den() }
+
+// Over writes the ratio over a multiple of its denominator.
+func (r Ratio) Over(den *big.Int) Ratio {
+	if r.IsZero() || r.den() == den {
+		return r
+	}
+	k := new(big.Int).Quo(den, r.den())
+	return Ratio{n: k.Mul(k, r.n), d: den, e: r.e}
+}
+
+// MulFraction is r·num/den. Where den divides r's numerator, as it does by construction in a batch, the denominator stays
+// the shared one.
+func (r Ratio) MulFraction(num, den *big.Int) Ratio {
+	if r.IsZero() || num.Sign() == 0 {
+		return Ratio{}
+	}
+	q, m := new(big.Int).QuoRem(r.n, den, new(big.Int))
+	if m.Sign() == 0 {
+		return Ratio{n: q.Mul(q, num), d: r.d, e: r.e}
+	}
+	return Ratio{n: m.Mul(r.n, num), d: new(big.Int).Mul(r.den(), den), e: r.e}
+}

@@ -293,9 +293,10 @@ type Selection struct {
 	Without []string `json:"without,omitzero"` // none of these may occur
 }
 
-// An Origin says where the trans fatty acids of some foods come from.
+// An Origin says where the trans fatty acids of some foods come from, and how their fat was processed.
 type Origin struct {
-	Foods  Selection `json:"foods"`
-	Origin string    `json:"origin"` // "ruminant" or "industrial"
-	Reason string    `json:"reason"`
+	Foods   Selection `json:"foods"`
+	Origin  string    `json:"origin"`           // "ruminant" or "industrial"
+	Process string    `json:"process,omitzero"` // as a recipe states it
+	Reason  string    `json:"reason"`
 }

@@ -1,0 +1,103 @@
+package claim
+
+import (
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rulebook"
+)
+
+type decimalValue = decimal.Decimal
+
+// relative compares the product's value with the reference food's, both per the same basis.
+func relative(c *rulebook.Condition, per, says string, s side, x Context) Result {
+	ref, ok := x.Reference()
+	if !ok {
+		return Result{Says: says, Missing: "the reference food"}
+	}
+	r := measure(c, per, ref, x)
+	if r.missing != "" {
+		return Result{Says: says, Missing: r.missing + " of the reference food"}
+	}
+	if !s.den.Determined() || !r.den.Determined() || s.den.Known.Sign() == 0 || r.den.Known.Sign() == 0 {
+		return Result{Says: says, Missing: "an exact basis"}
+	}
+	one := quantity.FromInt(1)
+	product, other := s.num.Mul(one.Quo(s.den.Known)), r.num.Mul(one.Quo(r.den.Known))
+	cmp := &Comparison{Says: says, Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
+	return Result{Truth: decideRelative(c, product, other, cmp), Says: says, Compare: cmp}
+}
+
+func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *Comparison) quantity.Truth {
+	t := quantity.FromDecimal(threshold(c))
+	change := product.Sub(other)
+	percent := t.Mul(quantity.Scaled(1, -2))
+	switch c.Relation {
+	case rulebook.ReducedBy, rulebook.IncreasedBy:
+		cmp.change(c.Relation, product, other)
+		if other.High().Sign() == 0 {
+			cmp.Null = true
+			return quantity.No
+		}
+		f := change.Add(other.Mul(percent)) // product - other·(1-t)
+		rel := rulebook.AtMost
+		if c.Relation == rulebook.IncreasedBy {
+			f, rel = change.Sub(other.Mul(percent)), rulebook.AtLeast
+		}
+		cmp.Variables = f.Variables()
+		truth := sign(rel, f)
+		if truth == quantity.Yes && other.Low().Sign() == 0 {
+			return quantity.Open
+		}
+		return truth
+	case rulebook.NotMore:
+		cmp.Unit = quantity.Gram
+		cmp.absolute(product.Mul(quantity.FromInt(1)), other)
+		cmp.Variables = change.Variables()
+		return sign(rulebook.AtMost, change)
+	}
+	f := change
+	if c.Relation == rulebook.LessBy {
+		f = other.Sub(product)
+	}
+	cmp.value(f)
+	f = f.Sub(quantity.Exactly(t))
+	cmp.Variables = f.Variables()
+	return sign(rulebook.AtLeast, f)
+}
+
+// change fills the comparison with the reduction or increase in per cent.
+func (c *Comparison) change(rel rulebook.Relation, product, other quantity.Linear) {
+	p, ok1 := product.Central()
+	o, ok2 := other.Central()
+	if !ok1 || !ok2 || o.Sign() == 0 {
+		return
+	}
+	diff := o.Sub(p)
+	if rel == rulebook.IncreasedBy {
+		diff = p.Sub(o)
+	}
+	c.Known = true
+	c.Exact = diff.Mul(quantity.FromInt(100)).Quo(o)
+	c.Low, c.High = c.Exact, c.Exact
+	c.Headroom = c.Exact.Sub(c.Threshold)
+}
+
+func (c *Comparison) absolute(product, other quantity.Linear) {
+	p, ok1 := product.Central()
+	o, ok2 := other.Central()
+	if c.Known = ok1 && ok2; c.Known {
+		c.Exact, c.Threshold = p, o
+		c.Low, c.High = product.Low(), product.High()
+		c.Headroom = o.Sub(p)
+	}
+}
+
+func (c *Comparison) value(f quantity.Linear) {
+	unit := quantity.Scaled(1, -c.Unit.Scale().Exponent())
+	c.Low, c.High = f.Low().Mul(unit), f.High().Mul(unit)
+	if v, ok := f.Central(); ok {
+		c.Known, c.Exact = true, v.Mul(unit)
+		c.Headroom = c.Exact.Sub(c.Threshold)
+	}
+}

@@ -1,0 +1,93 @@
+package claim
+
+import (
+	"fmt"
+	"maps"
+	"slices"
+	"strings"
+
+	"gramlaw/internal/rulebook"
+)
+
+func quote(s string) string { return "“" + s + "”" }
+
+func list(words []string) string {
+	switch len(words) {
+	case 0:
+		return "nothing"
+	case 1:
+		return words[0]
+	}
+	return strings.Join(words[:len(words)-1], ", ") + " or " + words[len(words)-1]
+}
+
+func basisName(p rulebook.Per) string {
+	switch {
+	case p.Name != "":
+		return p.Name
+	case p.Quantity != "":
+		return p.Amount.String() + " " + strings.ReplaceAll(p.Quantity, "-", " ")
+	}
+	return "mass of " + p.Amount.String() + " (density)"
+}
+
+// compareSays writes a comparison in words: "saturated fat at most 1 g per reference amount".
+func compareSays(c *rulebook.Condition, per string, x Context) string {
+	var names []string
+	for _, q := range slices.Sorted(maps.Keys(c.Of)) {
+		name := x.Name(q)
+		switch k := c.Of[q]; {
+		case k.IsNegative():
+			name = "− " + name
+		case !k.Equal(k.Abs().Truncate(0)) || k.String() != "1":
+			name = k.String() + " × " + name
+		}
+		names = append(names, name)
+	}
+	s := strings.Join(names, " + ")
+	if c.Origin != "" {
+		s += " of " + c.Origin + " origin"
+	}
+	if c.Subject == "reference food" {
+		s += " of the reference food"
+	}
+	if c.As != "" {
+		s += " as " + c.As
+	}
+	switch c.Relation {
+	case rulebook.NotMore:
+		s += " not more than in the reference food"
+	default:
+		s += fmt.Sprintf(" %s %s", c.Relation, c.Threshold)
+	}
+	if c.Relation.Relative() && c.Relation != rulebook.NotMore {
+		s += " against the reference food"
+	}
+	if per != "" {
+		s += " per " + per
+	}
+	return s
+}
+
+func declaredSays(c *rulebook.Condition, x Context) string {
+	if c.Is == "" {
+		return x.Name(c.Name) + " stands in the declaration"
+	}
+	return x.Name(c.Name) + " is declared as " + c.Is
+}
+
+func amountSays(c *rulebook.Condition) string {
+	words := make([]string, len(c.Amounts))
+	for i, a := range c.Amounts {
+		words[i] = a.String()
+	}
+	return "reference amount at most " + list(words)
+}
+
+func ingredientSays(c *rulebook.Condition) string {
+	s := "no ingredient is " + list(c.Process)
+	if c.IodineAbove != nil {
+		s += " with an iodine value above " + c.IodineAbove.String()
+	}
+	return s
+}

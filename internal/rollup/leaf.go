@@ -1,0 +1,210 @@
+package rollup
+
+import (
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+)
+
+// leaf opens one ingredient's source.
+func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, kept []*recipe.Retention) (*Leaf, *Fault) {
+	l := &Leaf{Path: path, Pointer: in.Pointer, Name: in.Name, Ingredient: in, Mass: mass, batch: b, retentions: kept}
+	l.stated = make([]stated, food.Count+1)
+	switch {
+	case in.Food != "":
+		f, err := food.Find(in.Food)
+		if err != nil {
+			return nil, &Fault{in.Pointer + "/food", "unknown-food", err.Error()}
+		}
+		l.Food, l.IsFood = f, true
+		if l.Name == "" {
+			l.Name = f.Name()
+		}
+		f.Each(func(id food.ID, v food.Value) bool {
+			l.set(id, exactly(quantity.Scaled(v.Mantissa, int32(v.Exponent)+exponent(id))))
+			return true
+		})
+	case in.Label != nil:
+		values, fault := b.options.Label(in.Label)
+		if fault != nil {
+			fault.Pointer = in.Pointer + fault.Pointer
+			return nil, fault
+		}
+		l.setValues(values, decimal.New(1, 0))
+	case in.Composition != nil:
+		per, fault := l.per(in)
+		if fault != nil {
+			return nil, fault
+		}
+		l.setPer(in.Composition.Components, per)
+		fault = l.weigh()
+		if fault != nil {
+			return nil, fault
+		}
+	}
+	l.setValues(in.With, decimal.New(1, 0))
+	return l, nil
+}
+
+// exponent is the power of ten from a component's unit to the base unit.
+func exponent(id food.ID) int32 {
+	c, _ := food.ByID(id)
+	e, _ := c.Unit.GramExponent()
+	return int32(e)
+}
+
+func tag(id food.ID) string {
+	c, _ := food.ByID(id)
+	return c.Tag
+}
+
+func exactly(r quantity.Ratio) stated { return stated{low: r, high: r, central: r, typical: true} }
+
+func (l *Leaf) set(id food.ID, s stated) {
+	l.stated[id] = s
+	l.known.Add(id)
+}
+
+// per is the mass in grams that a specification's values are per.
+func (l *Leaf) per(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
+	if in.Composition.Per.IsZero() {
+		return quantity.FromInt(100), nil
+	}
+	g, fault := grams(&recipe.Ingredient{Pointer: in.Pointer + "/composition", Amount: in.Composition.Per, Density: in.Density})
+	if fault != nil {
+		fault.Pointer = in.Pointer + "/composition/per"
+	}
+	return g, fault
+}
+
+func (l *Leaf) setPer(values map[string]recipe.Value, per quantity.Ratio) {
+	factor := quantity.FromInt(100).Quo(per)
+	for tag, v := range values {
+		c, ok := food.Lookup(tag)
+		if !ok {
+			continue // decoding refuses unknown components
+		}
+		l.set(c.ID, scaled(v, factor))
+	}
+}
+
+func (l *Leaf) setValues(values map[string]recipe.Value, factor decimal.Decimal) {
+	for tag, v := range values {
+		if c, ok := food.Lookup(tag); ok {
+			l.set(c.ID, scaled(v, quantity.FromDecimal(factor)))
+		}
+	}
+}
+
+func scaled(v recipe.Value, factor quantity.Ratio) stated {
+	base := func(d decimal.Decimal) quantity.Ratio { return factor.Times(d.Mul(v.Unit.Scale())) }
+	return stated{low: base(v.Low), high: base(v.High), central: base(v.Central), typical: v.Typical}
+}
+
+// Knows tells whether somebody stated the component for this leaf.
+func (l *Leaf) Knows(id food.ID) bool { return l.pure != 0 || l.known.Has(id) }
+
+// Component is the leaf's content of a component in the batch, in base units, after retention.
+func (l *Leaf) Component(id food.ID) Amount {
+	if l.pure != 0 {
+		if id == l.pure {
+			return Amount{Linear: quantity.Exactly(l.Mass)}
+		}
+		return Amount{}
+	}
+	if l.cache == nil {
+		l.cache = make([]*Amount, food.Count+1)
+	}
+	if a := l.cache[id]; a != nil {
+		return *a
+	}
+	a := l.component(id)
+	l.cache[id] = &a
+	return a
+}
+
+func (l *Leaf) component(id food.ID) Amount {
+	if a, ok := l.folateEquivalents(id); ok {
+		return a
+	}
+	if l.known.Has(id) {
+		s := l.stated[id]
+		return Amount{Linear: l.kept(id, l.scale(id, s)), How: Stated}
+	}
+	if l.byNature(id) {
+		return Amount{How: ByNature}
+	}
+	if l.batch.options.Presume != nil {
+		if p, ok := l.batch.options.Presume(l, id); ok {
+			return l.presumed(id, p)
+		}
+	}
+	high := l.bound(id)
+	if high.Sign() <= 0 {
+		return Amount{How: Bounded}
+	}
+	return Amount{Linear: quantity.Of(l.Variable(tag(id), quantity.Ratio{}, high, quantity.Ratio{}, false)), How: Bounded}
+}
+
+// scale brings a value per 100 g to the leaf's share of the batch.
+func (l *Leaf) scale(id food.ID, s stated) quantity.Linear {
+	if s.low.Cmp(s.high) == 0 {
+		return quantity.Exactly(l.share(s.low))
+	}
+	return quantity.Of(l.Variable(tag(id), l.share(s.low), l.share(s.high), l.share(s.central), s.typical))
+}
+
+func (l *Leaf) share(per100 quantity.Ratio) quantity.Ratio {
+	return l.Mass.Mul(per100).Mul(quantity.Scaled(1, -2))
+}
+
+func (l *Leaf) presumed(id food.ID, p Presumed) Amount {
+	a := Amount{How: ByPractice, Rule: p.Rule}
+	if p.Of == 0 {
+		return a
+	}
+	of := l.Component(p.Of).Linear.Mul(p.Share)
+	a.Linear = of
+	if p.Upto {
+		high := of.High()
+		a.Linear = quantity.Linear{}
+		if high.Sign() > 0 {
+			a.Linear = quantity.Of(l.Variable(tag(id), quantity.Ratio{}, high, quantity.Ratio{}, false))
+		}
+	}
+	return a
+}
+
+func (l *Leaf) byNature(id food.ID) bool {
+	for _, n := range l.Ingredient.ZeroByNature {
+		if c, ok := food.Lookup(n.Component); ok && (c.ID == id || id.IsWithin(c.ID)) {
+			return true
+		}
+	}
+	return false
+}
+
+// bound is the most there can be of a component nobody stated: what each whole it is part of leaves after the known parts
+// beside it.
+func (l *Leaf) bound(id food.ID) quantity.Ratio {
+	best, any := quantity.Ratio{}, false
+	for whole := range id.Within() {
+		r := l.remainder(id, whole, l.Component(whole).High())
+		if !any || r.Cmp(best) < 0 {
+			best, any = r, true
+		}
+	}
+	if !any {
+		best = l.remainder(id, 0, l.Mass)
+	}
+	return best
+}
+
+func (l *Leaf) remainder(id, whole food.ID, most quantity.Ratio) quantity.Ratio {
+	for beside := range food.Beside(id, whole, l.known).All() {
+		most = most.Sub(l.Component(beside).Low())
+	}
+	return quantity.Max(most, quantity.Ratio{})
+}

@@ -1,0 +1,65 @@
+package rollup
+
+import (
+	"slices"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+)
+
+// kept applies what cooking keeps of a component, and what fat was lost.
+func (l *Leaf) kept(id food.ID, a quantity.Linear) quantity.Linear {
+	for _, r := range l.retentions {
+		if f, ok := factor(r, id); ok {
+			a = a.Mul(f)
+		}
+	}
+	if l.lipidsKept != nil && isLipid(id) {
+		a = a.Mul(*l.lipidsKept)
+	}
+	return a
+}
+
+// factor is a retention as a number from 0 to 1.
+func factor(r *recipe.Retention, id food.ID) (quantity.Ratio, bool) {
+	if r.Code == "" {
+		c, _ := food.ByID(id)
+		f, ok := r.Factors[c.Tag]
+		return quantity.FromDecimal(f), ok
+	}
+	table, ok := food.RetentionCode(r.Code)
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	percent, ok := table.Percent(id)
+	return quantity.Scaled(int64(percent), -2), ok
+}
+
+// isLipid tells whether a component leaves with the fat.
+func isLipid(id food.ID) bool {
+	fat, _ := food.Lookup("FAT")
+	return id == fat.ID || id.IsWithin(fat.ID)
+}
+
+// folateEquivalents is dietary folate equivalents under a retention code of the USDA table, which has no column for them:
+// 1 µg DFE = 1 µg food folate = 0.6 µg folic acid (1 / 1.7 in the table's rounding).
+// Reference: USDA Table of Nutrient Retention Factors, Release 6, and the survey database built on it.
+func (l *Leaf) folateEquivalents(id food.ID) (Amount, bool) {
+	if c, _ := food.ByID(id); c.Tag != "FOLDFE" || !l.coded() {
+		return Amount{}, false
+	}
+	natural, _ := food.Lookup("FOLFD")
+	acid, _ := food.Lookup("FOLAC")
+	if !l.Knows(natural.ID) || !l.Knows(acid.ID) {
+		return Amount{}, false
+	}
+	f := food.FolateDFEFactor()
+	added := l.Component(acid.ID).Mul(quantity.Scaled(f.Mantissa, int32(f.Exponent)))
+	return Amount{Linear: l.Component(natural.ID).Add(added), How: Stated}, true
+}
+
+// coded tells whether a USDA retention code applies to the leaf.
+func (l *Leaf) coded() bool {
+	return slices.ContainsFunc(l.retentions, func(r *recipe.Retention) bool { return r.Code != "" })
+}

@@ -1,0 +1,223 @@
+package rollup
+
+import (
+	"fmt"
+	"math/big"
+
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+)
+
+var hundred = decimal.New(100, 0)
+
+// Roll computes a part: a recipe, a recipe inside one, or a single ingredient of 100 g.
+func Roll(p recipe.Part, o Options) (*Batch, *Fault) {
+	b := &Batch{options: o}
+	part, fault := b.part(p, "", nil)
+	if fault != nil {
+		return nil, fault
+	}
+	b.Leaves, b.Input, b.Mass = part.leaves, part.input, part.mass
+	if b.Mass.Sign() <= 0 {
+		return nil, &Fault{"/yield", "no-mass", "the finished food has no mass left"}
+	}
+	if fault := b.commonDenominator(); fault != nil {
+		return nil, fault
+	}
+	for i, l := range b.Leaves {
+		l.Index = i
+	}
+	b.plausible()
+	return b, nil
+}
+
+// rolled is a part with masses over denominators of their own.
+type rolled struct {
+	leaves      []*Leaf
+	input, mass quantity.Ratio
+}
+
+func (b *Batch) part(p recipe.Part, path string, kept []*recipe.Retention) (rolled, *Fault) {
+	var out rolled
+	for i := range p.Ingredients {
+		in := &p.Ingredients[i]
+		mass, fault := grams(in)
+		if fault != nil {
+			return out, fault
+		}
+		leaves, fault := b.ingredient(in, mass, path, kept)
+		if fault != nil {
+			return out, fault
+		}
+		out.leaves = append(out.leaves, leaves...)
+		out.input = out.input.Add(mass)
+	}
+	out.mass = out.input
+	return out, b.yield(&out, p.Yield, path)
+}
+
+// grams is an ingredient's mass; a volume needs a density.
+func grams(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
+	switch in.Amount.Unit.Dimension() {
+	case quantity.Mass:
+		return quantity.FromDecimal(in.Amount.Base()), nil
+	case quantity.Volume:
+		if in.Density.IsPositive() {
+			return quantity.FromDecimal(in.Amount.Base().Mul(in.Density)), nil
+		}
+	}
+	return quantity.Ratio{}, &Fault{in.Pointer + "/amount", "volume-without-density", fmt.Sprintf("%s is no mass and the ingredient has no density", in.Amount)}
+}
+
+func join(path, id string) string {
+	if path == "" {
+		return id
+	}
+	return path + "/" + id
+}
+
+func (b *Batch) ingredient(in *recipe.Ingredient, mass quantity.Ratio, path string, kept []*recipe.Retention) ([]*Leaf, *Fault) {
+	if in.Retention != nil {
+		kept = append(kept[:len(kept):len(kept)], in.Retention)
+	}
+	path = join(path, in.ID)
+	if in.Recipe == nil {
+		l, fault := b.leaf(in, mass, path, kept)
+		return []*Leaf{l}, fault
+	}
+	sub, fault := b.part(*in.Recipe, path, kept)
+	if fault != nil {
+		return nil, fault
+	}
+	if sub.mass.Sign() <= 0 {
+		return nil, &Fault{in.Pointer + "/recipe/yield", "no-mass", "the part has no mass left"}
+	}
+	share := mass.Quo(sub.mass)
+	for _, l := range sub.leaves {
+		l.Mass = l.Mass.Mul(share)
+	}
+	return sub.leaves, nil
+}
+
+// yield settles what water and fat did in cooking.
+func (b *Batch) yield(r *rolled, y *recipe.Yield, path string) *Fault {
+	if y == nil {
+		return nil
+	}
+	if y.Mass != nil {
+		final := quantity.FromDecimal(y.Mass.Base())
+		r.water(b, final.Sub(r.input), path)
+		return nil
+	}
+	if y.Water != nil {
+		r.water(b, signed(y.Water, r.input), path)
+	}
+	if y.Fat != nil {
+		return r.fat(b, y.Fat, path)
+	}
+	return nil
+}
+
+func signed(c *recipe.Change, input quantity.Ratio) quantity.Ratio {
+	m := changed(c, input)
+	if !c.Gain {
+		m = m.Neg()
+	}
+	return m
+}
+
+func changed(c *recipe.Change, input quantity.Ratio) quantity.Ratio {
+	if c.Amount.Unit == quantity.PerCent {
+		return input.Times(c.Amount.Value.Shift(-2))
+	}
+	return quantity.FromDecimal(c.Amount.Base())
+}
+
+// water adds water that came, or a negative amount that went.
+func (r *rolled) water(b *Batch, mass quantity.Ratio, path string) {
+	if mass.IsZero() {
+		return
+	}
+	id, _ := food.Lookup("WATER")
+	name := "water taken up"
+	if mass.Sign() < 0 {
+		name = "water lost"
+	}
+	r.leaves = append(r.leaves, &Leaf{Path: join(path, "(water)"), Name: name, Mass: mass, batch: b, pure: id.ID})
+	r.mass = r.mass.Add(mass)
+}
+
+// fat lets oil in, or takes the same share of every lipid out.
+func (r *rolled) fat(b *Batch, c *recipe.Change, path string) *Fault {
+	mass := changed(c, r.input)
+	if c.Gain {
+		in := &recipe.Ingredient{Pointer: "/yield/fat/oil", ID: "(oil taken up)", Name: "oil taken up", Source: *c.Oil}
+		l, fault := b.leaf(in, mass, join(path, in.ID), nil)
+		if fault != nil {
+			return fault
+		}
+		r.leaves, r.mass, r.input = append(r.leaves, l), r.mass.Add(mass), r.input.Add(mass)
+		return nil
+	}
+	fat, _ := food.Lookup("FAT")
+	var total quantity.Ratio
+	for _, l := range r.leaves {
+		a := l.Component(fat.ID)
+		if !a.Determined() {
+			return &Fault{l.Pointer, "fat-loss-needs-fat", "fat is lost in cooking, but how much fat " + l.Path + " brings in is not stated exactly"}
+		}
+		total = total.Add(a.Known)
+	}
+	if total.Cmp(mass) < 0 {
+		return &Fault{"/yield/fat", "fat-loss-too-large", "more fat is lost than there is"}
+	}
+	kept := total.Sub(mass).Quo(total)
+	for _, l := range r.leaves {
+		l.keepLipids(kept)
+	}
+	r.mass = r.mass.Sub(mass)
+	return nil
+}
+
+func (l *Leaf) keepLipids(kept quantity.Ratio) {
+	l.cache, l.acids = nil, nil
+	if l.lipidsKept != nil {
+		kept = kept.Mul(*l.lipidsKept)
+	}
+	l.lipidsKept = &kept
+}
+
+// commonDenominator writes all masses over one denominator that profiles divide too.
+func (b *Batch) commonDenominator() *Fault {
+	den := big.NewInt(1)
+	parts := make([]quantity.Ratio, len(b.Leaves))
+	for i, l := range b.Leaves {
+		parts[i] = l.Mass.Reduced()
+		d := parts[i].Denominator()
+		if p := l.profileDenominator(); p != nil {
+			d = new(big.Int).Mul(d, p)
+		}
+		den = lcm(den, d)
+		if den.BitLen() > MaxBits {
+			return &Fault{l.Pointer, "too-fine", "the recipe has too many fatty-acid profiles in per cent to be computed exactly; state some in g per 100 g fat"}
+		}
+	}
+	b.den = den
+	for i, l := range b.Leaves {
+		l.Mass = parts[i].Over(den)
+		l.cache, l.acids = nil, nil
+	}
+	b.Input, b.Mass = b.Input.Reduced(), b.Mass.Reduced()
+	return nil
+}
+
+func lcm(a, b *big.Int) *big.Int {
+	if a.Cmp(b) == 0 {
+		return a
+	}
+	g := new(big.Int).GCD(nil, nil, a, b)
+	return new(big.Int).Mul(a, new(big.Int).Quo(b, g))
+}

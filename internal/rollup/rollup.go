@@ -1,0 +1,151 @@
+// Package rollup turns a recipe into the composition of the finished food: every ingredient's exact share of the batch,
+// what it contributes of each component after retention, and the mass that is left after cooking.
+//
+// Roll takes a recipe part and gives a Batch. A Batch is asked leaf by leaf (Leaf.Component, Leaf.Acids): what a law counts
+// as fat or trans fat is decided above this package. Masses are grams and exact; all of a batch share one denominator. What
+// nobody stated stays a variable between two ends.
+package rollup
+
+import (
+	"math/big"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+)
+
+// MaxBits caps the common denominator of a batch. Profiles in per cent are what makes it grow.
+const MaxBits = 1 << 15
+
+// Options are what a batch needs to know from rules.
+type Options struct {
+	// Label undoes the rounding of another product's label; values are per 100 g.
+	Label func(*recipe.Label) (map[string]recipe.Value, *Fault)
+	// Presume says what practice takes for a component that nobody stated.
+	Presume func(*Leaf, food.ID) (Presumed, bool)
+	// FirstVariable keeps the variables of several batches apart.
+	FirstVariable int
+}
+
+// Presumed is what practice takes: zero, or at most Share of another component, or just as much.
+type Presumed struct {
+	Rule  string
+	Of    food.ID
+	Share quantity.Ratio // of Of; ignored without Of
+	Upto  bool           // anything from zero to the share
+}
+
+// A Fault is something about a recipe that makes a roll-up impossible.
+type Fault struct {
+	Pointer, Code, Says string
+}
+
+func (f *Fault) Error() string { return f.Pointer + ": " + f.Says }
+
+// A Finding is something about a recipe that somebody should look at.
+type Finding struct {
+	Pointer, Ingredient, Code, Says string
+}
+
+// A Batch is a recipe rolled up.
+type Batch struct {
+	Leaves   []*Leaf
+	Input    quantity.Ratio // g of everything that went in
+	Mass     quantity.Ratio // g of finished food
+	Findings []Finding
+
+	options Options
+	den     *big.Int
+	owners  []Owner
+}
+
+// An Owner says whose uncertainty a variable is.
+type Owner struct {
+	Leaf *Leaf
+	What string // tagname, notation or a plain word
+}
+
+// A Leaf is one ingredient that is not itself a recipe, with its share of the batch.
+type Leaf struct {
+	Index      int
+	Path       string // "syrup/sugar"
+	Pointer    string
+	Name       string
+	Ingredient *recipe.Ingredient // nil for water that came or went
+	Food       food.Food
+	IsFood     bool
+	Mass       quantity.Ratio // g in the batch; negative for water that went
+
+	batch      *Batch
+	pure       food.ID // set where the leaf is one component alone
+	stated     []stated
+	known      food.Set
+	cache      []*Amount
+	acids      *acids
+	retentions []*recipe.Retention
+	lipidsKept *quantity.Ratio // set where fat was lost
+	weights    []weight
+}
+
+// stated is a component's value in base units (g; kcal, kJ or IU as they are) per 100 g.
+type stated struct {
+	low, high, central quantity.Ratio
+	typical            bool
+}
+
+// How tells where an amount comes from.
+type How uint8
+
+// Where amounts come from, best first.
+const (
+	Stated   How = iota
+	ByNature     // the recipe says it is absent by nature
+	ByPractice
+	Bounded // nobody said; the register bounds it
+)
+
+// An Amount is a leaf's contribution to the batch, in base units.
+type Amount struct {
+	quantity.Linear
+	How  How
+	Rule string // for ByPractice
+}
+
+// Variable makes a variable of the leaf's; what names it.
+func (l *Leaf) Variable(what string, low, high, central quantity.Ratio, typical bool) *quantity.Variable {
+	b := l.batch
+	b.owners = append(b.owners, Owner{l, what})
+	return &quantity.Variable{Index: b.options.FirstVariable + len(b.owners), Low: low, High: high, Central: central, Typical: typical}
+}
+
+// Owner tells whose variable it is; false for another batch's.
+func (b *Batch) Owner(v *quantity.Variable) (Owner, bool) {
+	i := v.Index - b.options.FirstVariable - 1
+	if i < 0 || i >= len(b.owners) {
+		return Owner{}, false
+	}
+	return b.owners[i], true
+}
+
+// Total is the batch's content of a component, in base units.
+func (b *Batch) Total(id food.ID) quantity.Linear {
+	var sum quantity.Linear
+	for _, l := range b.Leaves {
+		sum = sum.Add(l.Component(id).Linear)
+	}
+	return sum
+}
+
+// Coverage is the share of the ingoing mass whose content of a component somebody stated or practice presumes.
+func (b *Batch) Coverage(id food.ID) quantity.Ratio {
+	var with quantity.Ratio
+	for _, l := range b.Leaves {
+		if l.Ingredient != nil && (l.Component(id).How != Bounded || l.Component(id).Determined()) {
+			with = with.Add(l.Mass)
+		}
+	}
+	if b.Input.IsZero() {
+		return quantity.Ratio{}
+	}
+	return with.Quo(b.Input)
+}
