@@ -8,7 +8,8 @@ import "unicode/utf8"
 //
 // Conventions it keeps: n-x of a polyunsaturated acid means all cis and methylene-interrupted unless geometry or another
 // word says otherwise. "trans" for a polyunsaturated acid without positions ("18:2 t", "18:2 t,t") means at least one
-// isolated trans bond, since tables and methods report conjugated acids apart (USDA SR28: 670 is not part of 605).
+// isolated trans bond, since tables and methods report conjugated acids apart (USDA SR28: 670 is not part of 605). A group
+// with a chain length ("18:1") has straight, unsubstituted members; a total ("saturated") has branched ones too.
 //
 // An error is always a *NotationError. The time is linear in the length, which MaxNotation bounds.
 func Parse(notation string) (Species, error) {

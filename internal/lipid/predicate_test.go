@@ -57,7 +57,7 @@ func TestPredicates(t *testing.T) {
 		{"CLA", `{"conjugated": true}`, Yes}, {"18:1", `{"conjugated": false}`, Yes}, {"18:2", `{"conjugated": true}`, Open},
 		{"16:0", `{"carbons": "12"}`, No}, {"12:0", `{"carbons": "12"}`, Yes}, {"8:0", `{"carbons": "4-10", "double bonds": "0"}`, Yes},
 		{"22:6", `{"carbons": "20+"}`, Yes}, {"saturated", `{"carbons": "12"}`, Open}, {"saturated", `{"carbons": "2-40"}`, Yes}, {"omega-3", `{"carbons": "20+"}`, Open},
-		{"16:0 iso", `{"carbons": "16"}`, Yes}, {"sterculic", saturated, No}, {"sterculic", mono, No}, {"lactobacillic", saturated, Yes},
+		{"16:0 iso", `{"carbons": "16"}`, Yes}, {"saturated", `{"carbons": "4-10"}`, Open}, {"18:1", `{"carbons": "4-10"}`, No}, {"omega-3", `{"carbons": "2-10"}`, Open}, {"sterculic", saturated, No}, {"sterculic", mono, No}, {"lactobacillic", saturated, Yes},
 		{"18:2 t,t", `{"all": "trans"}`, Yes}, {"18:0", `{"all": "cis"}`, No}, {"18:1", `{"any": "cis"}`, Open}, {"4:1", `{"any": "cis"}`, Open},
 		{"3:1", `{"all": "cis"}`, Yes},
 	} {

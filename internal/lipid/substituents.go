@@ -1,5 +1,7 @@
 package lipid
 
+import "math/bits"
+
 // scanSubstituents reads one LIPID MAPS group after a semicolon: "3Me,7Me", "12OH", "12Ep" or "[11-13cy3:0]".
 func (d *draft) scanSubstituents(sc *scanner) *NotationError {
 	if sc.tok.kind == '[' {
@@ -63,4 +65,32 @@ func (d *draft) scanRing(sc *scanner) *NotationError {
 	}
 	d.ring = first
 	return nil
+}
+
+// substitute adds branches, hydroxy groups, epoxides and a ring to a known acid.
+func (d *draft) substitute(s Species) (Species, *NotationError) {
+	if d.methyl|d.hydroxy|d.epoxy == 0 && d.ring == 0 {
+		return s, nil
+	}
+	a, one := s.Acid()
+	if !one {
+		return s, fault(Unknown, "a substituted acid needs position and geometry of every double bond, as in \"FA 18:1(9Z);12OH\"")
+	}
+	a.methyl |= d.methyl
+	a.hydroxy, a.epoxy, a.ring, a.ringDouble = d.hydroxy, d.epoxy, uint8(min(d.ring, maxCarbons)), d.ringDouble
+	if !a.possible() {
+		return s, fault(Impossible, "the chain has no room for these substituents")
+	}
+	return Species{acid: a}, nil
+}
+
+// possible checks that every substituent finds its carbon and no two exclude each other.
+func (a FattyAcid) possible() bool {
+	chain, all := int(a.chain), a.cis|a.trans
+	fits := bits.Len64(a.methyl) <= chain && bits.Len64(a.hydroxy) <= chain+1 && bits.Len64(a.epoxy) <= chain
+	if a.ring != 0 {
+		inside := uint64(3) << a.ring
+		fits = fits && a.ring >= 2 && int(a.ring)+2 <= chain && (all|a.epoxy)&inside == 0
+	}
+	return fits && a.Carbons() <= maxCarbons && a.epoxy&(a.epoxy<<1|all) == 0
 }
