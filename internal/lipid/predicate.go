@@ -36,13 +36,19 @@ var errEmptyPredicate = errors.New("predicate says nothing; write {\"every\": tr
 // Compile checks the predicate and makes it ready. Errors name the member and say what it may be.
 func (p Predicate) Compile() (*Class, error) {
 	c := &Class{carbons: span{0, 255}, bonds: span{0, 255}, ok: ^featureSet(0)}
-	if p.Every {
-		return c, p.aloneErr()
+	var err error
+	switch {
+	case p.Every:
+		err = p.aloneErr()
+	case p.saysNothing():
+		err = errEmptyPredicate
+	default:
+		err = errors.Join(c.counts(p), c.geometry(p), c.place(p), c.list(p.Listed))
 	}
-	if p.saysNothing() {
-		return nil, errEmptyPredicate
+	if err != nil {
+		return nil, err
 	}
-	return c, errors.Join(c.counts(p), c.geometry(p), c.place(p), c.list(p.Listed))
+	return c, nil
 }
 
 func (p Predicate) saysNothing() bool {
