@@ -45,9 +45,11 @@ func (d *decoder) checkAgainst(at int32) {
 	if list == 0 || d.nodes[list].kind != '[' {
 		return
 	}
-	var known []string
-	if foods := d.path(at, "reference_foods"); foods != 0 && d.nodes[foods].kind == '{' {
-		known = d.names(foods)
+	known := func() []string {
+		if foods := d.path(at, "reference_foods"); foods != 0 && d.nodes[foods].kind == '{' {
+			return d.names(foods)
+		}
+		return nil
 	}
 	for c := d.nodes[list].first; c != 0; c = d.nodes[c].next {
 		m := d.path(c, "against")
@@ -55,7 +57,7 @@ func (d *decoder) checkAgainst(at int32) {
 			continue
 		}
 		if name := d.nodes[m].text; d.path(at, "reference_foods", name) == 0 {
-			d.fault(m, UnknownAgainst, "reference_foods has no "+quote(name)+suggest(name, known))
+			d.unknown(m, UnknownAgainst, "reference_foods has no "+quote(name), name, known)
 		}
 	}
 }

@@ -6,6 +6,7 @@ const (
 	BadSyntax      = "bad-syntax"
 	BadText        = "bad-text"
 	TooDeep        = "too-deep"
+	TooManyValues  = "too-many-values"
 	TrailingData   = "trailing-data"
 	DuplicateName  = "duplicate-name"
 	StringTooLong  = "string-too-long"
@@ -62,6 +63,7 @@ var Codes = []CodeRule{
 	{BadSyntax, "the document is not JSON; nothing after this place was read"},
 	{BadText, "a text is not valid UTF-8 or has half of a surrogate pair"},
 	{TooDeep, "objects and arrays are nested more than 64 deep"},
+	{TooManyValues, "the document has more than 100,000 values"},
 	{TrailingData, "something follows the document's value"},
 	{DuplicateName, "an object has the same member twice"},
 	{StringTooLong, "a text or a member's name has more than 1,000 characters"},
@@ -75,7 +77,7 @@ var Codes = []CodeRule{
 	{BadAmount, "the text is no amount: a number and its unit, such as 420 g"},
 	{BadNumber, "the text is no number, such as 44.1"},
 	{BadFormat, "the text is not written as wanted here"},
-	{Empty, "a text, a list or an object is empty where something is wanted"},
+	{Empty, "a text, a name, a list or an object is empty where something is wanted"},
 	{TooMany, "a text, a list or an object is longer than allowed here"},
 	{OneSource, "exactly one of composition, food, label and recipe is wanted"},
 	{DuplicateID, "two ingredients of one list have the same id"},

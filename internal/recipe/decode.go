@@ -26,6 +26,9 @@ func Decode(doc []byte) (*Recipe, Faults) {
 	r := d.recipe(root)
 	if len(d.misshapen) > 0 {
 		d.found = append(d.found, d.explain()...)
+		if len(d.found) == 0 { // the decoder decides, even where the schema sees nothing
+			d.fault(d.misshapen[0], WrongValue, "the value does not fit the schema of recipes")
+		}
 	}
 	if len(d.found) > 0 {
 		return nil, d.report(d.found)
@@ -45,7 +48,12 @@ type decoder struct {
 }
 
 func (d *decoder) fault(at int32, code, says string) {
-	d.found = append(d.found, found{at, code, says})
+	d.found = append(d.found, found{at: at, code: code, says: says})
+}
+
+// unknown is a fault about a name; the sentence ends with the known name that is nearest.
+func (d *decoder) unknown(at int32, code, says, name string, known func() []string) {
+	d.found = append(d.found, found{at, code, says, func() string { return suggest(name, known()) }})
 }
 
 func (d *decoder) shape(at int32) { d.misshapen = append(d.misshapen, at) }

@@ -1,9 +1,11 @@
 package recipe
 
 import (
+	"cmp"
 	"encoding/json"
 	"errors"
 	"net/url"
+	"slices"
 	"strings"
 	"sync"
 
@@ -38,22 +40,30 @@ func (d *decoder) explain() []found {
 		panic("recipe.schema.json: " + fatal.Says)
 	}
 	e := explanation{document: d.tree, schema: &schema.tree, formats: formats()}
-	for _, leaf := range d.violations() {
+	for _, leaf := range d.violations(d.last()) {
 		e.add(leaf)
-	}
-	if len(e.found) == 0 && len(d.found) == 0 {
-		// The decoder decides. Tests hold the schema to it, so this is a last resort.
-		for _, at := range d.misshapen {
-			e.found = append(e.found, found{at, WrongValue, "the value does not fit the schema of recipes"})
-		}
 	}
 	return e.found
 }
 
-// violations lists the innermost errors of the schema, those under a fault of the bounded pass left out.
-func (t *tree) violations() (out []violation) {
+// last is the place of the last fault that will be listed. Nothing beyond it is explained, so that a document full of
+// faults costs no more than one with a few.
+func (d *decoder) last() int32 {
+	places := slices.Clone(d.misshapen)
+	for _, f := range d.found {
+		places = append(places, f.at)
+	}
+	slices.Sort(places)
+	if places = slices.Compact(places); len(places) > MaxFaults {
+		return places[MaxFaults]
+	}
+	return int32(len(d.nodes))
+}
+
+// violations lists the innermost errors of the schema up to a place, those under a fault of the bounded pass left out.
+func (t *tree) violations(last int32) (out []violation) {
 	var refused *jsonschema.ValidationError
-	if !errors.As(publishedSchema().Validate(t.plain(root)), &refused) {
+	if !errors.As(publishedSchema().Validate(t.plain(root, last)), &refused) {
 		return nil
 	}
 	var walk func(*jsonschema.ValidationError)
@@ -69,6 +79,10 @@ func (t *tree) violations() (out []violation) {
 		}
 	}
 	walk(refused)
+	// The library walks objects in the order of Go's maps.
+	slices.SortFunc(out, func(a, b violation) int {
+		return cmp.Or(cmp.Compare(a.at, b.at), cmp.Compare(a.keyword, b.keyword))
+	})
 	return out
 }
 
@@ -78,21 +92,21 @@ type violation struct {
 	keyword string // its absolute location
 }
 
-// plain is the document in the form that the schema library reads. Numbers are never wanted in a recipe, so that their
-// type is all that counts.
-func (t *tree) plain(at int32) any {
+// plain is the document up to a place, in the form that the schema library reads. Numbers are never wanted in a recipe,
+// so that their type is all that counts.
+func (t *tree) plain(at, last int32) any {
 	n := &t.nodes[at]
 	switch n.kind {
 	case '{':
-		out := make(map[string]any, n.count)
-		for m := n.first; m != 0; m = t.nodes[m].next {
-			out[t.nodes[m].name] = t.plain(m)
+		out := make(map[string]any, min(n.count, last))
+		for m := n.first; m != 0 && m <= last; m = t.nodes[m].next {
+			out[t.nodes[m].name] = t.plain(m, last)
 		}
 		return out
 	case '[':
-		out := make([]any, 0, n.count)
-		for m := n.first; m != 0; m = t.nodes[m].next {
-			out = append(out, t.plain(m))
+		out := make([]any, 0, min(n.count, last))
+		for m := n.first; m != 0 && m <= last; m = t.nodes[m].next {
+			out = append(out, t.plain(m, last))
 		}
 		return out
 	case '"':

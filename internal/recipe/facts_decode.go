@@ -20,7 +20,7 @@ func (d *decoder) facts(at int32) map[string]Fact {
 		}
 		rule, ok := factRule(name)
 		if !ok {
-			d.fault(m, UnknownFact, quote(name)+" is not in the register of facts"+suggest(name, factNames()))
+			d.unknown(m, UnknownFact, quote(name)+" is not in the register of facts", name, factNames)
 			return
 		}
 		out[name] = d.fact(m, rule)

@@ -19,7 +19,7 @@ type Fault struct {
 // Faults are in the order of the document.
 type Faults []Fault
 
-// MaxFaults is how many faults are listed; one more then tells how many there are.
+// MaxFaults is how many faults are listed; one more then tells that there are others.
 const MaxFaults = 500
 
 func (f Faults) Error() string {
@@ -52,18 +52,23 @@ func place(pointer string) string {
 type found struct {
 	at         int32
 	code, says string
+	more       func() string // the rest of says; asked for only where the fault is listed
 }
 
 // report sorts what was found by place, so that the same document always gives the same faults.
 func (t *tree) report(all []found) Faults {
-	slices.SortStableFunc(all, func(a, b found) int {
+	order := func(a, b found) int {
 		return cmp.Or(cmp.Compare(a.at, b.at), cmp.Compare(a.code, b.code), cmp.Compare(a.says, b.says))
-	})
-	all = slices.Compact(all)
+	}
+	slices.SortStableFunc(all, order)
+	all = slices.CompactFunc(all, func(a, b found) bool { return order(a, b) == 0 })
 	out := make(Faults, 0, min(len(all), MaxFaults+1))
 	for i, f := range all {
 		if i == MaxFaults {
-			return append(out, Fault{"", MoreFaults, fmt.Sprintf("the document has %d faults; the first %d are listed", len(all), MaxFaults)})
+			return append(out, Fault{"", MoreFaults, fmt.Sprintf("the document has more than %d faults; the first ones are listed", MaxFaults)})
+		}
+		if f.more != nil {
+			f.says += f.more()
 		}
 		out = append(out, Fault{t.pointer(f.at), f.code, f.says})
 	}

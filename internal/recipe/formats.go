@@ -147,7 +147,7 @@ var (
 )
 
 func matching(s string, form *regexp.Regexp, wanted string) (string, error) {
-	if len(s) > 100 || !form.MatchString(s) {
+	if !form.MatchString(s) {
 		return "", fmt.Errorf("%s is not %s", quote(s), wanted)
 	}
 	return s, nil

@@ -10,17 +10,25 @@ import (
 
 // ingredientList reads the ingredients of a recipe on the given level, 1 for the product itself.
 func (d *decoder) ingredientList(at int32, level int) []Ingredient {
-	out := make([]Ingredient, 0, d.nodes[at].count)
-	ids := make(map[string]int32, d.nodes[at].count)
+	out := make([]Ingredient, 0, min(d.nodes[at].count, MaxIngredients))
+	ids := make(map[string]int32, min(d.nodes[at].count, MaxIngredients))
 	d.elements(at, func(m int32) {
-		if d.ingredients++; d.ingredients == MaxIngredients+1 {
-			d.fault(m, TooManyParts, fmt.Sprintf("this is ingredient %d of the document; at most %d are read", d.ingredients, MaxIngredients))
+		if d.ingredients++; d.ingredients > MaxIngredients {
+			d.tooMany(m)
+			return
 		}
 		in := d.ingredient(m, level)
 		d.uniqueID(m, in.ID, ids)
 		out = append(out, in)
 	})
 	return out
+}
+
+// tooMany complains once; what lies beyond the limit is not read.
+func (d *decoder) tooMany(at int32) {
+	if d.ingredients == MaxIngredients+1 {
+		d.fault(at, TooManyParts, fmt.Sprintf("this is ingredient %d of the document; at most %d are read", d.ingredients, MaxIngredients))
+	}
 }
 
 func (d *decoder) uniqueID(at int32, id string, seen map[string]int32) {

@@ -122,7 +122,7 @@ func (d *decoder) groupBeside(p *Profile, group int, at int32) {
 	var members []string
 	g := p.Acids[group]
 	for _, a := range p.Acids {
-		if a.Species != g.Species && len(members) < shown && g.Species.Contains(a.Species) == lipid.Yes {
+		if len(members) < shown && a.Species != g.Species && g.Species.Contains(a.Species) == lipid.Yes {
 			members = append(members, quote(a.Notation))
 		}
 	}

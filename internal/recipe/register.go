@@ -8,7 +8,7 @@ import (
 func (d *decoder) component(at int32, tag string) (unit string, ok bool) {
 	c, ok := food.Lookup(tag)
 	if !ok && !d.nodes[at].faulty {
-		d.fault(at, UnknownTag, quote(tag)+" is no tagname of the component register"+suggest(tag, tagnames()))
+		d.unknown(at, UnknownTag, quote(tag)+" is no tagname of the component register", tag, tagnames)
 	}
 	return string(c.Unit), ok
 }

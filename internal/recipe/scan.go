@@ -15,6 +15,7 @@ import (
 const (
 	MaxBytes      = 1 << 20
 	MaxDepth      = 64
+	MaxValues     = 100_000 // objects, arrays, texts, numbers and literals
 	MaxText       = 1000 // characters of a text or a member's name
 	MaxNumberText = 40   // characters of a JSON number
 )
@@ -50,6 +51,9 @@ func scan(doc []byte) (s *scanner, fatal *Fault) {
 	for {
 		if fatal := s.step(); fatal != nil {
 			return s, fatal
+		}
+		if len(s.nodes) > MaxValues {
+			return s, &Fault{"", TooManyValues, fmt.Sprintf("the document has more than %d values; no recipe needs as many", MaxValues)}
 		}
 		if len(s.open) == 0 {
 			return s, s.end()
@@ -154,10 +158,11 @@ func (s *scanner) top() *frame {
 
 func (s *scanner) complain(at int32, code, says string) {
 	s.nodes[at].faulty = true
-	s.found = append(s.found, found{at, code, says})
+	s.found = append(s.found, found{at: at, code: code, says: says})
 }
 
-// add hangs a node into the tree. A member whose name was there before stays outside: it is complained about, not read.
+// add hangs a node into the tree. A member without a name, or whose name was there before, stays outside: it is
+// complained about, not read.
 func (s *scanner) add(n node) int32 {
 	at := int32(len(s.nodes))
 	f := s.top()
@@ -167,15 +172,15 @@ func (s *scanner) add(n node) int32 {
 		return at
 	}
 	n.parent, n.name = f.at, f.name
-	twice := f.named && s.twice(f)
+	outside := f.named && (f.name == "" || s.twice(f))
 	if s.nodes[f.at].kind == '[' {
 		n.index = s.nodes[f.at].count
 	}
 	s.nodes = append(s.nodes, n)
-	if !twice {
+	if !outside {
 		s.link(f, at)
 	}
-	s.nameFaults(f, at, twice)
+	s.nameFaults(f, at, outside)
 	f.name, f.named, f.rawBad = "", false, false
 	return at
 }
@@ -190,11 +195,13 @@ func (s *scanner) link(f *frame, at int32) {
 	s.nodes[f.at].count++
 }
 
-func (s *scanner) nameFaults(f *frame, at int32, twice bool) {
+func (s *scanner) nameFaults(f *frame, at int32, outside bool) {
 	switch {
 	case f.rawBad:
 		s.complain(at, BadText, "the member's name is not valid UTF-8, or escapes half of a surrogate pair")
-	case twice:
+	case outside && f.name == "":
+		s.complain(at, Empty, "the member's name is empty")
+	case outside:
 		s.complain(at, DuplicateName, "the object has the member "+quote(f.name)+" twice; keep one")
 	case tooLong(f.name):
 		s.complain(at, StringTooLong, fmt.Sprintf("the member's name has more than %d characters", MaxText))

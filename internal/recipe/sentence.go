@@ -1,6 +1,7 @@
 package recipe
 
 import (
+	"cmp"
 	"slices"
 	"strings"
 )
@@ -37,7 +38,9 @@ func (e *explanation) add(v violation) {
 			e.say(v.at, BadFormat, "the text is not written as wanted"+e.example(in))
 		}
 	case "minItems", "minProperties", "minLength":
-		e.say(v.at, Empty, "something is wanted here"+e.example(in))
+		if e.document.nodes[v.at].count == 0 { // else its content lies beyond the last fault that is listed
+			e.say(v.at, Empty, "something is wanted here"+e.example(in))
+		}
 	case "maxItems", "maxProperties", "maxLength":
 		e.say(v.at, TooMany, "at most "+e.schema.nodes[e.schema.member(in, pointer[cut+1:])].text+" are read")
 	default:
@@ -46,7 +49,7 @@ func (e *explanation) add(v violation) {
 }
 
 func (e *explanation) say(at int32, code, says string) {
-	e.found = append(e.found, found{at, code, says})
+	e.found = append(e.found, found{at: at, code: code, says: says})
 }
 
 func (e *explanation) missing(at, in int32) {
@@ -69,14 +72,9 @@ func (e *explanation) unknown(at, in int32) {
 			continue
 		}
 		m := e.document.member(at, name)
-		says := quote(name) + " is not known here"
-		if near := suggest(name, known); near != "" {
-			says += near
-		} else {
-			says += "; known are " + list(known, "and")
-		}
+		more := func() string { return cmp.Or(suggest(name, known), "; known are "+list(known, "and")) }
 		if !e.document.nodes[m].faulty {
-			e.say(m, UnknownMember, says)
+			e.found = append(e.found, found{m, UnknownMember, quote(name) + " is not known here", more})
 		}
 	}
 }
@@ -138,7 +136,8 @@ func (e *explanation) example(in int32) string {
 func (e *explanation) notListed(at, in int32) {
 	known := e.schema.texts(e.schema.member(in, "enum"))
 	given := e.document.nodes[at].text
-	e.say(at, WrongValue, quote(given)+" is none of "+list(quoted(known), "and")+suggest(given, known))
+	more := func() string { return suggest(given, known) }
+	e.found = append(e.found, found{at, WrongValue, quote(given) + " is none of " + list(quoted(known), "and"), more})
 }
 
 // badFormat asks the parser itself. A format applies to a member's name where the schema says so of names.
