@@ -4,6 +4,8 @@ import (
 	"maps"
 	"slices"
 
+	"github.com/shopspring/decimal"
+
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
 )
@@ -69,7 +71,7 @@ func compareOn(c *rulebook.Condition, per string, x Context) Result {
 }
 
 // threshold is the threshold in base units.
-func threshold(c *rulebook.Condition) (d decimalValue) { return c.Threshold.Base() }
+func threshold(c *rulebook.Condition) decimal.Decimal { return c.Threshold.Base() }
 
 // measure builds the two sides for one food: the value is num/den in base units of the threshold.
 func measure(c *rulebook.Condition, per string, s Subject, x Context) side {

@@ -1,13 +1,9 @@
 package claim
 
 import (
-	"github.com/shopspring/decimal"
-
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
 )
-
-type decimalValue = decimal.Decimal
 
 // relative compares the product's value with the reference food's, both per the same basis.
 func relative(c *rulebook.Condition, per, says string, s side, x Context) Result {

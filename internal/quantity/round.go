@@ -104,3 +104,15 @@ func (r Ratio) Exact() Exact {
 func (r Ratio) Brief(decimals int32) string {
 	return r.Round(decimal.New(1, -decimals), TiesUp).String()
 }
+
+// Floor is r cut down to a number of decimals, Ceil r brought up: for ends of intervals, which may only move outward.
+func (r Ratio) Floor(decimals int32) decimal.Decimal {
+	n, d := r.Mul(Scaled(1, decimals)).fraction()
+	q, _ := new(big.Int).DivMod(n, d, new(big.Int))
+	return normal(decimal.NewFromBigInt(q, -decimals))
+}
+
+// Ceil is the least number of so many decimals that is not below r.
+func (r Ratio) Ceil(decimals int32) decimal.Decimal {
+	return r.Neg().Floor(decimals).Neg()
+}

@@ -14,8 +14,8 @@ type Rule[T any] struct {
 
 // A Version is one dated wording of a rule.
 type Version[T any] struct {
-	Head `json:",inline"`
-	Body T `json:",inline"`
+	Head `json:",embed"`
+	Body T `json:",embed"`
 }
 
 // Name is the last segment of a rule's identifier.

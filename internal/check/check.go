@@ -1,0 +1,136 @@
+// Package check is the core: a recipe, the rules and a request give a report. Check is a pure function; the same inputs
+// give the same report, byte for byte.
+//
+// The order of evaluation has no circles (lint proves it): quantities by each law's definitions, claims' conditions on exact
+// values, declared values, claims asked for with their statements, presence of lines, findings.
+package check
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
+)
+
+// A Request says how to check. On is the labelling date yyyy-mm-dd.
+type Request struct {
+	On         string
+	In         []string // markets; none takes the recipe's, and without those all of the set
+	Transition rulebook.Transition
+	Detail     string   // "" or "contributions"
+	Without    []string // presumption rules to leave out; "all" leaves all out
+}
+
+// Caution stands in every report.
+const Caution = "The law may have changed since these rules were written. Confirm every value, claim and statement against the current local " +
+	"regulation, with licensed or qualified practice where local codes ask for it. Allergens and food safety are outside a nutrition declaration. " +
+	"A value at the edge of a threshold is not a safe pass."
+
+// A checker carries one check.
+type checker struct {
+	recipe  *recipe.Recipe
+	book    *rulebook.Book
+	request Request
+	batch   *rollup.Batch
+	refs    map[string]*rollup.Batch
+	habits  *habits
+	laws    map[string]*rulebook.Law // of labels, by market and date
+}
+
+// Check judges a recipe. Faults are about the recipe or the request and point into the document ("/…") or name the
+// member of the request ("on", "in", "without").
+func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Faults) {
+	if q.Transition == "" {
+		q.Transition = rulebook.WhenRequired
+	}
+	c := &checker{recipe: r, book: book, request: q, refs: map[string]*rollup.Batch{}, laws: map[string]*rulebook.Law{}}
+	if faults := c.accept(); len(faults) > 0 {
+		return nil, faults
+	}
+	c.habits = newHabits(book, c.request.Without)
+	if faults := c.roll(); len(faults) > 0 {
+		return nil, faults
+	}
+	out := &Report{
+		Recipe: Identity{r.ID, r.Name, r.Digest}, Rules: RuleSet{book.Version, book.Digest}, Date: q.On, Transition: string(q.Transition),
+		Caution: Caution, Jurisdictions: []Market{}, Findings: []Finding{},
+	}
+	for _, f := range c.batch.Findings {
+		out.Findings = append(out.Findings, Finding{Kind: "recipe", Severity: "warning", Code: f.Code, Says: name(f.Ingredient) + f.Says, Pointer: f.Pointer})
+	}
+	tags := map[string]bool{}
+	for _, j := range c.request.In {
+		out.Jurisdictions = append(out.Jurisdictions, c.market(j, tags))
+	}
+	out.Composition = c.contents(tags)
+	return out, nil
+}
+
+func name(ingredient string) string {
+	if ingredient == "" {
+		return ""
+	}
+	return ingredient + ": "
+}
+
+// accept checks the request and settles the markets.
+func (c *checker) accept() recipe.Faults {
+	var faults recipe.Faults
+	bad := func(at, code, format string, args ...any) {
+		faults = append(faults, recipe.Fault{Pointer: at, Code: code, Says: fmt.Sprintf(format, args...)})
+	}
+	if !isDate(c.request.On) {
+		bad("on", "not-a-date", "%q is no date; write yyyy-mm-dd", c.request.On)
+	}
+	if t := c.request.Transition; t != rulebook.WhenRequired && t != rulebook.Newest {
+		bad("transition", "unknown-transition", `%q is neither "required" nor "newest"`, t)
+	}
+	if d := c.request.Detail; d != "" && d != "contributions" {
+		bad("detail", "unknown-detail", `%q is no detail; known is "contributions"`, d)
+	}
+	at := "in"
+	if len(c.request.In) == 0 {
+		c.request.In, at = c.recipe.Jurisdictions, "/jurisdictions"
+	}
+	if len(c.request.In) == 0 {
+		c.request.In = c.book.Jurisdictions()
+	}
+	known := c.book.Jurisdictions()
+	for _, j := range c.request.In {
+		if !slices.Contains(known, j) {
+			bad(at, "unknown-market", "%q is no market of this rule set; known are %s", j, strings.Join(known, ", "))
+		}
+	}
+	for _, id := range c.request.Without {
+		if id != "all" && !slices.ContainsFunc(c.book.Presumptions, func(r rulebook.Rule[rulebook.Presumption]) bool { return r.ID == id }) {
+			bad("without", "unknown-presumption", "%q is no presumption of this rule set", id)
+		}
+	}
+	return faults
+}
+
+// roll computes the product and its reference foods once for all markets.
+func (c *checker) roll() recipe.Faults {
+	options := rollup.Options{Label: c.label, Presume: c.habits.presume}
+	b, fault := rollup.Roll(recipe.Part{Ingredients: c.recipe.Ingredients, Yield: c.recipe.Yield}, options)
+	if fault != nil {
+		return recipe.Faults{{Pointer: fault.Pointer, Code: fault.Code, Says: fault.Says}}
+	}
+	c.batch = b
+	for i, n := range sortedKeys(c.recipe.References) {
+		ref := c.recipe.References[n]
+		options.FirstVariable = (i + 1) << 24
+		in := recipe.Ingredient{Pointer: ref.Pointer, ID: n, Name: ref.Name, Source: ref.Source, With: ref.With,
+			Amount: quantity.Amount{Value: hundred, Unit: quantity.Gram}}
+		b, fault := rollup.Roll(recipe.Part{Ingredients: []recipe.Ingredient{in}}, options)
+		if fault != nil {
+			return recipe.Faults{{Pointer: fault.Pointer, Code: fault.Code, Says: fault.Says}}
+		}
+		c.refs[n] = b
+	}
+	return nil
+}

@@ -1,0 +1,111 @@
+package check
+
+import (
+	"slices"
+	"strings"
+
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
+)
+
+var hundred = decimal.New(100, 0)
+
+// habits are the rules of practice, ready for look-up by component.
+type habits struct {
+	by      map[food.ID][]*rulebook.Rule[rulebook.Presumption]
+	origins []rulebook.Rule[rulebook.Origin]
+	names   map[*rollup.Leaf]string // lower-case food names
+	used    []Presumed
+	seen    map[Presumed]bool
+}
+
+func newHabits(b *rulebook.Book, without []string) *habits {
+	h := &habits{by: map[food.ID][]*rulebook.Rule[rulebook.Presumption]{}, origins: b.Origins, names: map[*rollup.Leaf]string{}, seen: map[Presumed]bool{}}
+	if slices.Contains(without, "all") {
+		return h
+	}
+	for i := range b.Presumptions {
+		r := &b.Presumptions[i]
+		if slices.Contains(without, r.ID) {
+			continue
+		}
+		for _, tag := range r.Versions[len(r.Versions)-1].Body.Components {
+			c, _ := food.Lookup(tag)
+			h.by[c.ID] = append(h.by[c.ID], r)
+		}
+	}
+	return h
+}
+
+// selects tells whether a selection takes a leaf's food.
+func (h *habits) selects(s *rulebook.Selection, l *rollup.Leaf) bool {
+	if !l.IsFood {
+		return false
+	}
+	if len(s.Foods) > 0 {
+		return slices.Contains(s.Foods, l.Food.Ref())
+	}
+	if len(s.Groups) > 0 && !slices.Contains(s.Groups, l.Food.Group().Code) {
+		return false
+	}
+	n, ok := h.names[l]
+	if !ok {
+		n = strings.ToLower(l.Food.Name())
+		h.names[l] = n
+	}
+	has := func(w string) bool { return strings.Contains(n, w) }
+	return (len(s.Words) == 0 || slices.ContainsFunc(s.Words, has)) && !slices.ContainsFunc(s.Without, has)
+}
+
+// presume is what practice takes for a component of a leaf.
+func (h *habits) presume(l *rollup.Leaf, id food.ID) (rollup.Presumed, bool) {
+	for _, r := range h.by[id] {
+		p := &r.Versions[len(r.Versions)-1].Body
+		if !h.selects(&p.Foods, l) {
+			continue
+		}
+		h.note(l, id, r.ID, p)
+		out := rollup.Presumed{Rule: r.ID}
+		if p.Take != "zero" {
+			of, _ := food.Lookup(p.Of)
+			out.Of, out.Share = of.ID, quantity.FromInt(1)
+			if p.Share != nil {
+				out.Share = quantity.FromDecimal(p.Share.Value.Shift(-2))
+			}
+			out.Upto = p.Take == "at most"
+		}
+		return out, true
+	}
+	return rollup.Presumed{}, false
+}
+
+func (h *habits) note(l *rollup.Leaf, id food.ID, rule string, p *rulebook.Presumption) {
+	c, _ := food.ByID(id)
+	taken := p.Take
+	if p.Share != nil {
+		taken += " " + p.Share.String() + " of"
+	}
+	if p.Of != "" {
+		taken += " " + p.Of
+	}
+	n := Presumed{Component: c.Tag, Ingredient: l.Path, Taken: taken, Reason: p.Reason, Rule: rule}
+	if !h.seen[n] {
+		h.seen[n] = true
+		h.used = append(h.used, n)
+	}
+}
+
+// origin is what practice knows of a leaf's trans fatty acids and fat; the zero value is nothing.
+func (h *habits) origin(l *rollup.Leaf) rulebook.Origin {
+	for i := range h.origins {
+		o := &h.origins[i].Versions[len(h.origins[i].Versions)-1].Body
+		if h.selects(&o.Foods, l) {
+			return *o
+		}
+	}
+	return rulebook.Origin{}
+}

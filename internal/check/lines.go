@@ -1,0 +1,240 @@
+package check
+
+import (
+	"slices"
+
+	"gramlaw/internal/declare"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
+)
+
+// A column is a basis of the declaration with its mass.
+type column struct {
+	Basis
+	grams quantity.Ratio
+	known bool
+}
+
+// A lineState is a line on its way to the report.
+type lineState struct {
+	line     *rulebook.Line
+	rule     rulebook.Active[rulebook.Declaration]
+	presence string
+	needed   bool // a claim makes it mandatory
+}
+
+// openColumns settles the bases. A liquid is declared per 100 mL where a solid is per 100 g.
+func (m *market) openColumns(out *Market) {
+	liquid := m.liquid()
+	for _, b := range m.law.Market.DefaultBases {
+		per := b.Per
+		if per == "100 mL" {
+			continue
+		}
+		if per == "100 g" && liquid {
+			per = "100 mL"
+		}
+		p, _ := rulebook.ParsePer(per)
+		g, ok := m.product.Basis(p)
+		if !ok && b.Presence == "optional" {
+			continue
+		}
+		c := column{Basis: Basis{ID: per, Amount: m.amountOf(p)}, grams: g, known: ok}
+		if ok {
+			c.Grams = exactText(g) + " g"
+		} else {
+			out.Findings = append(out.Findings, Finding{Kind: "serving", Severity: "open", Code: "basis-unknown", Says: "the mass of the basis “" + per + "” is not known: " + missingBasis(per)})
+		}
+		m.columns = append(m.columns, c)
+	}
+	if _, stated := m.c.recipe.Serving.For(m.j); !stated && slices.ContainsFunc(m.columns, func(c column) bool { return c.ID == "serving" && c.known }) {
+		out.Findings = append(out.Findings, Finding{Kind: "serving", Severity: "note", Code: "serving-not-stated", Says: "no serving was stated; the reference amount was taken"})
+	}
+}
+
+func missingBasis(per string) string {
+	if per == "serving" {
+		return "state a serving or a category, and a density where it is a volume"
+	}
+	return "state a density"
+}
+
+func (m *market) amountOf(p rulebook.Per) string {
+	switch p.Name {
+	case "serving":
+		s, ok := m.serving()
+		if !ok {
+			return ""
+		}
+		if s.Measure != "" {
+			return s.Measure + " (" + s.Amount.String() + ")"
+		}
+		return s.Amount.String()
+	case "":
+		return p.Amount.String()
+	}
+	return p.Name
+}
+
+func (m *market) openLines() {
+	for _, d := range m.law.Declarations.All {
+		for i := range d.Body.Lines {
+			l := &lineState{line: &d.Body.Lines[i], rule: d}
+			m.lines[l.line.Quantity] = l
+			m.order = append(m.order, l)
+		}
+		break // one table a market
+	}
+}
+
+// stands tells whether a line is in the declaration: mandatory, or raised by a condition or a claim.
+func (v view) stands(l *lineState) bool {
+	return l.needed || l.line.Presence == "mandatory" || l.line.MandatoryIf != nil && v.truth(l.line.MandatoryIf) == quantity.Yes
+}
+
+// on brings a quantity to a column's basis: per basis, in base units.
+func (c column) on(q quantity.Linear, mass quantity.Ratio) quantity.Linear {
+	return q.Mul(c.grams.Quo(mass))
+}
+
+// possible lists what a quantity may print as on the first column: one outcome when determined.
+func (v view) possible(q string) []declare.Printed {
+	if len(v.columns) == 0 || !v.columns[0].known {
+		return nil
+	}
+	l, ok := v.subject.Quantity(q)
+	r, rounded := v.law.RoundingOf(q)
+	if !ok || !rounded || len(r.Body.Bands) == 0 {
+		return nil
+	}
+	return v.outcomes(r.Body, v.columns[0].on(l, v.subject.Mass()), v.unit(q)).printed()
+}
+
+// unit is the unit in which a quantity is printed.
+func (v view) unit(q string) quantity.Unit {
+	name := ""
+	if l, ok := v.lines[q]; ok && l.line.Unit != "" {
+		name = l.line.Unit
+	} else if d, ok := v.law.Definitions.Get(q); ok {
+		name = d.Body.Unit
+	} else if e, ok := v.law.Energy.Get(q); ok {
+		name = e.Body.Unit
+	}
+	u, _ := quantity.ParseUnit(name)
+	return u
+}
+
+type outcomes []declare.Outcome
+
+// outcomes rounds both ends of a value. Rounding is monotonic, so the ends enclose what is between.
+func (v view) outcomes(r *rulebook.Rounding, value quantity.Linear, u quantity.Unit) outcomes {
+	out := outcomes(declare.Round(r.Bands, r.Ties, value.Low(), u, v.truth))
+	if !value.Determined() {
+		out = append(out, declare.Round(r.Bands, r.Ties, value.High(), u, v.truth)...)
+	}
+	return out
+}
+
+func (o outcomes) printed() []declare.Printed {
+	out := make([]declare.Printed, len(o))
+	for i := range o {
+		out[i] = o[i].Printed
+	}
+	return out
+}
+
+// determined tells whether all outcomes print alike.
+func (o outcomes) determined() bool {
+	for i := range o {
+		if !o[i].Printed.Equal(o[0].Printed) {
+			return false
+		}
+	}
+	return len(o) > 0
+}
+
+// table builds the declaration.
+func (m *market) table() Table {
+	t := Table{Lines: []Line{}, Statements: []Statement{}, Bases: []Basis{}}
+	for _, c := range m.columns {
+		t.Bases = append(t.Bases, c.Basis)
+	}
+	v := m.as(m.product)
+	for _, l := range m.order {
+		if line, ok := v.reportLine(l); ok {
+			t.Lines = append(t.Lines, line)
+		}
+		t.Title, t.Rule = l.rule.Body.Title.In(m.language()), l.rule.ID
+	}
+	for _, d := range m.law.Declarations.All {
+		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
+	}
+	return t
+}
+
+func (m *market) language() string { return m.law.Market.Languages[0] }
+
+func (v view) reportLine(l *lineState) (Line, bool) {
+	q, ok := v.subject.Quantity(l.line.Quantity)
+	if !ok || l.line.Presence == "forbidden" {
+		return Line{}, false
+	}
+	out := Line{Quantity: l.line.Quantity, Component: l.line.Component, Level: l.line.Level, Status: "determined", Presence: "optional",
+		Values: []Value{}, Term: l.line.Terms[v.language()][0], Terms: v.terms(l.line)}
+	if v.stands(l) {
+		out.Presence = "mandatory"
+		if l.line.LeaveOutIf != nil && !l.needed && v.truth(l.line.LeaveOutIf) == quantity.Yes {
+			out.Presence = "may be left out"
+			out.LeftOut = l.line.LeftOut.In(v.language())
+		}
+	}
+	for _, c := range v.columns {
+		if !c.known {
+			out.Status = "undetermined"
+			continue
+		}
+		value, settled := v.value(l, c, c.on(q, v.subject.Mass()))
+		if !settled {
+			out.Status = "undetermined"
+		}
+		out.Values = append(out.Values, value)
+	}
+	if out.Status != "determined" {
+		out.Needs = v.needs(q.Variables())
+	}
+	return out, true
+}
+
+func (v view) terms(l *rulebook.Line) map[string]string {
+	if len(v.law.Market.Languages) < 2 {
+		return nil
+	}
+	out := map[string]string{}
+	for _, lang := range v.law.Market.Languages {
+		if words := l.Terms[lang]; len(words) > 0 {
+			out[lang] = words[0]
+		}
+	}
+	return out
+}
+
+// needs names the ingredients on whose data variables depend.
+func (m *market) needs(vars []*quantity.Variable) []string {
+	var out []string
+	add := func(b *rollup.Batch, prefix string, x *quantity.Variable) {
+		if o, ok := b.Owner(x); ok {
+			s := prefix + o.Leaf.Path + " (" + o.What + ")"
+			if !slices.Contains(out, s) {
+				out = append(out, s)
+			}
+		}
+	}
+	for _, x := range vars {
+		add(m.c.batch, "", x)
+		for _, n := range sortedKeys(m.c.refs) {
+			add(m.c.refs[n], "reference food ", x)
+		}
+	}
+	return out
+}

@@ -1,0 +1,314 @@
+package check
+
+import (
+	"maps"
+	"slices"
+	"strings"
+	"time"
+
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/claim"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
+)
+
+func sortedKeys[T any](m map[string]T) []string { return slices.Sorted(maps.Keys(m)) }
+
+func isDate(s string) bool {
+	_, err := time.Parse("2006-01-02", s)
+	return err == nil
+}
+
+// A market is the check of one jurisdiction.
+type market struct {
+	c       *checker
+	j       string
+	law     *rulebook.Law
+	product *product
+	refs    map[string]*product
+	assumed map[string]Assumed
+	about   map[string]bool // subjects of the claims that stand
+	lines   map[string]*lineState
+	order   []*lineState
+	columns []column
+}
+
+// market judges one jurisdiction and adds the components it speaks of to tags.
+func (c *checker) market(j string, tags map[string]bool) Market {
+	m := c.open(j, c.request.Transition)
+	out := m.judge()
+	out.Other = m.other(out)
+	for _, l := range m.order {
+		tags[l.line.Component] = true
+	}
+	return out
+}
+
+func (c *checker) open(j string, t rulebook.Transition) *market {
+	m := &market{c: c, j: j, refs: map[string]*product{}, assumed: map[string]Assumed{}, about: map[string]bool{}, lines: map[string]*lineState{}}
+	rules, _ := c.book.Rules(j)
+	m.law = &rulebook.Law{Market: &rules.Market} // facts may be asked while versions are chosen
+	m.law, _ = c.book.At(j, c.request.On, t, m.as(nil).truth)
+	m.product = newProduct(m, c.batch)
+	return m
+}
+
+func (m *market) judge() Market {
+	law := m.law
+	out := Market{Jurisdiction: m.j, Name: law.Market.Name, Edition: law.Edition, Claims: []Claim{}, AlsoPermitted: []Candidate{},
+		FrontOfPack: []string{}, Findings: []Finding{}, Presumed: []Presumed{}, Assumed: []Assumed{}, Gaps: law.Market.Gaps, Caution: law.Market.Caution}
+	m.openColumns(&out)
+	m.openLines()
+	out.Claims = m.claims()
+	out.AlsoPermitted = m.alsoPermitted(out.Claims)
+	m.printability(out.Claims)
+	out.Declaration = m.table()
+	out.Findings = append(out.Findings, m.limits()...)
+	out.Presumed = m.presumed()
+	for _, f := range sortedKeys(m.assumed) {
+		out.Assumed = append(out.Assumed, m.assumed[f])
+	}
+	return out
+}
+
+// presumed lists what practice was asked for so far, for components this market speaks of.
+func (m *market) presumed() []Presumed {
+	out := slices.Clone(m.c.habits.used)
+	slices.SortFunc(out, func(a, b Presumed) int {
+		return strings.Compare(a.Rule+"\x00"+a.Component+"\x00"+a.Ingredient, b.Rule+"\x00"+b.Component+"\x00"+b.Ingredient)
+	})
+	if out == nil {
+		out = []Presumed{}
+	}
+	return out
+}
+
+// grams is the mass of an amount: as it is, by its stated grams, or by the food's density.
+func (m *market) grams(a quantity.Amount, stated *quantity.Amount) (quantity.Ratio, bool) {
+	switch {
+	case a.Unit.Dimension() == quantity.Mass:
+		return quantity.FromDecimal(a.Base()), true
+	case stated != nil:
+		return quantity.FromDecimal(stated.Base()), true
+	case a.Unit.Dimension() != quantity.Volume:
+		return quantity.Ratio{}, false
+	}
+	d, ok := m.c.recipe.Density.For(m.j)
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	return quantity.FromDecimal(a.Base().Mul(d)), true
+}
+
+// referenceAmount is the recipe's own, or its category's.
+func (m *market) referenceAmount() (recipe.ReferenceAmount, bool) {
+	if r, ok := m.c.recipe.ReferenceAmount.For(m.j); ok {
+		return r, true
+	}
+	category, ok := m.c.recipe.Category.For(m.j)
+	if !ok {
+		return recipe.ReferenceAmount{}, false
+	}
+	r, ok := m.law.ReferenceAmounts.Get(category)
+	if !ok {
+		return recipe.ReferenceAmount{}, false
+	}
+	return recipe.ReferenceAmount{Amount: r.Body.Amount}, true
+}
+
+// serving is the recipe's serving; without one the reference amount stands in.
+func (m *market) serving() (recipe.Serving, bool) {
+	if s, ok := m.c.recipe.Serving.For(m.j); ok {
+		return s, true
+	}
+	r, ok := m.referenceAmount()
+	return recipe.Serving{Amount: r.Amount}, ok
+}
+
+func (m *market) liquid() bool {
+	s, _ := m.c.recipe.State.For(m.j)
+	return s == "liquid"
+}
+
+// A view is the market seen with one food as the product of a condition, and one as its reference food. It is a
+// claim.Context.
+type view struct {
+	*market
+	subject *product
+	ref     *product
+}
+
+func (m *market) as(p *product) view { return view{market: m, subject: p} }
+
+func (v view) truth(c *rulebook.Condition) quantity.Truth { return claim.Evaluate(c, v).Truth }
+
+// Product is the food the condition speaks of.
+func (v view) Product() claim.Subject { return v.subject }
+
+// Reference is the food it is compared with.
+func (v view) Reference() (claim.Subject, bool) { return v.ref, v.ref != nil }
+
+// Name is a quantity in words.
+func (v view) Name(q string) string {
+	if d, ok := v.law.Definitions.Get(q); ok {
+		return d.Body.Name.In("en")
+	}
+	if e, ok := v.law.Energy.Get(q); ok {
+		return e.Body.Name.In("en")
+	}
+	return strings.ReplaceAll(q, "-", " ")
+}
+
+// EnergyFactor is kcal per g of a quantity: its own, or that of the quantity it counts as.
+func (v view) EnergyFactor(q string) (quantity.Ratio, bool) {
+	e, ok := v.law.Energy.Get("energy")
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	factors := e.Body.Methods[0].Factors
+	if f, ok := factors[q]; ok {
+		return quantity.FromDecimal(f), true
+	}
+	d, ok := v.law.Definitions.Get(q)
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	f, ok := factors[d.Body.EnergyAs]
+	return quantity.FromDecimal(f), ok
+}
+
+const everybody = "general population"
+
+// population is for whom the food is made, as reference values name it.
+func (v view) population() string {
+	for _, p := range []string{"children 1 to 3", "infants", "pregnant or lactating"} {
+		if v.stated("intended for", p) == quantity.Yes {
+			return p
+		}
+	}
+	return everybody
+}
+
+// ReferenceValue is the reference value of a quantity in base units.
+func (v view) ReferenceValue(q string) (quantity.Ratio, bool) {
+	r, ok := v.law.ReferenceOf(q)
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	a, ok := r.Body.Amounts[v.population()]
+	return quantity.FromDecimal(a.Base()), ok
+}
+
+// stated compares a fact the recipe states.
+func (m *market) stated(name, is string) quantity.Truth {
+	f, ok := m.c.recipe.Facts[name]
+	if !ok {
+		return quantity.Open
+	}
+	if f.Text != "" {
+		return quantity.TruthOf(f.Text == is)
+	}
+	if f.Flag == quantity.Open {
+		return quantity.Open
+	}
+	return quantity.TruthOf((f.Flag == quantity.Yes) == (is == "yes"))
+}
+
+// Fact compares a fact: as stated, else as the market's rules assume, which is noted.
+func (v view) Fact(name, is string) quantity.Truth {
+	if name == "state" {
+		if s, ok := v.c.recipe.State.For(v.j); ok {
+			return quantity.TruthOf(s == is)
+		}
+	} else if t := v.stated(name, is); t != quantity.Open {
+		return t
+	}
+	for _, a := range v.law.Market.Assumed {
+		if a.Fact == name {
+			v.assumed[name] = Assumed{a.Fact, a.Is, a.Why}
+			return quantity.TruthOf(a.Is == is)
+		}
+	}
+	return quantity.Open
+}
+
+// ReferenceAmount tells whether the reference amount is at most one of the amounts in its own kind of unit.
+func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
+	r, ok := v.referenceAmount()
+	if !ok {
+		return quantity.Open
+	}
+	for _, a := range atMost {
+		if a.Unit.Dimension() == r.Amount.Unit.Dimension() && !r.Amount.Base().GreaterThan(a.Base()) {
+			return quantity.Yes
+		}
+	}
+	return quantity.No
+}
+
+// ClaimedAbout tells whether a claim that stands is about one of the subjects.
+func (v view) ClaimedAbout(subjects []string) quantity.Truth {
+	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return v.about[s] || s == "any" && len(v.about) > 0 }))
+}
+
+// NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit.
+func (v view) NoIngredient(c *rulebook.Condition) quantity.Truth {
+	found := quantity.No
+	for _, l := range v.subject.batch.Leaves {
+		if l.Ingredient != nil {
+			found = quantity.Any(found, v.processed(c, l))
+		}
+	}
+	return found.Not()
+}
+
+func (v view) processed(c *rulebook.Condition, l *rollup.Leaf) quantity.Truth {
+	process := l.Ingredient.Process
+	if process == "" {
+		process = v.c.habits.origin(l).Process
+	}
+	if !slices.Contains(c.Process, process) {
+		return quantity.No
+	}
+	if c.IodineAbove == nil {
+		return quantity.Yes
+	}
+	low, high, ok := iodineValue(l)
+	switch limit := quantity.FromDecimal(*c.IodineAbove); {
+	case !ok:
+		return quantity.Open
+	case low.Cmp(limit) > 0:
+		return quantity.Yes
+	case high.Cmp(limit) <= 0:
+		return quantity.No
+	}
+	return quantity.Open
+}
+
+// Declared compares what a line prints on the first basis with "0", or asks whether the line stands.
+func (v view) Declared(q, is string) quantity.Truth {
+	if is == "" {
+		l, ok := v.lines[q]
+		return quantity.TruthOf(ok && v.stands(l))
+	}
+	p := v.possible(q)
+	want, err := decimal.NewFromString(is)
+	if err != nil || len(p) == 0 {
+		return quantity.Open
+	}
+	all, none := true, true
+	for _, o := range p {
+		same := !o.LessThan && o.Value.Equal(want)
+		all, none = all && same, none && !same
+	}
+	switch {
+	case all:
+		return quantity.Yes
+	case none:
+		return quantity.No
+	}
+	return quantity.Open
+}

@@ -1,0 +1,285 @@
+package check
+
+import (
+	"slices"
+
+	"gramlaw/internal/food"
+	"gramlaw/internal/lipid"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
+)
+
+// A product is a batch under one law: it knows that law's quantities. It is a claim.Subject.
+type product struct {
+	m      *market
+	batch  *rollup.Batch
+	leaves map[string][]part // quantity -> contribution of each leaf
+	totals map[string]quantity.Linear
+	meets  map[string]quantity.Truth
+	from   map[string]quantity.Linear
+}
+
+// A part is one leaf's contribution to a quantity.
+type part struct {
+	amount   quantity.Linear
+	complete bool // found by a way whose data are complete
+	way      int
+}
+
+func newProduct(m *market, b *rollup.Batch) *product {
+	return &product{m: m, batch: b, leaves: map[string][]part{}, totals: map[string]quantity.Linear{},
+		meets: map[string]quantity.Truth{}, from: map[string]quantity.Linear{}}
+}
+
+// Mass is the batch's mass in g.
+func (p *product) Mass() quantity.Ratio { return p.batch.Mass }
+
+// Quantity is the batch's content of a quantity of the law.
+func (p *product) Quantity(name string) (quantity.Linear, bool) {
+	if t, ok := p.totals[name]; ok {
+		return t, true
+	}
+	if e, ok := p.m.law.Energy.Get(name); ok {
+		return p.energy(name, &e.Body.Methods[0])
+	}
+	parts, ok := p.parts(name)
+	if !ok {
+		return quantity.Linear{}, false
+	}
+	var sum quantity.Linear
+	for i := range parts {
+		sum = sum.Add(parts[i].amount)
+	}
+	p.totals[name] = sum
+	return sum, true
+}
+
+// energy applies a method's factors to exact amounts. name is "" for an alternative method.
+func (p *product) energy(name string, m *rulebook.Method) (quantity.Linear, bool) {
+	var sum quantity.Linear
+	for _, q := range sortedKeys(m.Factors) {
+		l, ok := p.Quantity(q)
+		if !ok {
+			return quantity.Linear{}, false
+		}
+		sum = sum.Add(l.Times(m.Factors[q]))
+	}
+	if name != "" {
+		p.totals[name] = sum
+	}
+	return sum, true
+}
+
+// parts is what each leaf contributes to a defined quantity.
+func (p *product) parts(name string) ([]part, bool) {
+	if parts, ok := p.leaves[name]; ok {
+		return parts, true
+	}
+	d, ok := p.m.law.Definitions.Get(name)
+	if !ok {
+		return nil, false
+	}
+	parts := make([]part, len(p.batch.Leaves))
+	for i, l := range p.batch.Leaves {
+		part, ok := p.resolve(d.Body, l)
+		if !ok {
+			return nil, false
+		}
+		parts[i] = part
+	}
+	p.leaves[name] = parts
+	return parts, true
+}
+
+// resolve takes the first way whose data are complete for a leaf, else the last with what is missing between its bounds.
+func (p *product) resolve(d *rulebook.Definition, l *rollup.Leaf) (part, bool) {
+	var out part
+	for i := range d.Ways {
+		w := &d.Ways[i]
+		amount, complete, ok := p.way(d, w, l)
+		if !ok {
+			return part{}, false
+		}
+		out = part{amount, complete, i}
+		if complete {
+			break
+		}
+	}
+	return out, true
+}
+
+func (p *product) way(d *rulebook.Definition, w *rulebook.Way, l *rollup.Leaf) (amount quantity.Linear, complete, ok bool) {
+	switch {
+	case w.Acids != nil:
+		if !l.HasProfile() {
+			return quantity.Linear{}, false, true
+		}
+		return acids(w.Class(), w.Acids.Every, d.ExpressedAs == "triglyceride", l), true, true
+	case w.Sum != nil:
+		amount, complete = components(w, l)
+		return amount, complete, true
+	}
+	complete = true
+	for _, q := range sortedKeys(w.Of) {
+		parts, ok := p.parts(q)
+		if !ok {
+			return quantity.Linear{}, false, false
+		}
+		one := parts[l.Index]
+		amount = amount.Add(one.amount.Times(w.Of[q]))
+		complete = complete && one.complete
+	}
+	return amount, complete, true
+}
+
+func components(w *rulebook.Way, l *rollup.Leaf) (sum quantity.Linear, complete bool) {
+	complete = true
+	for _, tag := range sortedKeys(w.Sum) {
+		c, _ := food.Lookup(tag)
+		a := l.Component(c.ID)
+		complete = complete && (a.How != rollup.Bounded || a.Determined())
+		sum = sum.Add(a.Times(w.Sum[tag]))
+	}
+	return sum, complete
+}
+
+// acids sums the acids of a class. Of a group that the class leaves open, anything from none to all may count; of what the
+// profile leaves unidentified likewise, with none as the typical value.
+func acids(class *lipid.Class, every, triglyceride bool, l *rollup.Leaf) quantity.Linear {
+	var sum quantity.Linear
+	for _, a := range l.Acids() {
+		amount := a.Acid
+		if triglyceride {
+			amount = a.Triglyceride
+		}
+		switch {
+		case every:
+			sum = sum.Add(amount)
+		case !a.Identified:
+			v := l.Variable("unidentified fatty acids", quantity.Ratio{}, amount.High(), quantity.Ratio{}, true)
+			sum = sum.Add(quantity.Of(v))
+		case class.Holds(a.Species) == lipid.Yes:
+			sum = sum.Add(amount)
+		case class.Holds(a.Species) == lipid.Open:
+			v := l.Variable(a.Species.String(), quantity.Ratio{}, amount.High(), quantity.Ratio{}, false)
+			sum = sum.Add(quantity.Of(v))
+		}
+	}
+	return sum
+}
+
+// From is the part of a quantity that comes from an origin: ruminant fat, or anything else.
+func (p *product) From(name, origin string) (quantity.Linear, bool) {
+	key := name + "\x00" + origin
+	if t, ok := p.from[key]; ok {
+		return t, true
+	}
+	parts, ok := p.parts(name)
+	if !ok {
+		return quantity.Linear{}, false
+	}
+	var sum quantity.Linear
+	for i, l := range p.batch.Leaves {
+		sum = sum.Add(p.originShare(parts[i].amount, l, origin))
+	}
+	p.from[key] = sum
+	return sum, true
+}
+
+func (p *product) originShare(amount quantity.Linear, l *rollup.Leaf, origin string) quantity.Linear {
+	ruminant, known := p.ruminant(l)
+	share := ruminant
+	if origin != "ruminant" {
+		share = quantity.FromInt(1).Sub(ruminant)
+	}
+	if known {
+		return amount.Mul(share)
+	}
+	if high := amount.High(); high.Sign() > 0 {
+		return quantity.Of(l.Variable("origin of trans fatty acids", quantity.Ratio{}, high, quantity.Ratio{}, false))
+	}
+	return quantity.Linear{}
+}
+
+var industrialProcesses = []string{"refined", "partially hydrogenated", "fully hydrogenated", "hydrogenated"}
+
+// ruminant is the share of a leaf's trans fatty acids that comes from ruminants.
+func (p *product) ruminant(l *rollup.Leaf) (quantity.Ratio, bool) {
+	if l.Ingredient == nil {
+		return quantity.Ratio{}, true
+	}
+	if shares := l.Ingredient.TransOrigin; len(shares) > 0 {
+		var r quantity.Ratio
+		for _, s := range shares {
+			if s.Origin == "ruminant" {
+				r = r.Add(quantity.FromDecimal(s.Share.Shift(-2)))
+			}
+		}
+		return r, true
+	}
+	if f, ok := p.m.c.recipe.Facts["trans origin"]; ok {
+		return quantity.FromInt(map[bool]int64{true: 1}[f.Text == "ruminant"]), true
+	}
+	switch p.m.c.habits.origin(l).Origin {
+	case "ruminant":
+		return quantity.FromInt(1), true
+	case "industrial":
+		return quantity.Ratio{}, true
+	}
+	if slices.Contains(industrialProcesses, l.Ingredient.Process) {
+		return quantity.Ratio{}, true
+	}
+	return quantity.Ratio{}, false
+}
+
+// Basis is the mass in g of a basis.
+func (p *product) Basis(per rulebook.Per) (quantity.Ratio, bool) {
+	switch per.Name {
+	case "serving":
+		s, ok := p.m.serving()
+		if !ok {
+			return quantity.Ratio{}, false
+		}
+		return p.m.grams(s.Amount, nil)
+	case "reference amount":
+		r, ok := p.m.referenceAmount()
+		if !ok {
+			return quantity.Ratio{}, false
+		}
+		return p.m.grams(r.Amount, r.Grams)
+	case "package":
+		if p.m.c.recipe.Package == nil || p.m.c.recipe.Package.Net == nil {
+			return quantity.Ratio{}, false
+		}
+		return p.m.grams(*p.m.c.recipe.Package.Net, nil)
+	}
+	return p.m.grams(per.Amount, nil)
+}
+
+// Meets answers whether the food meets the condition of a claim of the law.
+func (p *product) Meets(id string) quantity.Truth {
+	if t, ok := p.meets[id]; ok {
+		return t
+	}
+	t := quantity.No
+	if c, ok := p.m.law.Claims.Get(rulebook.Name(id)); ok && !c.Body.Prohibited {
+		t = p.m.as(p).truth(c.Body.Condition)
+	}
+	p.meets[id] = t
+	return t
+}
+
+// reference builds the subject of a reference food; false when there is none of that name.
+func (m *market) reference(name string) (*product, bool) {
+	if r, ok := m.refs[name]; ok {
+		return r, true
+	}
+	b, ok := m.c.refs[name]
+	if !ok {
+		return nil, false
+	}
+	r := newProduct(m, b)
+	m.refs[name] = r
+	return r, true
+}

@@ -1,0 +1,220 @@
+package check
+
+import (
+	"strings"
+
+	"gramlaw/internal/declare"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rulebook"
+)
+
+// value is a line on one column; settled tells whether it prints one thing only.
+func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
+	u, unit := v.unit(l.line.Quantity), l.line.Unit
+	r, ok := v.law.RoundingOf(l.line.Quantity)
+	inUnit := func(r quantity.Ratio) quantity.Ratio { return r.Mul(quantity.Scaled(1, -u.Scale().Exponent())) }
+	out := Value{Basis: c.ID, Low: exactText(quantity.Max(inUnit(x.Low()), quantity.Ratio{})), High: exactText(inUnit(x.High())), Unit: u.String(), Alternatives: []string{}}
+	if mid, known := x.Central(); known {
+		out.setExact(inUnit(mid))
+	}
+	if !ok {
+		return out, false
+	}
+	out.Rule = r.ID
+	out.Source, out.Force, out.Evidence = sourceOf(r.Head)
+	settled := true
+	var printed outcomes
+	if len(r.Body.Bands) > 0 {
+		printed = v.outcomes(r.Body, x, u)
+		settled = printed.determined()
+		v.print(&out, l, printed, unit != "", u)
+	}
+	if l.line.Percent != "none" && r.Body.Percent != nil {
+		p, one := v.percent(l, r, x, printed)
+		out.PercentReference = p
+		settled = settled && (one || l.line.Percent == "optional")
+	}
+	if l.line.Quantity == "energy" || v.isEnergy(l.line.Quantity) {
+		v.energyAlternatives(&out, l, c, r.Body, u)
+	}
+	if v.c.request.Detail == "contributions" {
+		out.Contributions = v.contributions(l.line.Quantity, c, u)
+	}
+	return out, settled
+}
+
+func (o *Value) setExact(r quantity.Ratio) {
+	x := r.Exact()
+	s := x.Decimal.String()
+	o.Exact, o.Truncated = &s, x.Truncated
+	if x.Truncated {
+		o.Ratio = []string{x.Num, x.Den}
+	}
+}
+
+// print fills in what stands on the label: one text, or the range of texts that are possible.
+func (v view) print(out *Value, l *lineState, printed outcomes, amount bool, u quantity.Unit) {
+	if len(printed) == 0 || !amount {
+		return
+	}
+	format := func(lang string, p declare.Printed) string { return declare.Text(p, u, l.rule.Body.Number[lang]) }
+	lang := v.language()
+	first, last := printed[0].Printed, printed[len(printed)-1].Printed
+	if !printed.determined() {
+		out.Text = format(lang, first) + " to " + format(lang, last)
+		return
+	}
+	out.Text = format(lang, first)
+	if !first.LessThan {
+		s := first.Value.String()
+		out.Declared = &s
+	}
+	for _, a := range printed[0].Alternatives {
+		out.Alternatives = append(out.Alternatives, format(lang, a))
+	}
+	if len(v.law.Market.Languages) > 1 {
+		out.Texts = map[string]string{}
+		for _, lang := range v.law.Market.Languages {
+			out.Texts[lang] = format(lang, first)
+		}
+	}
+}
+
+func (v view) isEnergy(q string) bool {
+	_, ok := v.law.Energy.Get(q)
+	return ok
+}
+
+// energyAlternatives prints what the other lawful methods give, where it differs.
+func (v view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook.Rounding, u quantity.Unit) {
+	e, _ := v.law.Energy.Get(l.line.Quantity)
+	for i := range e.Body.Methods[1:] {
+		method := &e.Body.Methods[i+1]
+		q, ok := v.subject.energy("", method)
+		if !ok {
+			continue
+		}
+		o := v.outcomes(r, c.on(q, v.subject.Mass()), u)
+		if !o.determined() {
+			continue
+		}
+		if s := declare.Text(o[0].Printed, u, l.rule.Body.Number[v.language()]); s != out.Text {
+			out.Alternatives = append(out.Alternatives, s+" ("+method.Method+")")
+		}
+	}
+}
+
+// percent is the per cent of the reference value, from the amount the law names first.
+func (v view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x quantity.Linear, printed outcomes) (*Percent, bool) {
+	rv, ok := v.ReferenceValue(l.line.Quantity)
+	if !ok {
+		return nil, true
+	}
+	ref, _ := v.law.ReferenceOf(l.line.Quantity)
+	p := r.Body.Percent
+	out := &Percent{Reference: ref.Body.Amounts[v.population()].String(), Rule: ref.ID, Source: ref.Head.Source.Ref}
+	if mid, known := x.Central(); known {
+		out.Exact = text(mid.Mul(quantity.FromInt(100)).Quo(rv))
+	}
+	o, settled := v.percentOf(p.From, l, p, r.Body.Ties, x, printed, rv)
+	if len(o) == 0 {
+		return out, false
+	}
+	if !settled {
+		out.Text = percentText(o[0].Printed) + " to " + percentText(o[len(o)-1].Printed)
+		return out, false
+	}
+	out.Text = percentText(o[0].Printed)
+	s := o[0].Printed.Value.String()
+	out.Declared = &s
+	for _, a := range o[0].Alternatives {
+		out.Alternatives = append(out.Alternatives, percentText(a))
+	}
+	if p.Or != "" {
+		if other, one := v.percentOf(p.Or, l, p, r.Body.Ties, x, printed, rv); one && !other[0].Printed.Equal(o[0].Printed) {
+			out.Alternatives = append(out.Alternatives, percentText(other[0].Printed)+" (from the "+p.Or+" amount)")
+		}
+	}
+	return out, true
+}
+
+func percentText(p declare.Printed) string {
+	s := p.Value.String() + " %"
+	if p.LessThan {
+		s = "less than " + s
+	}
+	return s
+}
+
+// percentOf computes per cents from exact amounts or from declared ones.
+func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties quantity.Ties, x quantity.Linear, printed outcomes, rv quantity.Ratio) (outcomes, bool) {
+	zero := quantity.No
+	if p.ZeroIf != nil {
+		zero = v.truth(p.ZeroIf)
+	}
+	if zero == quantity.Yes {
+		return outcomes{{Printed: declare.Printed{}}}, true
+	}
+	var values []quantity.Ratio
+	if from == "declared" && len(printed) > 0 {
+		u := v.unit(l.line.Quantity)
+		for i := range printed {
+			d := printed[i].Printed
+			if d.LessThan {
+				values = append(values, x.Low(), x.High()) // "less than 5 mg" is no number to take a share of
+				continue
+			}
+			values = append(values, quantity.FromDecimal(d.Value.Mul(u.Scale())))
+		}
+	} else {
+		values = []quantity.Ratio{x.Low(), x.High()}
+	}
+	var out outcomes
+	for _, value := range values {
+		share := value.Mul(quantity.FromInt(100)).Quo(rv)
+		out = append(out, declare.Round(p.Bands, ties, share, quantity.PerCent, v.truth)...)
+	}
+	if zero == quantity.Open {
+		out = append(outcomes{{Printed: declare.Printed{}}}, out...)
+	}
+	return out, out.determined()
+}
+
+// contributions is what each ingredient brings to a quantity on a column.
+func (v view) contributions(q string, c column, u quantity.Unit) []Contribution {
+	var out []Contribution
+	for i, l := range v.subject.batch.Leaves {
+		amount, ok := v.subject.contribution(q, i)
+		if !ok {
+			return nil
+		}
+		x := c.on(amount, v.subject.Mass()).Mul(quantity.Scaled(1, -u.Scale().Exponent()))
+		one := Contribution{Ingredient: strings.TrimSpace(l.Path), Low: exactText(x.Low()), High: exactText(x.High())}
+		if mid, known := x.Central(); known {
+			one.Value = text(mid)
+		}
+		out = append(out, one)
+	}
+	return out
+}
+
+// contribution is one leaf's part of a quantity, energy included.
+func (p *product) contribution(q string, leaf int) (quantity.Linear, bool) {
+	e, ok := p.m.law.Energy.Get(q)
+	if !ok {
+		parts, ok := p.parts(q)
+		if !ok {
+			return quantity.Linear{}, false
+		}
+		return parts[leaf].amount, true
+	}
+	var sum quantity.Linear
+	for _, of := range sortedKeys(e.Body.Methods[0].Factors) {
+		parts, ok := p.parts(of)
+		if !ok {
+			return quantity.Linear{}, false
+		}
+		sum = sum.Add(parts[leaf].amount.Times(e.Body.Methods[0].Factors[of]))
+	}
+	return sum, true
+}
