@@ -15,12 +15,12 @@ const (
 	MaxIDText      = 100 // characters of an id
 )
 
-// Decode reads a recipe document. It gives the recipe, or every fault of the document and no recipe. A document that is
-// not JSON, or is too large or too deep, has only the fault that stopped the reading.
+// Decode reads a recipe document. It gives the recipe, or every fault of the document and no recipe. Where the document
+// is not JSON, or is too large or too deep, the last fault is the one that stopped the reading.
 func Decode(doc []byte) (*Recipe, Faults) {
 	s, fatal := scan(doc)
 	if fatal != nil {
-		return nil, Faults{*fatal}
+		return nil, append(s.report(s.found), *fatal)
 	}
 	d := decoder{tree: &s.tree, found: s.found}
 	r := d.recipe(root)

@@ -19,8 +19,11 @@ type Fault struct {
 // Faults are in the order of the document.
 type Faults []Fault
 
-// MaxFaults is how many faults are listed; one more then tells that there are others.
-const MaxFaults = 500
+// Bounds of the list; one more fault then tells that there are others.
+const (
+	MaxFaults = 500
+	maxReport = 256 << 10 // bytes of pointers and sentences, because names in a hostile document can be long
+)
 
 func (f Faults) Error() string {
 	if len(f) == 0 {
@@ -63,14 +66,16 @@ func (t *tree) report(all []found) Faults {
 	slices.SortStableFunc(all, order)
 	all = slices.CompactFunc(all, func(a, b found) bool { return order(a, b) == 0 })
 	out := make(Faults, 0, min(len(all), MaxFaults+1))
+	size := 0
 	for i, f := range all {
-		if i == MaxFaults {
-			return append(out, Fault{"", MoreFaults, fmt.Sprintf("the document has more than %d faults; the first ones are listed", MaxFaults)})
+		if i == MaxFaults || size > maxReport {
+			return append(out, Fault{"", MoreFaults, fmt.Sprintf("the document has more than %d faults; the first ones are listed", i)})
 		}
 		if f.more != nil {
 			f.says += f.more()
 		}
 		out = append(out, Fault{t.pointer(f.at), f.code, f.says})
+		size += len(out[i].Pointer) + len(out[i].Says)
 	}
 	return out
 }

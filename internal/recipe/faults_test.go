@@ -45,6 +45,7 @@ var faultCases = []struct {
 	{"65 levels", `{"x":` + strings.Repeat("[", 64) + strings.Repeat("]", 64) + `}`, []string{"/x" + strings.Repeat("/0", 62) + " too-deep"}},
 	{"100,001 values", `{"id":"x","ingredients":[1` + strings.Repeat(",1", MaxValues-3) + `]}`, []string{" too-many-values"}},
 	{"two documents", sold(`"name":"x"`) + `{}`, []string{" trailing-data"}},
+	{"faults before the end of JSON", `{"id":null,"id":1,}`, []string{"/id null", "/id duplicate-name", " bad-syntax"}},
 	{"half a surrogate pair", sold(`"name":"\ud83d"`), []string{"/name bad-text"}},
 	{"invalid UTF-8", sold("\"name\":\"\xff\""), []string{"/name bad-text"}},
 	{"invalid UTF-8 in a name", sold("\"\xff\":\"x\""), []string{"/\uFFFD bad-text"}},
@@ -295,4 +296,16 @@ func wrongTypes(n int) (out []string) {
 		out = append(out, fmt.Sprintf("/ingredients/%d wrong-type", i))
 	}
 	return out
+}
+
+func TestReportStaysSmall(t *testing.T) {
+	name := strings.Repeat("n", MaxText)
+	_, faults := Decode([]byte(sold(`"` + name + `":[` + strings.Repeat("null,", 499) + `null]`)))
+	size := 0
+	for _, f := range faults {
+		size += len(f.Pointer) + len(f.Says)
+	}
+	if last := faults[len(faults)-1]; last.Code != MoreFaults || size > maxReport+2000 {
+		t.Errorf("%d bytes in %d faults, the last %q", size, len(faults), last.Code)
+	}
 }

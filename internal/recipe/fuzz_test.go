@@ -14,6 +14,7 @@ func FuzzDecode(f *testing.F) {
 		f.Fatal(err)
 	}
 	f.Add(sketch)
+	f.Add(everyMember(f))
 	for _, c := range faultCases {
 		seed(f, c.doc)
 	}

@@ -16,8 +16,8 @@ const (
 	MaxBytes      = 1 << 20
 	MaxDepth      = 64
 	MaxValues     = 100_000 // objects, arrays, texts, numbers and literals
-	MaxText       = 1000 // characters of a text or a member's name
-	MaxNumberText = 40   // characters of a JSON number
+	MaxText       = 1000    // characters of a text or a member's name
+	MaxNumberText = 40      // characters of a JSON number
 )
 
 // scanner is the bounded pass: it builds the tree and complains about what no recipe may hold.
@@ -41,7 +41,7 @@ type frame struct {
 // scan reads the document. Where fatal is not nil the rest could not be read.
 func scan(doc []byte) (s *scanner, fatal *Fault) {
 	if len(doc) > MaxBytes {
-		return nil, &Fault{"", TooLarge, fmt.Sprintf("the document has %d bytes; at most %d (1 MiB) are read", len(doc), MaxBytes)}
+		return &scanner{}, &Fault{"", TooLarge, fmt.Sprintf("the document has %d bytes; at most %d (1 MiB) are read", len(doc), MaxBytes)}
 	}
 	// Duplicate names and bad text are looked for here, so that one of them does not hide the next.
 	in := jsontext.NewDecoder(bytes.NewBuffer(doc), jsontext.AllowDuplicateNames(true), jsontext.AllowInvalidUTF8(true))
