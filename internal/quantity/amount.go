@@ -16,6 +16,9 @@ type Amount struct {
 // ParseAmount reads a number and a unit with at most one space between them: "420 g", "0.5 mg", "30%".
 func ParseAmount(s string) (Amount, error) {
 	i := numberEnd(s)
+	if i == 0 && s != "" {
+		return Amount{}, &NumberError{s, "does not begin with a digit; write for instance 1.5 g"}
+	}
 	d, err := ParseNumber(s[:i])
 	if err != nil {
 		return Amount{}, err

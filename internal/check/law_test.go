@@ -1,0 +1,364 @@
+package check_test
+
+import (
+	"encoding/json"
+	"fmt"
+	"os"
+	"path/filepath"
+	"slices"
+	"strings"
+	"testing"
+
+	"gramlaw/internal/check"
+	"gramlaw/internal/declare"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
+	"gramlaw/internal/rulebook"
+	"gramlaw/rules"
+)
+
+func book(t testing.TB) *rulebook.Book {
+	t.Helper()
+	b, err := rulebook.Load(rules.FS)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return b
+}
+
+// caseFiles lists a kind of case file over all markets. A market without one is an error: nothing is skipped.
+func caseFiles(t *testing.T, b *rulebook.Book, kind string, visit func(t *testing.T, jurisdiction string, doc []byte)) {
+	t.Helper()
+	for _, j := range b.Jurisdictions() {
+		t.Run(j, func(t *testing.T) {
+			doc, err := os.ReadFile(filepath.Join("../../testdata/rules", j, kind+".json"))
+			if err != nil {
+				t.Fatal(err)
+			}
+			visit(t, j, doc)
+		})
+	}
+}
+
+func decodeCases(t *testing.T, doc []byte, to any) {
+	t.Helper()
+	d := json.NewDecoder(strings.NewReader(string(doc)))
+	d.DisallowUnknownFields()
+	if err := d.Decode(to); err != nil {
+		t.Fatal(err)
+	}
+}
+
+type roundingCases struct {
+	Jurisdiction string `json:"jurisdiction"`
+	Tables       []struct {
+		Quantity, On, Source, Evidence, Transition, Note string
+		Rows                                             []roundingRow `json:"rows"`
+	} `json:"tables"`
+}
+
+type roundingRow struct {
+	Exact, Text, Percent, Note string
+	Alternatives               []string
+	Meets, Declared, Facts     map[string]string
+}
+
+// Every rounding rule just below, at and just above each edge, written from the law texts; sources stand in the files.
+func TestRoundingCases(t *testing.T) {
+	b := book(t)
+	caseFiles(t, b, "rounding", func(t *testing.T, j string, doc []byte) {
+		var cases roundingCases
+		decodeCases(t, doc, &cases)
+		n := 0
+		for _, table := range cases.Tables {
+			for _, row := range table.Rows {
+				n++
+				t.Run(table.Quantity+" "+row.Exact, func(t *testing.T) { roundOne(t, b, j, table.On, table.Transition, table.Quantity, row) })
+			}
+		}
+		if n == 0 {
+			t.Error("no row")
+		}
+	})
+}
+
+func (r roundingRow) holds(c *rulebook.Condition) quantity.Truth {
+	answer := func(s string, ok bool) quantity.Truth {
+		switch {
+		case !ok:
+			return quantity.No
+		case s == "yes":
+			return quantity.Yes
+		case s == "open":
+			return quantity.Open
+		}
+		return quantity.No
+	}
+	switch c.Op {
+	case rulebook.OpMeets:
+		s, ok := r.Meets[c.Name]
+		return answer(s, ok)
+	case rulebook.OpDeclared:
+		s, ok := r.Declared[c.Name]
+		if c.Is == "" {
+			return quantity.TruthOf(ok)
+		}
+		return quantity.TruthOf(ok && s == c.Is)
+	case rulebook.OpFact:
+		return quantity.TruthOf(r.Facts[c.Name] == c.Is)
+	case rulebook.OpNot:
+		return r.holds(c.Parts[0]).Not()
+	}
+	parts := make([]quantity.Truth, len(c.Parts))
+	for i, p := range c.Parts {
+		parts[i] = r.holds(p)
+	}
+	if c.Op == rulebook.OpAny {
+		return quantity.Any(parts...)
+	}
+	return quantity.All(parts...)
+}
+
+func roundOne(t *testing.T, b *rulebook.Book, j, on, transition, q string, row roundingRow) {
+	law, _ := b.At(j, on, rulebook.Transition(transition), row.holds)
+	r, ok := law.RoundingOf(q)
+	if !ok {
+		t.Fatalf("%s has no rounding on %s", q, on)
+	}
+	exact, err := quantity.ParseAmount(row.Exact)
+	if err != nil {
+		t.Fatal(err)
+	}
+	unit, number := lineFormat(t, law, q, exact.Unit)
+	value := quantity.FromDecimal(exact.Base())
+	var printed declare.Printed
+	if len(r.Body.Bands) > 0 {
+		o := declare.Round(r.Body.Bands, r.Body.Ties, value, unit, row.holds)
+		printed = o[0].Printed
+		if got := declare.Text(printed, unit, number); row.Text != "" && got != row.Text {
+			t.Errorf("prints %q, want %q", got, row.Text)
+		}
+		for _, want := range row.Alternatives {
+			if !slices.ContainsFunc(o[0].Alternatives, func(p declare.Printed) bool { return declare.Text(p, unit, number) == want }) {
+				t.Errorf("alternative %q is not offered", want)
+			}
+		}
+	}
+	if row.Percent != "" {
+		checkPercent(t, law, r.Body, q, value, printed, unit, row)
+	}
+}
+
+func lineFormat(t *testing.T, law *rulebook.Law, q string, u quantity.Unit) (quantity.Unit, rulebook.Number) {
+	t.Helper()
+	for _, d := range law.Declarations.All {
+		for _, l := range d.Body.Lines {
+			if l.Quantity == q && l.Unit != "" {
+				u, _ = quantity.ParseUnit(l.Unit)
+			}
+		}
+		return u, d.Body.Number[law.Market.Languages[0]]
+	}
+	t.Fatal("no declaration holds")
+	return u, rulebook.Number{}
+}
+
+func checkPercent(t *testing.T, law *rulebook.Law, r *rulebook.Rounding, q string, value quantity.Ratio, printed declare.Printed, unit quantity.Unit, row roundingRow) {
+	t.Helper()
+	ref, ok := law.ReferenceOf(q)
+	if !ok || r.Percent == nil {
+		t.Fatalf("%s has no per cent", q)
+	}
+	if r.Percent.From == "declared" {
+		value = quantity.FromDecimal(printed.Value.Mul(unit.Scale()))
+	}
+	got := "0 %"
+	if r.Percent.ZeroIf == nil || row.holds(r.Percent.ZeroIf) != quantity.Yes {
+		a := ref.Body.Amounts["general population"]
+		share := value.Mul(quantity.FromInt(100)).Quo(quantity.FromDecimal(a.Base()))
+		o := declare.Round(r.Percent.Bands, r.Ties, share, quantity.PerCent, row.holds)
+		got = o[0].Printed.Value.String() + " %"
+		if o[0].Printed.LessThan {
+			got = "less than " + got
+		}
+	}
+	if got != row.Percent {
+		t.Errorf("per cent is %q, want %q", got, row.Percent)
+	}
+}
+
+// given is a food as a label specialist writes it in a case.
+type given struct {
+	Per             string                     `json:"per"`
+	Components      map[string]json.RawMessage `json:"components"`
+	FattyAcids      json.RawMessage            `json:"fatty_acids"`
+	Serving         string                     `json:"serving"`
+	ReferenceAmount json.RawMessage            `json:"reference_amount"`
+	Category        string                     `json:"category"`
+	State           string                     `json:"state"`
+	Density         string                     `json:"density"`
+	Process         string                     `json:"process"`
+	TransOrigin     json.RawMessage            `json:"trans_origin"`
+	IodineValue     string                     `json:"iodine_value"`
+	Package         json.RawMessage            `json:"package"`
+	Facts           map[string]json.RawMessage `json:"facts"`
+	References      map[string]json.RawMessage `json:"reference_foods"`
+}
+
+// document writes the case's food as a recipe of one ingredient.
+func (g given) document(claims ...map[string]any) []byte {
+	per := g.Per
+	if per == "" {
+		per = "100 g"
+	}
+	composition := map[string]any{"per": per, "source": "case", "components": g.Components}
+	in := map[string]any{"id": "food", "name": "food", "amount": per, "composition": composition}
+	doc := map[string]any{"id": "case", "name": "case", "ingredients": []any{in}, "claims": claims}
+	put := func(m map[string]any, name string, v any, set bool) {
+		if set {
+			m[name] = v
+		}
+	}
+	every := func(v any) map[string]any { return map[string]any{"default": v} }
+	put(composition, "fatty_acids", g.FattyAcids, len(g.FattyAcids) > 0)
+	put(in, "density", g.Density, g.Density != "")
+	put(in, "process", g.Process, g.Process != "")
+	put(in, "trans_origin", g.TransOrigin, len(g.TransOrigin) > 0)
+	put(in, "iodine_value", g.IodineValue, g.IodineValue != "")
+	put(doc, "serving", every(map[string]any{"amount": g.Serving}), g.Serving != "")
+	put(doc, "reference_amount", every(g.ReferenceAmount), len(g.ReferenceAmount) > 0)
+	put(doc, "category", every(g.Category), g.Category != "")
+	put(doc, "state", every(g.State), g.State != "")
+	put(doc, "density", every(g.Density), g.Density != "")
+	put(doc, "package", g.Package, len(g.Package) > 0)
+	put(doc, "facts", g.Facts, len(g.Facts) > 0)
+	put(doc, "reference_foods", g.References, len(g.References) > 0)
+	b, err := json.Marshal(doc)
+	if err != nil {
+		panic(err)
+	}
+	return b
+}
+
+func run(t *testing.T, b *rulebook.Book, j, on, transition string, doc []byte) check.Market {
+	t.Helper()
+	r, faults := recipe.Decode(doc)
+	if len(faults) > 0 {
+		t.Fatalf("the case is no recipe: %v\n%s", faults, doc)
+	}
+	report, faults := check.Check(r, b, check.Request{On: on, In: []string{j}, Transition: rulebook.Transition(transition)})
+	if len(faults) > 0 {
+		t.Fatal(faults)
+	}
+	return report.Jurisdictions[0]
+}
+
+type claimCases struct {
+	Jurisdiction string `json:"jurisdiction"`
+	Cases        []struct {
+		Name, Source, Evidence, On, Transition, Note string
+		Given                                        given
+		Claim, Text, Against, Stated, Verdict        string
+		Statements                                   []string
+		Printable                                    *bool
+	} `json:"cases"`
+}
+
+// Every claim just under, at and just over its thresholds, written from the dossiers; sources stand in the files.
+func TestClaimCases(t *testing.T) {
+	b := book(t)
+	caseFiles(t, b, "claims", func(t *testing.T, j string, doc []byte) {
+		var cases claimCases
+		decodeCases(t, doc, &cases)
+		if len(cases.Cases) == 0 {
+			t.Error("no case")
+		}
+		for _, c := range cases.Cases {
+			t.Run(c.Name, func(t *testing.T) {
+				asked := map[string]any{}
+				for k, v := range map[string]string{"claim": c.Claim, "text": c.Text, "against": c.Against, "stated": c.Stated} {
+					if v != "" {
+						asked[k] = v
+					}
+				}
+				m := run(t, b, j, c.On, c.Transition, c.Given.document(asked))
+				got := m.Claims[0]
+				if got.Verdict != c.Verdict {
+					why, _ := json.MarshalIndent(got, "", " ")
+					t.Errorf("verdict %s, want %s\n%s", got.Verdict, c.Verdict, why)
+				}
+				for _, want := range c.Statements {
+					if !slices.ContainsFunc(got.Statements, func(s check.Statement) bool { return strings.Contains(s.Text, want) }) {
+						t.Errorf("statement %q is missing from %v", want, got.Statements)
+					}
+				}
+				if c.Printable != nil && got.Printable != *c.Printable {
+					t.Errorf("printable is %v", got.Printable)
+				}
+			})
+		}
+	})
+}
+
+type labelCases struct {
+	Jurisdiction string `json:"jurisdiction"`
+	Cases        []struct {
+		Name, Source, Evidence, On, Transition, Basis, Note string
+		Given                                               given
+		Declared                                            map[string]struct{ Text, Percent, Presence string }
+	} `json:"cases"`
+}
+
+// The dossiers' published sample labels and worked examples, from values to print.
+func TestLabelCases(t *testing.T) {
+	b := book(t)
+	caseFiles(t, b, "labels", func(t *testing.T, j string, doc []byte) {
+		var cases labelCases
+		decodeCases(t, doc, &cases)
+		if len(cases.Cases) == 0 {
+			t.Error("no case")
+		}
+		for _, c := range cases.Cases {
+			t.Run(c.Name, func(t *testing.T) {
+				m := run(t, b, j, c.On, c.Transition, c.Given.document())
+				for q, want := range c.Declared {
+					line, value, err := printedLine(m, q, c.Basis)
+					if err != nil {
+						t.Error(err)
+						continue
+					}
+					if want.Text != "" && value.Text != want.Text {
+						t.Errorf("%s prints %q, want %q (exact %v)", q, value.Text, want.Text, deref(value.Exact))
+					}
+					if want.Percent != "" && (value.PercentReference == nil || value.PercentReference.Text != want.Percent) {
+						t.Errorf("%s has per cent %+v, want %q", q, value.PercentReference, want.Percent)
+					}
+					if want.Presence != "" && line.Presence != want.Presence {
+						t.Errorf("%s is %s, want %s", q, line.Presence, want.Presence)
+					}
+				}
+			})
+		}
+	})
+}
+
+func deref(s *string) string {
+	if s == nil {
+		return "open"
+	}
+	return *s
+}
+
+func printedLine(m check.Market, q, basis string) (check.Line, check.Value, error) {
+	for _, l := range m.Declaration.Lines {
+		if l.Quantity != q {
+			continue
+		}
+		for _, v := range l.Values {
+			if basis == "" || v.Basis == basis {
+				return l, v, nil
+			}
+		}
+	}
+	return check.Line{}, check.Value{}, fmt.Errorf("the declaration has no line for %s", q)
+}
