@@ -73,6 +73,16 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	}
 	if a.Against != "" {
 		v.ref, _ = m.reference(a.Against)
+		v.against = a.Against
+	}
+	if b.BarredIf != nil && v.truth(b.BarredIf) == quantity.Yes {
+		r := m.condition(claim.Evaluate(b.BarredIf, *v))
+		out.Verdict, out.Why, out.Condition = Refused, "barred here: "+r.Says, &r
+		return out, nil
+	}
+	if b.Undecided != nil {
+		out.Verdict, out.Why = Undetermined, b.Undecided.In("en")
+		return out, b
 	}
 	r := claim.Evaluate(m.withStated(b, a), *v)
 	c := m.condition(r)
@@ -272,7 +282,7 @@ func (v view) placeholder(name string, c *Claim) string {
 				r, _ := v.law.RoundingOf(name)
 				q, _ := v.subject.Quantity(name)
 				if o := v.outcomes(r.Body, v.columns[0].on(q, v.subject.Mass()), v.unit(name)); o.determined() {
-					return textOf(o[0].Printed, v.unit(name), l, v.language())
+					return l.text(o[0].Printed, v.unit(name), v.language())
 				}
 			}
 		}
@@ -285,10 +295,10 @@ func (m *market) alsoPermitted(asked []Claim) []Candidate {
 	out := []Candidate{}
 	v := m.as(m.product)
 	for _, c := range m.law.Claims.All {
-		if c.Body.Prohibited || c.Body.Against || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
+		if c.Body.Condition == nil || c.Body.Against || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
 			continue
 		}
-		if m.product.Meets(c.ID) != quantity.Yes {
+		if m.product.Meets(c.ID) != quantity.Yes || c.Body.BarredIf != nil && v.truth(c.Body.BarredIf) != quantity.No {
 			continue
 		}
 		one := Claim{Verdict: Permitted, Rule: c.ID}

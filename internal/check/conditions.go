@@ -4,14 +4,9 @@ import (
 	"slices"
 
 	"gramlaw/internal/claim"
-	"gramlaw/internal/declare"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
 )
-
-func textOf(p declare.Printed, u quantity.Unit, l *lineState, lang string) string {
-	return declare.Text(p, u, l.rule.Body.Number[lang])
-}
 
 // condition writes a decided condition for the report.
 func (m *market) condition(r claim.Result) Condition {

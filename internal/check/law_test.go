@@ -129,17 +129,17 @@ func roundOne(t *testing.T, b *rulebook.Book, j, on, transition, q string, row r
 	if err != nil {
 		t.Fatal(err)
 	}
-	unit, number := lineFormat(t, law, q, exact.Unit)
+	unit, shown, number := lineFormat(t, law, q, exact.Unit)
 	value := quantity.FromDecimal(exact.Base())
 	var printed declare.Printed
 	if len(r.Body.Bands) > 0 {
 		o := declare.Round(r.Body.Bands, r.Body.Ties, value, unit, row.holds)
 		printed = o[0].Printed
-		if got := declare.Text(printed, unit, number); row.Text != "" && got != row.Text {
+		if got := declare.Text(printed, shown, number); row.Text != "" && got != row.Text {
 			t.Errorf("prints %q, want %q", got, row.Text)
 		}
 		for _, want := range row.Alternatives {
-			if !slices.ContainsFunc(o[0].Alternatives, func(p declare.Printed) bool { return declare.Text(p, unit, number) == want }) {
+			if !slices.ContainsFunc(o[0].Alternatives, func(p declare.Printed) bool { return declare.Text(p, shown, number) == want }) {
 				t.Errorf("alternative %q is not offered", want)
 			}
 		}
@@ -149,18 +149,23 @@ func roundOne(t *testing.T, b *rulebook.Book, j, on, transition, q string, row r
 	}
 }
 
-func lineFormat(t *testing.T, law *rulebook.Law, q string, u quantity.Unit) (quantity.Unit, rulebook.Number) {
+func lineFormat(t *testing.T, law *rulebook.Law, q string, u quantity.Unit) (unit quantity.Unit, shown string, n rulebook.Number) {
 	t.Helper()
 	for _, d := range law.Declarations.All {
+		lang, shown := law.Market.Languages[0], u.String()
 		for _, l := range d.Body.Lines {
 			if l.Quantity == q && l.Unit != "" {
 				u, _ = quantity.ParseUnit(l.Unit)
+				shown = u.String()
+				if l.ShownUnit != nil {
+					shown = l.ShownUnit.In(lang)
+				}
 			}
 		}
-		return u, d.Body.Number[law.Market.Languages[0]]
+		return u, shown, d.Body.Number[lang]
 	}
 	t.Fatal("no declaration holds")
-	return u, rulebook.Number{}
+	return u, "", rulebook.Number{}
 }
 
 func checkPercent(t *testing.T, law *rulebook.Law, r *rulebook.Rounding, q string, value quantity.Ratio, printed declare.Printed, unit quantity.Unit, row roundingRow) {

@@ -18,10 +18,18 @@ type column struct {
 
 // A lineState is a line on its way to the report.
 type lineState struct {
-	line     *rulebook.Line
-	rule     rulebook.Active[rulebook.Declaration]
-	presence string
-	needed   bool // a claim makes it mandatory
+	line   *rulebook.Line
+	rule   rulebook.Active[rulebook.Declaration]
+	needed bool // a claim makes it mandatory
+}
+
+// text writes what the line prints.
+func (l *lineState) text(p declare.Printed, u quantity.Unit, lang string) string {
+	shown := u.String()
+	if l.line.ShownUnit != nil {
+		shown = l.line.ShownUnit.In(lang)
+	}
+	return declare.Text(p, shown, l.rule.Body.Number[lang])
 }
 
 // openColumns settles the bases. A liquid is declared per 100 mL where a solid is per 100 g.
@@ -88,8 +96,26 @@ func (m *market) openLines() {
 	}
 }
 
-// stands tells whether a line is in the declaration: mandatory, or raised by a condition or a claim.
+// stands tells whether a line is in the declaration: by itself, or because one it belongs together with is.
 func (v view) stands(l *lineState) bool {
+	if v.standsAlone(l) {
+		return true
+	}
+	for _, group := range l.rule.Body.Together {
+		if !slices.Contains(group, l.line.Quantity) {
+			continue
+		}
+		for _, q := range group {
+			if v.standsAlone(v.lines[q]) {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// standsAlone: mandatory, or raised by a condition or a claim.
+func (v view) standsAlone(l *lineState) bool {
 	return l.needed || l.line.Presence == "mandatory" || l.line.MandatoryIf != nil && v.truth(l.line.MandatoryIf) == quantity.Yes
 }
 

@@ -139,6 +139,7 @@ type view struct {
 	*market
 	subject *product
 	ref     *product
+	against string // name of ref
 }
 
 func (m *market) as(p *product) view { return view{market: m, subject: p} }
@@ -252,6 +253,14 @@ func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 // ClaimedAbout tells whether a claim that stands is about one of the subjects.
 func (v view) ClaimedAbout(subjects []string) quantity.Truth {
 	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return v.about[s] || s == "any" && len(v.about) > 0 }))
+}
+
+// ReferenceKind tells whether the reference food is of one of the kinds.
+func (v view) ReferenceKind(kinds []string) quantity.Truth {
+	if v.ref == nil {
+		return quantity.Open
+	}
+	return quantity.TruthOf(slices.Contains(kinds, v.c.recipe.References[v.against].Kind))
 }
 
 // NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit.

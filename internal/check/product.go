@@ -263,7 +263,7 @@ func (p *product) Meets(id string) quantity.Truth {
 		return t
 	}
 	t := quantity.No
-	if c, ok := p.m.law.Claims.Get(rulebook.Name(id)); ok && !c.Body.Prohibited {
+	if c, ok := p.m.law.Claims.Get(rulebook.Name(id)); ok && c.Body.Condition != nil {
 		t = p.m.as(p).truth(c.Body.Condition)
 	}
 	p.meets[id] = t

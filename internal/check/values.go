@@ -57,7 +57,7 @@ func (v view) print(out *Value, l *lineState, printed outcomes, amount bool, u q
 	if len(printed) == 0 || !amount {
 		return
 	}
-	format := func(lang string, p declare.Printed) string { return declare.Text(p, u, l.rule.Body.Number[lang]) }
+	format := func(lang string, p declare.Printed) string { return l.text(p, u, lang) }
 	lang := v.language()
 	first, last := printed[0].Printed, printed[len(printed)-1].Printed
 	if !printed.determined() {
@@ -98,7 +98,7 @@ func (v view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook
 		if !o.determined() {
 			continue
 		}
-		if s := declare.Text(o[0].Printed, u, l.rule.Body.Number[v.language()]); s != out.Text {
+		if s := l.text(o[0].Printed, u, v.language()); s != out.Text {
 			out.Alternatives = append(out.Alternatives, s+" ("+method.Method+")")
 		}
 	}

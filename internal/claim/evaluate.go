@@ -33,6 +33,7 @@ type Context interface {
 	ReferenceAmount(atMost []quantity.Amount) quantity.Truth
 	ClaimedAbout(subjects []string) quantity.Truth
 	NoIngredient(c *rulebook.Condition) quantity.Truth
+	ReferenceKind(kinds []string) quantity.Truth // open without a reference food
 }
 
 // A Result is the decision on a condition, with the parts that led to it.
@@ -128,6 +129,12 @@ func atom(c *rulebook.Condition, x Context) Result {
 		r := Result{Truth: x.ReferenceAmount(c.Amounts), Says: amountSays(c)}
 		if r.Truth == quantity.Open {
 			r.Missing = "the reference amount"
+		}
+		return r
+	case rulebook.OpKind:
+		r := Result{Truth: x.ReferenceKind(c.Kinds), Says: "the reference food is " + list(c.Kinds)}
+		if r.Truth == quantity.Open {
+			r.Missing = "the reference food"
 		}
 		return r
 	case rulebook.OpAbout:

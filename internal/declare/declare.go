@@ -122,8 +122,8 @@ func figureStep(v decimal.Decimal, figures int) decimal.Decimal {
 	return decimal.New(1, lead-int32(figures))
 }
 
-// Text writes a printed value in a language's number format.
-func Text(p Printed, unit quantity.Unit, f rulebook.Number) string {
+// Text writes a printed value in a language's number format, with the unit as it is printed.
+func Text(p Printed, unit string, f rulebook.Number) string {
 	pattern := f.Unit
 	if p.LessThan {
 		pattern = f.LessThan
@@ -132,7 +132,7 @@ func Text(p Printed, unit quantity.Unit, f rulebook.Number) string {
 	if f.Decimal != "" && f.Decimal != "." {
 		n = strings.Replace(n, ".", f.Decimal, 1)
 	}
-	return strings.TrimSpace(strings.NewReplacer("{n}", n, "{u}", unit.String()).Replace(pattern))
+	return strings.TrimSpace(strings.NewReplacer("{n}", n, "{u}", unit).Replace(pattern))
 }
 
 func digits(p Printed, trailing bool) string {

@@ -26,6 +26,7 @@ const (
 	OpAmount     Op = "reference amount"
 	OpAbout      Op = "claimed about"
 	OpIngredient Op = "no ingredient"
+	OpKind       Op = "reference food is"
 	OpAll        Op = "all"
 	OpAny        Op = "any"
 	OpNot        Op = "not"
@@ -54,9 +55,10 @@ type Condition struct {
 	Name string // line, rule id or fact
 	Is   string
 
-	// OpAmount: at most one of these, each in its own unit. OpAbout: subjects.
+	// OpAmount: at most one of these, each in its own unit. OpAbout: subjects. OpKind: kinds of reference food.
 	Amounts []quantity.Amount
 	About   []string
+	Kinds   []string
 
 	// OpIngredient
 	Process     []string
@@ -207,6 +209,9 @@ func (c *Condition) readAtom(r *reader) {
 		r.into(r.take("claimed about"), &c.About)
 	case r.m["no ingredient"] != nil:
 		c.readIngredient(r)
+	case r.m[string(OpKind)] != nil:
+		c.Op = OpKind
+		r.into(r.take(string(OpKind)), &c.Kinds)
 	default:
 		r.err = fmt.Errorf("condition %v is of no known kind", strings.Join(r.left, ", "))
 	}
@@ -289,7 +294,7 @@ func (c *Condition) Walk(visit func(*Condition)) {
 func (c *Condition) Relative() bool {
 	found := false
 	c.Walk(func(p *Condition) {
-		found = found || p.Subject == "reference food" || p.Op == OpCompare && p.Relation.Relative()
+		found = found || p.Subject == "reference food" || p.Op == OpKind || p.Op == OpCompare && p.Relation.Relative()
 	})
 	return found
 }

@@ -26,6 +26,13 @@ func (c *checker) declarations() {
 			seen[line.Quantity] = true
 			c.line(id, field+at, line)
 		}
+		for _, group := range d.Together {
+			for _, q := range group {
+				if !seen[q] {
+					bad("/together", "%q has no line", q)
+				}
+			}
+		}
 		for i, s := range d.Statements {
 			c.statement("declaration", id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
 		}
@@ -69,9 +76,16 @@ func (c *checker) claims() {
 	bodies(c.m.Claims, func(id, field string, cl *Claim) {
 		node := "claim/" + Name(id)
 		c.words("claims", id, field+"/name", cl.Name)
-		if cl.Condition == nil && !cl.Prohibited {
-			c.bad("claims", id, field+"/condition", "is missing")
+		decides := 0
+		for _, set := range []bool{cl.Condition != nil, cl.Prohibited, cl.Undecided != nil} {
+			if set {
+				decides++
+			}
 		}
+		if decides != 1 {
+			c.bad("claims", id, field, "must have exactly one of condition, prohibited and undecided")
+		}
+		c.condition("claims", id, field+"/barred if", "barred/"+Name(id), cl.BarredIf)
 		if cl.Condition.Relative() != cl.Against {
 			c.bad("claims", id, field+"/needs reference food", "must be true exactly when the condition compares with one")
 		}

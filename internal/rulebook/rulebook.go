@@ -187,6 +187,7 @@ type Declaration struct {
 	Title      Words             `json:"title"`
 	Number     map[string]Number `json:"number"` // by language
 	Lines      []Line            `json:"lines"`
+	Together   [][]string        `json:"together,omitzero"` // lines that all stand once one of them does
 	Statements []Statement       `json:"statements,omitzero"`
 }
 
@@ -204,9 +205,10 @@ type Line struct {
 	Component   string     `json:"component"` // INFOODS tagname nearest to the line
 	Terms       Terms      `json:"terms"`
 	Level       int        `json:"level,omitzero"`
-	Unit        string     `json:"unit,omitzero"` // "" shows no amount
-	Percent     string     `json:"percent"`       // "shown", "optional" or "none"
-	Presence    string     `json:"presence"`      // "mandatory", "optional" or "forbidden"
+	Unit        string     `json:"unit,omitzero"`       // "" shows no amount
+	ShownUnit   Words      `json:"shown unit,omitzero"` // how the unit is printed, where not as itself
+	Percent     string     `json:"percent"`             // "shown", "optional" or "none"
+	Presence    string     `json:"presence"`            // "mandatory", "optional" or "forbidden"
 	MandatoryIf *Condition `json:"mandatory if,omitzero"`
 	LeaveOutIf  *Condition `json:"leave out if,omitzero"`
 	LeftOut     Words      `json:"left out says,omitzero"`
@@ -234,7 +236,9 @@ type ReferenceAmount struct {
 type Claim struct {
 	Name       Words       `json:"name"`
 	About      []string    `json:"about"` // subjects, for conditions that ask what is claimed about
-	Condition  *Condition  `json:"condition"`
+	Condition  *Condition  `json:"condition,omitzero"`
+	Undecided  Words       `json:"undecided,omitzero"` // why the condition cannot be decided from data yet, instead of it
+	BarredIf   *Condition  `json:"barred if,omitzero"` // refuses the claim whatever its condition
 	Against    bool        `json:"needs reference food,omitzero"`
 	Statements []Statement `json:"statements,omitzero"`
 	NeedsLines []string    `json:"mandatory lines,omitzero"`
