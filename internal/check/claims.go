@@ -167,11 +167,27 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
 	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
 	out.Statements = append(out.Statements, v.disclosures(out)...)
 	out.NeedsLines = append(out.NeedsLines, b.NeedsLines...)
+	out.NeedsLines = append(out.NeedsLines, v.raisedBy(b.About)...)
 	for _, s := range out.Statements {
 		if s.Presence == "mandatory" {
 			out.Verdict = WithStatement
 		}
 	}
+}
+
+// raisedBy lists the lines that stand because something is claimed about one of the subjects.
+func (v view) raisedBy(about []string) []string {
+	var out []string
+	for _, l := range v.order {
+		raised := false
+		l.line.MandatoryIf.Walk(func(c *rulebook.Condition) {
+			raised = raised || c.Op == rulebook.OpAbout && slices.ContainsFunc(c.About, func(s string) bool { return slices.Contains(about, s) })
+		})
+		if raised && v.truth(l.line.MandatoryIf) == quantity.Yes {
+			out = append(out, l.line.Quantity)
+		}
+	}
+	return out
 }
 
 // statements are those of a list whose conditions hold, or are open.
@@ -252,42 +268,70 @@ func joined(names []string) string {
 	return strings.Join(names[:len(names)-1], ", ") + comma + " and " + names[len(names)-1]
 }
 
-// fill replaces {fat} and the like by the declared amount, {difference} and {reference food} by the comparison's.
+// fill replaces placeholders: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and
+// {fat difference} by the change against it in per cent, {reference food} by its name.
 func (v view) fill(s string, c *Claim) string {
+	var out strings.Builder
 	for {
 		i := strings.IndexByte(s, '{')
 		j := strings.IndexByte(s, '}')
 		if i < 0 || j < i {
-			return s
+			out.WriteString(s)
+			return out.String()
 		}
-		s = s[:i] + v.placeholder(s[i+1:j], c) + s[j+1:]
+		out.WriteString(s[:i])
+		out.WriteString(v.placeholder(s[i+1:j], c))
+		s = s[j+1:]
 	}
 }
 
 func (v view) placeholder(name string, c *Claim) string {
-	switch name {
-	case "reference food":
-		if v.ref != nil {
-			return v.ref.batch.Leaves[0].Name
-		}
-	case "difference":
-		if c != nil && c.Condition != nil {
-			if d := differenceIn(c.Condition); d != "" {
-				return d
-			}
-		}
+	text, ok := "", false
+	switch {
+	case name == "reference food" && v.ref != nil:
+		text, ok = v.ref.batch.Leaves[0].Name, true
+	case name == "difference" && c != nil && c.Condition != nil:
+		text = differenceIn(c.Condition)
+		ok = text != ""
+	case strings.HasSuffix(name, " of reference food") && v.ref != nil:
+		text, ok = v.printed(v.ref, strings.TrimSuffix(name, " of reference food"))
+	case strings.HasSuffix(name, " difference") && v.ref != nil:
+		text, ok = v.difference(strings.TrimSuffix(name, " difference"))
 	default:
-		if l, ok := v.lines[name]; ok && len(v.columns) > 0 && v.columns[0].known {
-			if p := v.possible(name); len(p) > 0 {
-				r, _ := v.law.RoundingOf(name)
-				q, _ := v.subject.Quantity(name)
-				if o := v.outcomes(r.Body, v.columns[0].on(q, v.subject.Mass()), v.unit(name)); o.determined() {
-					return l.text(o[0].Printed, v.unit(name), v.language())
-				}
-			}
-		}
+		text, ok = v.printed(v.subject, name)
 	}
-	return "(" + name + ")"
+	if !ok {
+		return "(" + name + ")"
+	}
+	return text
+}
+
+// printed is what a food's quantity prints as on the first column, where that is determined.
+func (v view) printed(p *product, q string) (string, bool) {
+	l, ok := v.lines[q]
+	if !ok {
+		return "", false
+	}
+	o := v.on(p, q)
+	if !o.determined() {
+		return "", false
+	}
+	return l.text(o[0].Printed, v.unit(q), v.language()), true
+}
+
+// difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number.
+func (v view) difference(q string) (string, bool) {
+	own, ok1 := v.subject.Quantity(q)
+	other, ok2 := v.ref.Quantity(q)
+	if !ok1 || !ok2 || !own.Determined() || !other.Determined() || other.Known.Sign() <= 0 {
+		return "", false
+	}
+	a, b := own.Known.Quo(v.subject.Mass()), other.Known.Quo(v.ref.Mass())
+	d := b.Sub(a)
+	if d.Sign() < 0 {
+		d = d.Neg()
+	}
+	return d.Mul(quantity.FromInt(100)).Quo(b).Floor(0).String() + " %", true
 }
 
 // alsoPermitted lists claims nobody asked for that the product meets on its own.

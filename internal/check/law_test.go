@@ -218,7 +218,10 @@ func (g given) document(claims ...map[string]any) []byte {
 	}
 	composition := map[string]any{"per": per, "source": "case", "components": g.Components}
 	in := map[string]any{"id": "food", "name": "food", "amount": per, "composition": composition}
-	doc := map[string]any{"id": "case", "name": "case", "ingredients": []any{in}, "claims": claims}
+	doc := map[string]any{"id": "case", "name": "case", "ingredients": []any{in}}
+	if len(claims) > 0 {
+		doc["claims"] = claims
+	}
 	put := func(m map[string]any, name string, v any, set bool) {
 		if set {
 			m[name] = v

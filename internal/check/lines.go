@@ -124,17 +124,20 @@ func (c column) on(q quantity.Linear, mass quantity.Ratio) quantity.Linear {
 	return q.Mul(c.grams.Quo(mass))
 }
 
-// possible lists what a quantity may print as on the first column: one outcome when determined.
-func (v view) possible(q string) []declare.Printed {
+// possible lists what a quantity may print as on the first column: one print when determined.
+func (v view) possible(q string) []declare.Printed { return v.on(v.subject, q).printed() }
+
+// on rounds a food's quantity on the first column; nothing where the law does not round it or the column has no mass.
+func (v view) on(p *product, q string) outcomes {
 	if len(v.columns) == 0 || !v.columns[0].known {
 		return nil
 	}
-	l, ok := v.subject.Quantity(q)
+	l, ok := p.Quantity(q)
 	r, rounded := v.law.RoundingOf(q)
 	if !ok || !rounded || len(r.Body.Bands) == 0 {
 		return nil
 	}
-	return v.outcomes(r.Body, v.columns[0].on(l, v.subject.Mass()), v.unit(q)).printed()
+	return v.outcomes(r.Body, v.columns[0].on(l, p.Mass()), v.unit(q))
 }
 
 // unit is the unit in which a quantity is printed.

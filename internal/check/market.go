@@ -144,7 +144,7 @@ type view struct {
 
 func (m *market) as(p *product) view { return view{market: m, subject: p} }
 
-func (v view) truth(c *rulebook.Condition) quantity.Truth { return claim.Evaluate(c, v).Truth }
+func (v view) truth(c *rulebook.Condition) quantity.Truth { return claim.Decide(c, v) }
 
 // Product is the food the condition speaks of.
 func (v view) Product() claim.Subject { return v.subject }

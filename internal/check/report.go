@@ -264,7 +264,10 @@ func (r *Report) Outcome() int {
 	return 0
 }
 
-func exactText(r quantity.Ratio) string { return r.Exact().Decimal.String() }
+func exactText(r quantity.Ratio) string {
+	d, _ := r.Shown()
+	return d.String()
+}
 
 func text(r quantity.Ratio) *string {
 	s := exactText(r)

@@ -1,8 +1,6 @@
 package check
 
-import (
-	"gramlaw/internal/rulebook"
-)
+import "gramlaw/internal/rulebook"
 
 // other tells what the other choice of edition would change, while two are in force.
 func (m *market) other(mine Market) *Other {
@@ -10,11 +8,10 @@ func (m *market) other(mine Market) *Other {
 	if m.c.request.Transition == rulebook.Newest {
 		t = rulebook.WhenRequired
 	}
-	o := m.c.open(m.j, t)
-	if o.law.Edition == m.law.Edition {
+	if edition, _ := m.c.book.EditionAt(m.j, m.c.request.On, t, m.as(nil).truth); edition == m.law.Edition {
 		return nil
 	}
-	theirs := o.judge()
+	theirs := m.c.open(m.j, t).judge()
 	return &Other{Transition: string(t), Edition: theirs.Edition, Changes: changes(mine, theirs)}
 }
 

@@ -31,7 +31,7 @@ type side struct {
 }
 
 // compare decides a comparison on every basis it names.
-func compare(c *rulebook.Condition, x Context) Result {
+func (x evaluator) compare(c *rulebook.Condition) Result {
 	bases := c.Per
 	if len(bases) == 0 {
 		bases = []string{""}
@@ -39,8 +39,11 @@ func compare(c *rulebook.Condition, x Context) Result {
 	parts := make([]Result, len(bases))
 	truths := make([]quantity.Truth, len(bases))
 	for i, per := range bases {
-		parts[i] = compareOn(c, per, x)
+		parts[i] = x.compareOn(c, per)
 		truths[i] = parts[i].Truth
+		if !x.explain && truths[i] == quantity.No {
+			return parts[i]
+		}
 	}
 	if len(parts) == 1 {
 		return parts[0]
@@ -48,8 +51,11 @@ func compare(c *rulebook.Condition, x Context) Result {
 	return Result{Truth: quantity.All(truths...), Op: rulebook.OpAll, Parts: parts}
 }
 
-func compareOn(c *rulebook.Condition, per string, x Context) Result {
-	says := compareSays(c, per, x)
+func (x evaluator) compareOn(c *rulebook.Condition, per string) Result {
+	says := ""
+	if x.explain {
+		says = compareSays(c, per, x)
+	}
 	subject := x.Product()
 	if c.Subject == "reference food" {
 		ref, ok := x.Reference()
@@ -63,11 +69,19 @@ func compareOn(c *rulebook.Condition, per string, x Context) Result {
 		return Result{Says: says, Missing: s.missing}
 	}
 	if c.Relation.Relative() {
-		return relative(c, per, says, s, x)
+		return x.relative(c, per, says, s)
 	}
-	cmp := &Comparison{Says: says, Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
+	cmp := x.comparison(c, says)
 	t := decideSides(c.Relation, s, quantity.FromDecimal(threshold(c)), cmp)
 	return Result{Truth: t, Says: says, Compare: cmp}
+}
+
+// comparison is where the numbers go; nil where nobody reads them.
+func (x evaluator) comparison(c *rulebook.Condition, says string) *Comparison {
+	if !x.explain {
+		return nil
+	}
+	return &Comparison{Says: says, Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
 }
 
 // threshold is the threshold in base units.
@@ -167,10 +181,11 @@ func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, str
 // decideSides decides num relation T·den, and fills the comparison's numbers.
 func decideSides(rel rulebook.Relation, s side, t quantity.Ratio, cmp *Comparison) quantity.Truth {
 	f := s.num.Sub(s.den.Mul(t))
-	cmp.Variables = f.Variables()
 	zero := s.den.High().Sign() == 0
-	cmp.Null = zero
-	cmp.numbers(s)
+	if cmp != nil {
+		cmp.Variables, cmp.Null = f.Variables(), zero
+		cmp.numbers(s)
+	}
 	if zero {
 		if rel == rulebook.AtMost || rel == rulebook.Below {
 			return sign(rulebook.AtMost, s.num)

@@ -46,12 +46,24 @@ type Result struct {
 	Missing string // what would have to be known, where that is not a number
 }
 
-// Evaluate decides a condition. A nil condition holds.
-func Evaluate(c *rulebook.Condition, x Context) Result {
+// Evaluate decides a condition and keeps every part, with its words and numbers. A nil condition holds.
+func Evaluate(c *rulebook.Condition, x Context) Result { return evaluator{x, true}.evaluate(c) }
+
+// Decide is the decision alone.
+func Decide(c *rulebook.Condition, x Context) quantity.Truth {
+	return evaluator{x, false}.evaluate(c).Truth
+}
+
+type evaluator struct {
+	Context
+	explain bool
+}
+
+func (x evaluator) evaluate(c *rulebook.Condition) Result {
 	if c == nil {
 		return Result{Truth: quantity.Yes, Op: rulebook.OpAll}
 	}
-	r := decide(c, x)
+	r := x.decide(c)
 	r.Op = c.Op
 	if c.Says != nil {
 		r.Says = c.Says.In("en")
@@ -59,45 +71,51 @@ func Evaluate(c *rulebook.Condition, x Context) Result {
 	return r
 }
 
-func decide(c *rulebook.Condition, x Context) Result {
+func (x evaluator) decide(c *rulebook.Condition) Result {
 	switch c.Op {
 	case rulebook.OpCompare:
-		return compare(c, x)
+		return x.compare(c)
 	case rulebook.OpAll:
-		return combine(c, x, quantity.All)
+		return x.combine(c, quantity.No, quantity.All)
 	case rulebook.OpAny:
-		return combine(c, x, quantity.Any)
+		return x.combine(c, quantity.Yes, quantity.Any)
 	case rulebook.OpCount:
-		return combine(c, x, func(t ...quantity.Truth) quantity.Truth { return quantity.AtLeast(c.N, t...) })
+		return x.combine(c, quantity.Open, func(t ...quantity.Truth) quantity.Truth { return quantity.AtLeast(c.N, t...) })
 	case rulebook.OpNot:
-		return combine(c, x, func(t ...quantity.Truth) quantity.Truth { return t[0].Not() })
+		return x.combine(c, quantity.Open, func(t ...quantity.Truth) quantity.Truth { return t[0].Not() })
 	case rulebook.OpWhen:
-		return when(c, x)
+		return x.when(c)
 	}
-	return atom(c, x)
+	return x.atom(c)
 }
 
-func combine(c *rulebook.Condition, x Context, of func(...quantity.Truth) quantity.Truth) Result {
-	r := Result{Parts: make([]Result, len(c.Parts))}
-	truths := make([]quantity.Truth, len(c.Parts))
-	for i, p := range c.Parts {
-		r.Parts[i] = Evaluate(p, x)
-		truths[i] = r.Parts[i].Truth
+// combine decides all parts; where nobody reads them, the first part that settles the whole ends it.
+func (x evaluator) combine(c *rulebook.Condition, settles quantity.Truth, of func(...quantity.Truth) quantity.Truth) Result {
+	var r Result
+	truths := make([]quantity.Truth, 0, len(c.Parts))
+	for _, p := range c.Parts {
+		part := x.evaluate(p)
+		truths = append(truths, part.Truth)
+		if x.explain {
+			r.Parts = append(r.Parts, part)
+		} else if settles != quantity.Open && part.Truth == settles {
+			break
+		}
 	}
 	r.Truth = of(truths...)
 	return r
 }
 
 // when takes the branch the guard points to. With the guard open, the branches must agree.
-func when(c *rulebook.Condition, x Context) Result {
-	guard := Evaluate(c.Parts[0], x)
+func (x evaluator) when(c *rulebook.Condition) Result {
+	guard := x.evaluate(c.Parts[0])
 	switch guard.Truth {
 	case quantity.Yes:
-		return taken(guard, Evaluate(c.Parts[1], x))
+		return taken(x.evaluate(c.Parts[1]))
 	case quantity.No:
-		return taken(guard, Evaluate(c.Parts[2], x))
+		return taken(x.evaluate(c.Parts[2]))
 	}
-	then, other := Evaluate(c.Parts[1], x), Evaluate(c.Parts[2], x)
+	then, other := x.evaluate(c.Parts[1]), x.evaluate(c.Parts[2])
 	r := Result{Parts: []Result{guard, then, other}}
 	if then.Truth == other.Truth {
 		r.Truth = then.Truth
@@ -105,57 +123,56 @@ func when(c *rulebook.Condition, x Context) Result {
 	return r
 }
 
-func taken(guard, branch Result) Result {
+func taken(branch Result) Result {
 	if len(branch.Parts) == 0 && branch.Compare == nil && branch.Says == "" {
 		return Result{Truth: branch.Truth} // an empty branch
 	}
 	return Result{Truth: branch.Truth, Parts: []Result{branch}}
 }
 
-func atom(c *rulebook.Condition, x Context) Result {
+func (x evaluator) atom(c *rulebook.Condition) Result {
+	r := x.ask(c)
+	if x.explain {
+		r.Says = atomSays(c, x)
+	}
+	return r
+}
+
+func (x evaluator) ask(c *rulebook.Condition) Result {
 	switch c.Op {
 	case rulebook.OpDeclared:
-		return Result{Truth: x.Declared(c.Name, c.Is), Says: declaredSays(c, x)}
+		return Result{Truth: x.Declared(c.Name, c.Is)}
 	case rulebook.OpMeets:
-		return meets(c, x)
+		return x.meets(c)
 	case rulebook.OpFact:
-		t := x.Fact(c.Name, c.Is)
-		r := Result{Truth: t, Says: c.Name + ": " + c.Is}
-		if t == quantity.Open {
-			r.Missing = "the fact " + quote(c.Name)
-		}
-		return r
+		return lacking(x.Fact(c.Name, c.Is), "the fact “"+c.Name+"”")
 	case rulebook.OpAmount:
-		r := Result{Truth: x.ReferenceAmount(c.Amounts), Says: amountSays(c)}
-		if r.Truth == quantity.Open {
-			r.Missing = "the reference amount"
-		}
-		return r
+		return lacking(x.ReferenceAmount(c.Amounts), "the reference amount")
 	case rulebook.OpKind:
-		r := Result{Truth: x.ReferenceKind(c.Kinds), Says: "the reference food is " + list(c.Kinds)}
-		if r.Truth == quantity.Open {
-			r.Missing = "the reference food"
-		}
-		return r
+		return lacking(x.ReferenceKind(c.Kinds), "the reference food")
 	case rulebook.OpAbout:
-		return Result{Truth: x.ClaimedAbout(c.About), Says: "claimed about " + list(c.About)}
+		return Result{Truth: x.ClaimedAbout(c.About)}
 	default:
-		return Result{Truth: x.NoIngredient(c), Says: ingredientSays(c)}
+		return Result{Truth: x.NoIngredient(c)}
 	}
 }
 
-func meets(c *rulebook.Condition, x Context) Result {
-	r := Result{Says: "meets " + quote(rulebook.Name(c.Name))}
+// lacking names what an open answer lacks.
+func lacking(t quantity.Truth, what string) Result {
+	if t == quantity.Open {
+		return Result{Missing: what}
+	}
+	return Result{Truth: t}
+}
+
+func (x evaluator) meets(c *rulebook.Condition) Result {
 	s := x.Product()
 	if c.Subject == "reference food" {
-		r.Says = "the reference food meets " + quote(rulebook.Name(c.Name))
 		ref, ok := x.Reference()
 		if !ok {
-			r.Missing = "the reference food"
-			return r
+			return Result{Missing: "the reference food"}
 		}
 		s = ref
 	}
-	r.Truth = s.Meets(c.Name)
-	return r
+	return Result{Truth: s.Meets(c.Name)}
 }

@@ -6,7 +6,7 @@ import (
 )
 
 // relative compares the product's value with the reference food's, both per the same basis.
-func relative(c *rulebook.Condition, per, says string, s side, x Context) Result {
+func (x evaluator) relative(c *rulebook.Condition, per, says string, s side) Result {
 	ref, ok := x.Reference()
 	if !ok {
 		return Result{Says: says, Missing: "the reference food"}
@@ -20,7 +20,7 @@ func relative(c *rulebook.Condition, per, says string, s side, x Context) Result
 	}
 	one := quantity.FromInt(1)
 	product, other := s.num.Mul(one.Quo(s.den.Known)), r.num.Mul(one.Quo(r.den.Known))
-	cmp := &Comparison{Says: says, Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
+	cmp := x.comparison(c, says)
 	return Result{Truth: decideRelative(c, product, other, cmp), Says: says, Compare: cmp}
 }
 
@@ -32,7 +32,6 @@ func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *
 	case rulebook.ReducedBy, rulebook.IncreasedBy:
 		cmp.change(c.Relation, product, other)
 		if other.High().Sign() == 0 {
-			cmp.Null = true
 			return quantity.No
 		}
 		f := change.Add(other.Mul(percent)) // product - other·(1-t)
@@ -40,16 +39,15 @@ func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *
 		if c.Relation == rulebook.IncreasedBy {
 			f, rel = change.Sub(other.Mul(percent)), rulebook.AtLeast
 		}
-		cmp.Variables = f.Variables()
+		cmp.dependsOn(f)
 		truth := sign(rel, f)
 		if truth == quantity.Yes && other.Low().Sign() == 0 {
 			return quantity.Open
 		}
 		return truth
 	case rulebook.NotMore:
-		cmp.Unit = quantity.Gram
-		cmp.absolute(product.Mul(quantity.FromInt(1)), other)
-		cmp.Variables = change.Variables()
+		cmp.absolute(product, other)
+		cmp.dependsOn(change)
 		return sign(rulebook.AtMost, change)
 	}
 	f := change
@@ -58,15 +56,24 @@ func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *
 	}
 	cmp.value(f)
 	f = f.Sub(quantity.Exactly(t))
-	cmp.Variables = f.Variables()
+	cmp.dependsOn(f)
 	return sign(rulebook.AtLeast, f)
+}
+
+func (c *Comparison) dependsOn(f quantity.Linear) {
+	if c != nil {
+		c.Variables = f.Variables()
+	}
 }
 
 // change fills the comparison with the reduction or increase in per cent.
 func (c *Comparison) change(rel rulebook.Relation, product, other quantity.Linear) {
 	p, ok1 := product.Central()
 	o, ok2 := other.Central()
-	if !ok1 || !ok2 || o.Sign() == 0 {
+	if c == nil {
+		return
+	}
+	if c.Null = other.High().Sign() == 0; !ok1 || !ok2 || o.Sign() == 0 {
 		return
 	}
 	diff := o.Sub(p)
@@ -80,6 +87,10 @@ func (c *Comparison) change(rel rulebook.Relation, product, other quantity.Linea
 }
 
 func (c *Comparison) absolute(product, other quantity.Linear) {
+	if c == nil {
+		return
+	}
+	c.Unit = quantity.Gram
 	p, ok1 := product.Central()
 	o, ok2 := other.Central()
 	if c.Known = ok1 && ok2; c.Known {
@@ -90,6 +101,9 @@ func (c *Comparison) absolute(product, other quantity.Linear) {
 }
 
 func (c *Comparison) value(f quantity.Linear) {
+	if c == nil {
+		return
+	}
 	unit := quantity.Scaled(1, -c.Unit.Scale().Exponent())
 	c.Low, c.High = f.Low().Mul(unit), f.High().Mul(unit)
 	if v, ok := f.Central(); ok {

@@ -69,6 +69,29 @@ func compareSays(c *rulebook.Condition, per string, x Context) string {
 	return s
 }
 
+// atomSays writes a condition that is no comparison in words.
+func atomSays(c *rulebook.Condition, x Context) string {
+	switch c.Op {
+	case rulebook.OpDeclared:
+		return declaredSays(c, x)
+	case rulebook.OpMeets:
+		if c.Subject == "reference food" {
+			return "the reference food meets " + quote(rulebook.Name(c.Name))
+		}
+		return "meets " + quote(rulebook.Name(c.Name))
+	case rulebook.OpFact:
+		return c.Name + ": " + c.Is
+	case rulebook.OpAmount:
+		return amountSays(c)
+	case rulebook.OpKind:
+		return "the reference food is " + list(c.Kinds)
+	case rulebook.OpAbout:
+		return "claimed about " + list(c.About)
+	default:
+		return ingredientSays(c)
+	}
+}
+
 func declaredSays(c *rulebook.Condition, x Context) string {
 	if c.Is == "" {
 		return x.Name(c.Name) + " stands in the declaration"

@@ -94,12 +94,20 @@ func (r Ratio) Add(s Ratio) Ratio {
 		return r
 	}
 	x, y, e := align(r, s)
-	if sameDen(r.den(), s.den()) {
-		return Over(new(big.Int).Add(x, y), e, r.den())
+	a, b := r.den(), s.den()
+	if sameDen(a, b) {
+		return Over(new(big.Int).Add(x, y), e, a)
 	}
-	n := new(big.Int).Mul(x, s.den())
-	n.Add(n, new(big.Int).Mul(y, r.den()))
-	return Over(n, e, new(big.Int).Mul(r.den(), s.den()))
+	if a.CmpAbs(b) < 0 {
+		x, y, a, b = y, x, b, a
+	}
+	if k, m := new(big.Int).QuoRem(a, b, new(big.Int)); m.Sign() == 0 { // b divides a: a stays the denominator
+		k.Mul(k, y)
+		return Over(k.Add(k, x), e, a)
+	}
+	n := new(big.Int).Mul(x, b)
+	n.Add(n, new(big.Int).Mul(y, a))
+	return Over(n, e, new(big.Int).Mul(a, b))
 }
 
 // Sub is r - s, exactly.

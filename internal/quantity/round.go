@@ -52,9 +52,14 @@ func (r Ratio) RoundFigures(figures int, ties Ties) decimal.Decimal {
 func (r Ratio) magnitude() int32 {
 	n, d := r.fraction()
 	n = new(big.Int).Abs(n)
-	e := int32(len(n.Text(10)) - len(d.Text(10)))
-	if cmpPow(n, d, e) < 0 {
+	// log10(2) is a little above 30102/100000, so the first guess is at most one off either way.
+	bits := int64(n.BitLen() - d.BitLen())
+	e := int32(bits * 30103 / 100000)
+	for cmpPow(n, d, e) < 0 {
 		e--
+	}
+	for cmpPow(n, d, e+1) >= 0 {
+		e++
 	}
 	return e
 }
@@ -79,25 +84,30 @@ type Exact struct {
 
 // Exact writes the ratio out.
 func (r Ratio) Exact() Exact {
-	if r.IsZero() {
-		return Exact{}
-	}
-	n, d := r.fraction()
-	e := r.magnitude() - ShownDigits + 1
-	num, den := n, d
-	if e < 0 {
-		num = new(big.Int).Mul(n, Pow10(-e))
-	} else {
-		den = new(big.Int).Mul(d, Pow10(e))
-	}
-	q, m := new(big.Int).QuoRem(num, den, new(big.Int))
-	x := Exact{Decimal: normal(decimal.NewFromBigInt(q, e))}
-	if m.Sign() != 0 {
+	d, complete := r.Shown()
+	x := Exact{Decimal: d, Truncated: !complete}
+	if !complete {
+		n, d := r.fraction()
 		g := new(big.Int).GCD(nil, nil, new(big.Int).Abs(n), d)
-		x.Truncated = true
 		x.Num, x.Den = new(big.Int).Quo(n, g).String(), new(big.Int).Quo(d, g).String()
 	}
 	return x
+}
+
+// Shown is the ratio as a decimal, complete or cut after 20 significant digits.
+func (r Ratio) Shown() (d decimal.Decimal, complete bool) {
+	if r.IsZero() {
+		return decimal.Zero, true
+	}
+	num, den := r.fraction()
+	e := r.magnitude() - ShownDigits + 1
+	if e < 0 {
+		num = new(big.Int).Mul(num, Pow10(-e))
+	} else {
+		den = new(big.Int).Mul(den, Pow10(e))
+	}
+	q, m := new(big.Int).QuoRem(num, den, new(big.Int))
+	return normal(decimal.NewFromBigInt(q, e)), m.Sign() == 0
 }
 
 // Brief is the ratio to the stated number of decimals, for people; never for a decision.

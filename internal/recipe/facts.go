@@ -37,5 +37,13 @@ var Facts = []FactRule{
 	{Name: "sold to", Kind: OneOf, Values: []string{"final consumer", "other business"}, Says: "who buys the food"},
 	{Name: "table-top sweetener", Kind: YesNo, Says: "the food is a table-top sweetener"},
 	{Name: "beverage", Kind: YesNo, Says: "the food is a drink"},
+	{Name: "seafood or game meat product", Kind: YesNo, Says: "the food is a seafood or game meat product as packaged"},
+	{Name: "discrete product", Kind: YesNo, Says: "the product is whole pieces, not a mixture"},
+	{Name: "mixed dish not measurable with a cup", Kind: YesNo, Says: "the food is a mixed dish such as a burrito or a sandwich"},
+	{Name: "replaced food has added sugars", Kind: YesNo, Says: "the food that this one resembles and replaces normally contains added sugars"},
+	{Name: "replaced food has added salt", Kind: YesNo, Says: "the food that this one resembles and replaces is normally processed with salt"},
+	{Name: "protein level reached after correction for quality", Kind: YesNo, Says: "the protein level of the claim is reached after correction for digestibility and amino acids"},
+	{Name: "named food in the meal meets the level", Kind: YesNo, Says: "the meal contains a food that meets the level of the claim, and the claim names it"},
+	{Name: "food group amounts for healthy reached", Kind: YesNo, Says: "the food holds the food-group amounts that the claim “healthy” asks for"},
 	{Name: "trans origin", Kind: OneOf, Values: []string{"ruminant", "industrial"}, Says: "where all trans fatty acids of the product come from"},
 }

@@ -81,8 +81,8 @@ func (l *Leaf) weighOut() []AcidAmount {
 		w := &l.weights[i]
 		out[i] = AcidAmount{Species: w.species, Identified: i < len(l.profile().Acids)}
 		if w.exact {
-			out[i].Acid = mulFraction(base, w.acid[1], w.den[1])
-			out[i].Triglyceride = mulFraction(base, w.tag[1], w.den[1])
+			out[i].Acid = l.fraction(base, w.acid[1], w.den[1])
+			out[i].Triglyceride = l.fraction(base, w.tag[1], w.den[1])
 			continue
 		}
 		out[i].Acid = l.ranged(w.name(), base, w.acid, w.den)
@@ -91,11 +91,12 @@ func (l *Leaf) weighOut() []AcidAmount {
 	return out
 }
 
-func mulFraction(l quantity.Linear, num, den *big.Int) quantity.Linear {
-	if l.Determined() {
-		return quantity.Exactly(l.Known.MulFraction(num, den))
+// fraction is a share of the base, over the batch's denominator for fatty acids.
+func (l *Leaf) fraction(base quantity.Linear, num, den *big.Int) quantity.Linear {
+	if !base.Determined() || l.batch.fine == nil {
+		return base.Mul(quantity.Over(num, 0, den))
 	}
-	return l.Mul(quantity.Over(num, 0, den))
+	return quantity.Exactly(base.Known.Over(l.batch.fine).MulFraction(num, den))
 }
 
 func (l *Leaf) ranged(what string, base quantity.Linear, n, den [3]*big.Int) quantity.Linear {

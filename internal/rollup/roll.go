@@ -190,24 +190,27 @@ func (l *Leaf) keepLipids(kept quantity.Ratio) {
 	l.lipidsKept = &kept
 }
 
-// commonDenominator writes all masses over one denominator that profiles divide too.
+// commonDenominator writes all masses over one denominator, and prepares a multiple of it that profiles divide too. Only
+// fatty acids need the second, so that all else stays small.
 func (b *Batch) commonDenominator() *Fault {
-	den := big.NewInt(1)
+	plain, fine := big.NewInt(1), big.NewInt(1)
 	parts := make([]quantity.Ratio, len(b.Leaves))
 	for i, l := range b.Leaves {
 		parts[i] = l.Mass.Reduced()
-		d := parts[i].Denominator()
+		plain = lcm(plain, parts[i].Denominator())
 		if p := l.profileDenominator(); p != nil {
-			d = new(big.Int).Mul(d, p)
+			fine = lcm(fine, p)
 		}
-		den = lcm(den, d)
-		if den.BitLen() > MaxBits {
+		if plain.BitLen()+fine.BitLen() > MaxBits {
 			return &Fault{l.Pointer, "too-fine", "the recipe has too many fatty-acid profiles in per cent to be computed exactly; state some in g per 100 g fat"}
 		}
 	}
-	b.den = den
+	b.den = plain
+	if fine.BitLen() > 1 {
+		b.fine = new(big.Int).Mul(plain, fine)
+	}
 	for i, l := range b.Leaves {
-		l.Mass = parts[i].Over(den)
+		l.Mass = parts[i].Over(plain)
 		l.cache, l.acids = nil, nil
 	}
 	b.Input, b.Mass = b.Input.Reduced(), b.Mass.Reduced()

@@ -55,7 +55,8 @@ type Batch struct {
 	Findings []Finding
 
 	options Options
-	den     *big.Int
+	den     *big.Int // of masses
+	fine    *big.Int // of fatty acids: a multiple of den; nil without profiles in per cent
 	owners  []Owner
 }
 

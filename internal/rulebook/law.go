@@ -96,6 +96,16 @@ func (b *Book) At(jurisdiction, date string, t Transition, facts func(*Condition
 	return law, true
 }
 
+// EditionAt is the edition that At would take.
+func (b *Book) EditionAt(jurisdiction, date string, t Transition, facts func(*Condition) quantity.Truth) (string, bool) {
+	m, ok := b.markets[jurisdiction]
+	if !ok {
+		return "", false
+	}
+	s := &selection{date: date, transition: t, facts: facts}
+	return s.pickEdition(m.Market.Editions), true
+}
+
 func (l *Law) index() {
 	l.roundingOf = map[string]int{}
 	for i, r := range l.Roundings.All {

@@ -1,0 +1,153 @@
+package claim
+
+import (
+	"strings"
+	"testing"
+
+	"github.com/go-json-experiment/json"
+
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rulebook"
+)
+
+// food is a subject of 100 g with quantities in grams (energy in kcal).
+type food map[string]quantity.Linear
+
+func (f food) Quantity(name string) (quantity.Linear, bool) { q, ok := f[name]; return q, ok }
+func (f food) From(name, _ string) (quantity.Linear, bool)  { q, ok := f[name]; return q, ok }
+func (f food) Mass() quantity.Ratio                         { return quantity.FromInt(100) }
+func (f food) Meets(string) quantity.Truth                  { return quantity.Open }
+func (f food) Basis(p rulebook.Per) (quantity.Ratio, bool) {
+	switch {
+	case p.Name == "serving":
+		return quantity.FromInt(30), true
+	case p.Amount.Unit.Dimension() == quantity.Mass:
+		return quantity.FromDecimal(p.Amount.Base()), true
+	}
+	return quantity.Ratio{}, false
+}
+
+type world struct{ product, reference food }
+
+func (w world) Product() Subject                    { return w.product }
+func (w world) Reference() (Subject, bool)          { return w.reference, w.reference != nil }
+func (w world) Name(q string) string                { return q }
+func (w world) Declared(_, _ string) quantity.Truth { return quantity.Open }
+func (w world) Fact(name, is string) quantity.Truth {
+	if name == "state" {
+		return quantity.TruthOf(is == "solid")
+	}
+	return quantity.Open
+}
+func (w world) EnergyFactor(string) (quantity.Ratio, bool)       { return quantity.FromInt(9), true }
+func (w world) ReferenceValue(string) (quantity.Ratio, bool)     { return quantity.FromInt(20), true }
+func (w world) ReferenceAmount([]quantity.Amount) quantity.Truth { return quantity.Yes }
+func (w world) ClaimedAbout([]string) quantity.Truth             { return quantity.No }
+func (w world) NoIngredient(*rulebook.Condition) quantity.Truth  { return quantity.Yes }
+func (w world) ReferenceKind([]string) quantity.Truth            { return quantity.Open }
+
+func parse(t *testing.T, s string) *rulebook.Condition {
+	t.Helper()
+	var c rulebook.Condition
+	if err := json.Unmarshal([]byte(s), &c); err != nil {
+		t.Fatal(err)
+	}
+	return &c
+}
+
+func exactly(n int64, e int32) quantity.Linear { return quantity.Exactly(quantity.Scaled(n, e)) }
+
+func between(i int, low, high int64) quantity.Linear {
+	return quantity.Of(&quantity.Variable{Index: i, Low: quantity.FromInt(low), High: quantity.FromInt(high)})
+}
+
+var (
+	water = food{"fat": {}, "mono": {}, "fatty-acids": {}, "energy": {}}
+	bread = food{"fat": exactly(3, 0), "mono": exactly(1, 0), "fatty-acids": exactly(28, -1), "energy": exactly(250, 0)}
+	hazy  = food{"fat": between(1, 2, 4), "mono": between(2, 0, 1), "fatty-acids": exactly(3, 0), "energy": exactly(100, 0)}
+)
+
+func TestConditions(t *testing.T) {
+	for _, c := range []struct {
+		name, condition string
+		w               world
+		want            quantity.Truth
+	}{
+		{"at most, exactly at", `{"of":{"fat":"1"},"per":"100 g","at most":"3 g"}`, world{product: bread}, quantity.Yes},
+		{"below, exactly at", `{"of":{"fat":"1"},"per":"100 g","below":"3 g"}`, world{product: bread}, quantity.No},
+		{"at least, exactly at", `{"of":{"fat":"1"},"per":"100 g","at least":"3 g"}`, world{product: bread}, quantity.Yes},
+		{"above, exactly at", `{"of":{"fat":"1"},"per":"100 g","above":"3 g"}`, world{product: bread}, quantity.No},
+		{"per serving", `{"of":{"fat":"1"},"per":"serving","at most":"0.9 g"}`, world{product: bread}, quantity.Yes},
+		{"per serving, just over", `{"of":{"fat":"1"},"per":"serving","at most":"0.8999 g"}`, world{product: bread}, quantity.No},
+		{"every basis of a list", `{"of":{"fat":"1"},"per":["100 g","serving"],"at most":"2 g"}`, world{product: bread}, quantity.No},
+		{"per 100 kcal", `{"of":{"fat":"1"},"per":"100 kcal","at most":"1.2 g"}`, world{product: bread}, quantity.Yes},
+		{"share of energy: 27 of 250", `{"of":{"fat":"1"},"as":"share of energy","at most":"10.8 %"}`, world{product: bread}, quantity.Yes},
+		{"share of energy, just under", `{"of":{"fat":"1"},"as":"share of energy","at most":"10.79 %"}`, world{product: bread}, quantity.No},
+		{"share of fatty acids: 1 of 2.8", `{"of":{"mono":"1"},"as":"share of fatty acids","at least":"35.7 %"}`, world{product: bread}, quantity.Yes},
+		{"share of reference value: 3 of 20", `{"of":{"fat":"1"},"as":"share of reference value","per":"100 g","at least":"15 %"}`, world{product: bread}, quantity.Yes},
+		{"sum with weights", `{"of":{"fat":"1","mono":"-1"},"per":"100 g","at most":"2 g"}`, world{product: bread}, quantity.Yes},
+
+		{"water: at least a share never holds", `{"of":{"mono":"1"},"as":"share of fatty acids","at least":"0 %"}`, world{product: water}, quantity.No},
+		{"water: above a share never holds", `{"of":{"fat":"1"},"as":"share of energy","above":"0 %"}`, world{product: water}, quantity.No},
+		{"water: at most a share holds for nothing", `{"of":{"fat":"1"},"as":"share of energy","at most":"10 %"}`, world{product: water}, quantity.Yes},
+		{"water: below a share holds for nothing", `{"of":{"fat":"1"},"as":"share of energy","below":"10 %"}`, world{product: water}, quantity.Yes},
+		{"water: at least per 100 kcal never holds", `{"of":{"fat":"1"},"per":"100 kcal","at least":"0 g"}`, world{product: water}, quantity.No},
+		{"water: reduced from nothing never holds", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{water, water}, quantity.No},
+
+		{"interval below", `{"of":{"fat":"1"},"per":"100 g","at most":"4 g"}`, world{product: hazy}, quantity.Yes},
+		{"interval above", `{"of":{"fat":"1"},"per":"100 g","below":"2 g"}`, world{product: hazy}, quantity.No},
+		{"interval across", `{"of":{"fat":"1"},"per":"100 g","at most":"3 g"}`, world{product: hazy}, quantity.Open},
+		{"the same unknown on both sides cancels", `{"of":{"fat":"1"},"per":"100 g fat","at most":"100 g"}`, world{product: hazy}, quantity.Yes},
+		{"one no decides all", `{"all":[{"of":{"fat":"1"},"per":"100 g","at most":"3 g"},{"of":{"fat":"1"},"per":"100 g","at most":"1 g"}]}`, world{product: hazy}, quantity.No},
+		{"open stays open under not", `{"not":{"of":{"fat":"1"},"per":"100 g","at most":"3 g"}}`, world{product: hazy}, quantity.Open},
+		{"an open guard whose branches agree", `{"when":{"fact":"x","is":"y"},"then":{"fact":"state","is":"solid"},"else":{"fact":"state","is":"solid"}}`, world{product: bread}, quantity.Yes},
+		{"an open guard whose branches differ", `{"when":{"fact":"x","is":"y"},"then":{"fact":"state","is":"solid"},"else":{"fact":"state","is":"liquid"}}`, world{product: bread}, quantity.Open},
+		{"one of two", `{"at least":1,"of":[{"fact":"state","is":"solid"},{"fact":"x","is":"y"}]}`, world{product: bread}, quantity.Yes},
+
+		{"reduced by exactly 25 %", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{bread, food{"fat": exactly(4, 0)}}, quantity.Yes},
+		{"reduced by just under 25 %", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{bread, food{"fat": exactly(399, -2)}}, quantity.No},
+		{"not more than the reference", `{"of":{"fat":"1"},"per":"100 g","not more than":"reference food"}`, world{bread, food{"fat": exactly(3, 0)}}, quantity.Yes},
+		{"less by an amount", `{"of":{"fat":"1"},"per":"100 g","less by":"2 g"}`, world{bread, food{"fat": exactly(5, 0)}}, quantity.Yes},
+		{"more by a share of the reference value", `{"of":{"fat":"1"},"as":"share of reference value","per":"100 g","more by":"10 %"}`, world{bread, food{"fat": exactly(1, 0)}}, quantity.Yes},
+		{"no reference food", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{product: bread}, quantity.Open},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			r := Evaluate(parse(t, c.condition), c.w)
+			if r.Truth != c.want {
+				t.Errorf("is %s, want %s: %+v", r.Truth, c.want, r.Compare)
+			}
+		})
+	}
+}
+
+// Headroom is how far a value is inside its threshold, in the threshold's unit.
+func TestHeadroom(t *testing.T) {
+	for _, c := range []struct{ condition, exact, headroom, says string }{
+		{`{"of":{"fat":"1"},"per":"serving","at most":"1 g"}`, "0.9", "0.1", "fat at most 1 g per serving"},
+		{`{"of":{"fat":"1"},"per":"serving","at most":"800 mg"}`, "900", "-100", "fat at most 800 mg per serving"},
+		{`{"of":{"mono":"1"},"as":"share of fat","at least":"45 %"}`, "33.333", "-11.667", "mono as share of fat at least 45 %"},
+		{`{"of":{"fat":"1"},"per":"100 kcal","above":"1 g"}`, "1.2", "0.2", "fat above 1 g per 100 kcal"},
+	} {
+		r := Evaluate(parse(t, c.condition), world{product: bread})
+		if got := r.Compare.Exact.Brief(3); got != c.exact {
+			t.Errorf("%s: exact %s, want %s", c.condition, got, c.exact)
+		}
+		if got := r.Compare.Headroom.Brief(3); got != c.headroom {
+			t.Errorf("%s: headroom %s, want %s", c.condition, got, c.headroom)
+		}
+		if r.Says != c.says {
+			t.Errorf("says %q, want %q", r.Says, c.says)
+		}
+	}
+}
+
+func TestOpenNamesWhatIsMissing(t *testing.T) {
+	r := Evaluate(parse(t, `{"of":{"fat":"1"},"per":"100 mL","at most":"1 g"}`), world{product: bread})
+	if r.Truth != quantity.Open || !strings.Contains(r.Missing, "density") {
+		t.Errorf("is %s, missing %q", r.Truth, r.Missing)
+	}
+	r = Evaluate(parse(t, `{"of":{"fat":"1"},"per":"100 g","at most":"3 g"}`), world{product: hazy})
+	if len(r.Compare.Variables) != 1 || r.Compare.Variables[0].Index != 1 {
+		t.Errorf("depends on %v", r.Compare.Variables)
+	}
+}
