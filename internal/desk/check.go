@@ -1,0 +1,144 @@
+package desk
+
+import (
+	"bytes"
+	"fmt"
+	"io"
+	"os"
+	"strings"
+
+	"gramlaw/internal/check"
+	"gramlaw/internal/recipe"
+	"gramlaw/internal/render"
+	"gramlaw/internal/rulebook"
+)
+
+const checkUsage = `Checks a recipe and writes the label values that the law of each market
+prescribes, with every claim judged.
+
+Usage: desk check [flags] RECIPE.json
+
+RECIPE.json is a recipe document (schemas/recipe.schema.json); - is standard
+input. Exit status: 0 all well; 1 a claim or a limit is refused; 2 the call or
+the document is wrong; 3 something is not determined and nothing is refused.
+`
+
+// checkOptions are the flags of check.
+type checkOptions struct {
+	in, without                              words
+	on, transition, format, detail, language string
+	compact, gaps                            bool
+}
+
+func checkFlags(o *checkOptions) *flags {
+	f := newFlags("check")
+	f.Var(&o.in, "in", "`MARKETS`, such as us,ca,eu; without it the recipe's, else all of the rule set")
+	f.StringVar(&o.on, "on", "", "labelling `DATE`, yyyy-mm-dd; without it today")
+	f.StringVar(&o.transition, "transition", string(rulebook.WhenRequired), "`required` or newest: which edition counts while two are in force\n(without it required)")
+	f.StringVar(&o.format, "format", "text", "`text` or json (without it text)")
+	f.StringVar(&o.detail, "detail", "", "`contributions` adds what each ingredient brings to each value")
+	f.Var(&o.without, "without", "`RULES` of presumption to leave out, by identifier, or all")
+	f.StringVar(&o.language, "language", "", "`LANGUAGE` of terms and statements in the text, such as fr, where the\nmarket's rules have it; without it the market's first")
+	f.BoolVar(&o.gaps, "gaps", false, "list the known gaps of the rules in the text")
+	f.BoolVar(&o.compact, "compact", false, "write JSON on one line")
+	return f
+}
+
+// runCheck reads, checks and writes one recipe.
+func runCheck(c *call) (int, error) {
+	var o checkOptions
+	args, err := checkFlags(&o).parse(c.args)
+	if err != nil {
+		return 0, err
+	}
+	switch {
+	case len(args) != 1:
+		return 0, fmt.Errorf("one recipe is wanted, and %d are given; desk check -h tells more", len(args))
+	case o.format != "text" && o.format != "json":
+		return 0, fmt.Errorf("-format: %q is neither text nor json", o.format)
+	}
+	doc, err := c.read(args[0])
+	if err != nil {
+		return 0, err
+	}
+	r, faults := recipe.Decode(doc)
+	if len(faults) > 0 {
+		return 0, told(shown(args[0]), faults)
+	}
+	report, err := c.check(r, &o, shown(args[0]))
+	if err != nil {
+		return 0, err
+	}
+	return report.Outcome(), c.write(report, &o)
+}
+
+func (c *call) check(r *recipe.Recipe, o *checkOptions, name string) (*check.Report, error) {
+	book, err := c.env.Rules()
+	if err != nil {
+		return nil, fmt.Errorf("the rule set cannot be used:\n%w", err)
+	}
+	if o.on == "" {
+		o.on = c.env.Now().Format("2006-01-02")
+	}
+	report, faults := check.Check(r, book, check.Request{On: o.on, In: o.in, Transition: rulebook.Transition(o.transition), Detail: o.detail, Without: o.without})
+	if len(faults) > 0 {
+		return nil, told(name, faults)
+	}
+	return report, nil
+}
+
+// write renders into memory first, so that a failure leaves nothing half written.
+func (c *call) write(r *check.Report, o *checkOptions) error {
+	var b bytes.Buffer
+	var err error
+	if o.format == "json" {
+		err = render.JSON(&b, r, o.compact)
+	} else {
+		err = render.Text(&b, r, render.Options{Language: o.language, Gaps: o.gaps, GapsHint: "-gaps lists them"})
+	}
+	if err == nil {
+		_, err = b.WriteTo(c.stdout)
+	}
+	return err
+}
+
+// read takes a file, or standard input, up to just over what the decoder accepts: it says that the document is too large.
+func (c *call) read(name string) ([]byte, error) {
+	in := c.stdin
+	if name != "-" {
+		f, err := os.Open(name)
+		if err != nil {
+			return nil, err
+		}
+		defer f.Close()
+		in = f
+	}
+	return io.ReadAll(io.LimitReader(in, recipe.MaxBytes+1))
+}
+
+func shown(name string) string {
+	if name == "-" {
+		return "standard input"
+	}
+	return name
+}
+
+// told lists every fault on its own line. Members of the request become flags.
+func told(name string, faults recipe.Faults) error {
+	var b strings.Builder
+	fmt.Fprintf(&b, "%s: %d ", name, len(faults))
+	b.WriteString(map[bool]string{true: "fault", false: "faults"}[len(faults) == 1])
+	for _, f := range faults {
+		at := f.Pointer
+		switch {
+		case at == "":
+			at = "the whole document"
+		case at[0] != '/':
+			at = "-" + at
+		}
+		fmt.Fprintf(&b, "\n%s: %s (%s)", oneLine(at), oneLine(f.Says), f.Code)
+	}
+	return fmt.Errorf("%s", b.String())
+}
+
+func oneLine(s string) string { return strings.ReplaceAll(s, "\n", " ") }

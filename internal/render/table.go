@@ -1,0 +1,100 @@
+package render
+
+import "strings"
+
+// A cell is a text in a table, wrapped where its column is too narrow.
+type cell struct {
+	text   string
+	indent int
+	right  bool
+}
+
+// A table is rows of cells in columns as wide as they need to be.
+type table struct {
+	gap  int // spaces between columns
+	rows [][]cell
+}
+
+func (t *table) row(cells ...cell) { t.rows = append(t.rows, cells) }
+
+// rule is a row that draws a line under every column.
+const rule = "\x00rule"
+
+// table writes rows at an indentation; what is wider than the page wraps within its column.
+func (p *page) table(indent int, t table) {
+	widths := t.fit(Width - indent)
+	for _, row := range t.rows {
+		p.row(indent, t.gap, row, widths)
+	}
+}
+
+// fit gives every column what it needs, and takes from the widest until all fit.
+func (t *table) fit(most int) []int {
+	var widths []int
+	for _, row := range t.rows {
+		for i, c := range row {
+			if i == len(widths) {
+				widths = append(widths, 1)
+			}
+			if c.text != rule {
+				widths[i] = max(widths[i], c.indent+columns(clean(c.text)))
+			}
+		}
+	}
+	sum := t.gap * (len(widths) - 1)
+	for _, w := range widths {
+		sum += w
+	}
+	for ; sum > most; sum-- {
+		widest := 0
+		for i, w := range widths {
+			if w > widths[widest] {
+				widest = i
+			}
+		}
+		widths[widest]--
+	}
+	return widths
+}
+
+func (p *page) row(indent, gap int, row []cell, widths []int) {
+	columnsOf := make([][]string, len(row))
+	height := 1
+	for i, c := range row {
+		columnsOf[i] = c.lines(widths[i])
+		height = max(height, len(columnsOf[i]))
+	}
+	for n := range height {
+		var b strings.Builder
+		b.WriteString(strings.Repeat(" ", indent))
+		for i := range row {
+			if i > 0 {
+				b.WriteString(strings.Repeat(" ", gap))
+			}
+			text := ""
+			if n < len(columnsOf[i]) {
+				text = columnsOf[i][n]
+			}
+			fill := strings.Repeat(" ", max(widths[i]-columns(text), 0))
+			if row[i].right {
+				text = fill + text
+			} else {
+				text += fill
+			}
+			b.WriteString(text)
+		}
+		p.put(b.String())
+	}
+}
+
+func (c cell) lines(most int) []string {
+	if c.text == rule {
+		return []string{strings.Repeat("-", most)}
+	}
+	indent := min(c.indent, most/2)
+	lines := wrap(c.text, most-indent)
+	for i := range lines {
+		lines[i] = strings.Repeat(" ", indent) + lines[i]
+	}
+	return lines
+}
