@@ -159,7 +159,7 @@ func (m *market) withStated(b *rulebook.Claim, a recipe.Claim) *rulebook.Conditi
 	default:
 		c.Relation = rulebook.AtLeast
 	}
-	return &rulebook.Condition{Op: rulebook.OpAll, Parts: []*rulebook.Condition{b.Condition, c}}
+	return &rulebook.Condition{Op: rulebook.OpAll, Parts: []*rulebook.Condition{b.Condition, c.Prepare()}}
 }
 
 // accompany lists what must stand beside a permitted claim.

@@ -52,7 +52,7 @@ func (m *market) profileAgainstStated() []Finding {
 			continue
 		}
 		for _, l := range m.product.batch.Leaves {
-			c, _ := food.Lookup(sortedKeys(byStated.Sum)[0])
+			c, _ := food.ByID(byStated.Parts()[0].ID)
 			if !l.HasProfile() || !l.Knows(c.ID) {
 				continue
 			}

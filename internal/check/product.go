@@ -3,7 +3,6 @@ package check
 import (
 	"slices"
 
-	"gramlaw/internal/food"
 	"gramlaw/internal/lipid"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
@@ -58,12 +57,12 @@ func (p *product) Quantity(name string) (quantity.Linear, bool) {
 // energy applies a method's factors to exact amounts. name is "" for an alternative method.
 func (p *product) energy(name string, m *rulebook.Method) (quantity.Linear, bool) {
 	var sum quantity.Linear
-	for _, q := range sortedKeys(m.Factors) {
-		l, ok := p.Quantity(q)
+	for _, t := range m.Terms() {
+		l, ok := p.Quantity(t.Name)
 		if !ok {
 			return quantity.Linear{}, false
 		}
-		sum = sum.Add(l.Times(m.Factors[q]))
+		sum = sum.Add(l.Mul(t.Factor))
 	}
 	if name != "" {
 		p.totals[name] = sum
@@ -121,13 +120,13 @@ func (p *product) way(d *rulebook.Definition, w *rulebook.Way, l *rollup.Leaf) (
 		return amount, complete, true
 	}
 	complete = true
-	for _, q := range sortedKeys(w.Of) {
-		parts, ok := p.parts(q)
+	for _, t := range w.Terms() {
+		parts, ok := p.parts(t.Name)
 		if !ok {
 			return quantity.Linear{}, false, false
 		}
 		one := parts[l.Index]
-		amount = amount.Add(one.amount.Times(w.Of[q]))
+		amount = amount.Add(one.amount.Mul(t.Factor))
 		complete = complete && one.complete
 	}
 	return amount, complete, true
@@ -135,11 +134,10 @@ func (p *product) way(d *rulebook.Definition, w *rulebook.Way, l *rollup.Leaf) (
 
 func components(w *rulebook.Way, l *rollup.Leaf) (sum quantity.Linear, complete bool) {
 	complete = true
-	for _, tag := range sortedKeys(w.Sum) {
-		c, _ := food.Lookup(tag)
-		a := l.Component(c.ID)
+	for _, part := range w.Parts() {
+		a := l.Component(part.ID)
 		complete = complete && (a.How != rollup.Bounded || a.Determined())
-		sum = sum.Add(a.Times(w.Sum[tag]))
+		sum = sum.Add(a.Mul(part.Factor))
 	}
 	return sum, complete
 }

@@ -209,12 +209,12 @@ func (p *product) contribution(q string, leaf int) (quantity.Linear, bool) {
 		return parts[leaf].amount, true
 	}
 	var sum quantity.Linear
-	for _, of := range sortedKeys(e.Body.Methods[0].Factors) {
-		parts, ok := p.parts(of)
+	for _, t := range e.Body.Methods[0].Terms() {
+		parts, ok := p.parts(t.Name)
 		if !ok {
 			return quantity.Linear{}, false
 		}
-		sum = sum.Add(parts[leaf].amount.Times(e.Body.Methods[0].Factors[of]))
+		sum = sum.Add(parts[leaf].amount.Mul(t.Factor))
 	}
 	return sum, true
 }

@@ -1,9 +1,6 @@
 package claim
 
 import (
-	"maps"
-	"slices"
-
 	"github.com/shopspring/decimal"
 
 	"gramlaw/internal/quantity"
@@ -32,29 +29,29 @@ type side struct {
 
 // compare decides a comparison on every basis it names.
 func (x evaluator) compare(c *rulebook.Condition) Result {
-	bases := c.Per
-	if len(bases) == 0 {
-		bases = []string{""}
+	if len(c.Per) == 0 {
+		return x.compareOn(c, "", rulebook.Per{})
+	}
+	bases := c.Bases()
+	if len(bases) == 1 {
+		return x.compareOn(c, c.Per[0], bases[0])
 	}
 	parts := make([]Result, len(bases))
 	truths := make([]quantity.Truth, len(bases))
 	for i, per := range bases {
-		parts[i] = x.compareOn(c, per)
+		parts[i] = x.compareOn(c, c.Per[i], per)
 		truths[i] = parts[i].Truth
 		if !x.explain && truths[i] == quantity.No {
 			return parts[i]
 		}
 	}
-	if len(parts) == 1 {
-		return parts[0]
-	}
 	return Result{Truth: quantity.All(truths...), Op: rulebook.OpAll, Parts: parts}
 }
 
-func (x evaluator) compareOn(c *rulebook.Condition, per string) Result {
+func (x evaluator) compareOn(c *rulebook.Condition, name string, per rulebook.Per) Result {
 	says := ""
 	if x.explain {
-		says = compareSays(c, per, x)
+		says = compareSays(c, name, x)
 	}
 	subject := x.Product()
 	if c.Subject == "reference food" {
@@ -88,7 +85,7 @@ func (x evaluator) comparison(c *rulebook.Condition, says string) *Comparison {
 func threshold(c *rulebook.Condition) decimal.Decimal { return c.Threshold.Base() }
 
 // measure builds the two sides for one food: the value is num/den in base units of the threshold.
-func measure(c *rulebook.Condition, per string, s Subject, x Context) side {
+func measure(c *rulebook.Condition, per rulebook.Per, s Subject, x Context) side {
 	num, missing := weighted(c, s, x)
 	if missing != "" {
 		return side{missing: missing}
@@ -121,18 +118,17 @@ func share(num quantity.Linear, s Subject, of string) side {
 }
 
 // per brings a side to its basis.
-func (s side) per(per string, food Subject) side {
-	if per == "" {
+func (s side) per(p rulebook.Per, food Subject) side {
+	if p == (rulebook.Per{}) {
 		return s
 	}
-	p, err := rulebook.ParsePer(per)
-	if err != nil {
-		return side{missing: "the basis " + per} // lint has refused such a rule
-	}
 	amount := quantity.FromDecimal(p.Amount.Base())
-	of := map[quantity.Dimension]string{quantity.EnergyKcal: "energy", quantity.EnergyKJ: "energy-kj"}[p.Amount.Unit.Dimension()]
-	if p.Quantity != "" {
-		of = p.Quantity
+	of := p.Quantity
+	switch p.Amount.Unit.Dimension() {
+	case quantity.EnergyKcal:
+		of = "energy"
+	case quantity.EnergyKJ:
+		of = "energy-kj"
 	}
 	if of != "" {
 		den, ok := food.Quantity(of)
@@ -149,15 +145,14 @@ func (s side) per(per string, food Subject) side {
 	return s
 }
 
-func first(c *rulebook.Condition) string {
-	return slices.Sorted(maps.Keys(c.Of))[0]
-}
+func first(c *rulebook.Condition) string { return c.Terms()[0].Name }
 
 // weighted is the linear form of the condition over a food's quantities; for a share of energy each quantity counts with
 // its energy factor.
 func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, string) {
 	var sum quantity.Linear
-	for _, name := range slices.Sorted(maps.Keys(c.Of)) {
+	for _, t := range c.Terms() {
+		name := t.Name
 		q, ok := s.Quantity(name)
 		if c.Origin != "" {
 			q, ok = s.From(name, c.Origin)
@@ -165,7 +160,7 @@ func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, str
 		if !ok {
 			return sum, "the quantity " + name
 		}
-		k := quantity.FromDecimal(c.Of[name])
+		k := t.Factor
 		if c.As == "share of energy" {
 			f, ok := x.EnergyFactor(name)
 			if !ok {

@@ -6,7 +6,7 @@ import (
 )
 
 // relative compares the product's value with the reference food's, both per the same basis.
-func (x evaluator) relative(c *rulebook.Condition, per, says string, s side) Result {
+func (x evaluator) relative(c *rulebook.Condition, per rulebook.Per, says string, s side) Result {
 	ref, ok := x.Reference()
 	if !ok {
 		return Result{Says: says, Missing: "the reference food"}

@@ -81,6 +81,9 @@ func (l Linear) Mul(r Ratio) Linear {
 	if r.IsZero() {
 		return Linear{}
 	}
+	if r.n == nil && r.s == 1 && r.e == 0 && r.d == nil {
+		return l
+	}
 	s := Linear{Known: l.Known.Mul(r)}
 	if len(l.terms) > 0 {
 		s.terms = make([]term, len(l.terms))

@@ -5,6 +5,8 @@ import (
 	"math/big"
 	"strings"
 	"testing"
+
+	"github.com/shopspring/decimal"
 )
 
 func TestParseAmount(t *testing.T) {
@@ -108,6 +110,14 @@ func equal(r Ratio, want *big.Rat) bool {
 	return new(big.Rat).SetFrac(n, d).Cmp(want) == 0
 }
 
+// slowRound is the same rounding in big integers alone.
+func slowRound(r Ratio, step decimal.Decimal, ties Ties) decimal.Decimal {
+	n, d := r.fraction()
+	sn, sd := FromDecimal(step).fraction()
+	k := nearest(new(big.Int).Mul(n, sd), new(big.Int).Mul(d, sn), ties)
+	return decimal.NewFromBigInt(k, 0).Mul(step)
+}
+
 // The arithmetic agrees with the rational numbers of the standard library, a general-purpose reference.
 func FuzzRatioAgreesWithRat(f *testing.F) {
 	f.Add(int64(3), int8(-2), uint16(6), int64(-5), int8(1), uint16(6))
@@ -122,6 +132,7 @@ func FuzzRatioAgreesWithRat(f *testing.F) {
 			"mul":     equal(a.Mul(b), new(big.Rat).Mul(x, y)),
 			"quo":     b.IsZero() || equal(a.Quo(b), new(big.Rat).Quo(x, y)),
 			"cmp":     a.Cmp(b) == x.Cmp(y),
+			"round":   a.Round(decimal.New(5, -2), TiesUp).Equal(slowRound(a, decimal.New(5, -2), TiesUp)) && a.Round(decimal.New(25, -1), TiesEven).Equal(slowRound(a, decimal.New(25, -1), TiesEven)),
 			"reduced": equal(a.Reduced(), x),
 			"over":    equal(a.Over(new(big.Int).Mul(a.den(), b.den())), x),
 			"fraction": b.IsZero() || equal(a.MulFraction(b.num(), big.NewInt(7)),

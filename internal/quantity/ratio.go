@@ -1,7 +1,9 @@
 package quantity
 
 import (
+	"math"
 	"math/big"
+	"math/bits"
 
 	"github.com/shopspring/decimal"
 )
@@ -12,43 +14,48 @@ var (
 )
 
 // A Ratio is the exact rational number n·10^e / d with d above zero. Values of one recipe share d, so that their sums
-// are sums of integers. The zero Ratio is the number zero.
+// are sums of integers. Numerators that fit a machine word are kept in one. The zero Ratio is the number zero.
 type Ratio struct {
-	n *big.Int // nil is zero
+	s int64    // the numerator, while n is nil
+	n *big.Int // the numerator where it does not fit s
 	d *big.Int // nil is one
 	e int32
 }
 
 // FromDecimal is the exact value of a decimal.
 func FromDecimal(d decimal.Decimal) Ratio {
-	if d.IsZero() {
-		return Ratio{}
+	if d.NumDigits() <= 18 {
+		return Scaled(d.CoefficientInt64(), d.Exponent())
 	}
-	return Ratio{n: d.Coefficient(), e: d.Exponent()}
+	return Over(d.Coefficient(), d.Exponent(), nil)
 }
 
 // FromInt is the whole number i.
-func FromInt(i int64) Ratio { return Scaled(i, 0) }
+func FromInt(i int64) Ratio { return Ratio{s: i} }
 
 // Scaled is mantissa·10^exponent.
 func Scaled(mantissa int64, exponent int32) Ratio {
 	if mantissa == 0 {
 		return Ratio{}
 	}
-	return Ratio{n: big.NewInt(mantissa), e: exponent}
+	return Ratio{s: mantissa, e: exponent}
 }
 
-// Over is n·10^e / d. It keeps d: hand the same pointer to every value that shares a denominator, and never change it.
+// Over is n·10^e / d; d may be nil for one. It keeps both: hand the same pointer to every value that shares a denominator,
+// and never change either.
 func Over(n *big.Int, e int32, d *big.Int) Ratio {
-	if n.Sign() == 0 {
+	switch {
+	case n.Sign() == 0:
 		return Ratio{}
+	case n.IsInt64() && n.Int64() != math.MinInt64:
+		return Ratio{s: n.Int64(), d: d, e: e}
 	}
 	return Ratio{n: n, d: d, e: e}
 }
 
 func (r Ratio) num() *big.Int {
 	if r.n == nil {
-		return new(big.Int)
+		return big.NewInt(r.s)
 	}
 	return r.n
 }
@@ -62,16 +69,77 @@ func (r Ratio) den() *big.Int {
 
 // Sign is -1, 0 or +1.
 func (r Ratio) Sign() int {
-	if r.n == nil {
-		return 0
+	if r.n != nil {
+		return r.n.Sign()
 	}
-	return r.n.Sign()
+	return sign(r.s)
+}
+
+func sign(i int64) int {
+	switch {
+	case i < 0:
+		return -1
+	case i > 0:
+		return 1
+	}
+	return 0
 }
 
 // IsZero reports the number zero.
-func (r Ratio) IsZero() bool { return r.Sign() == 0 }
+func (r Ratio) IsZero() bool { return r.n == nil && r.s == 0 }
 
-func sameDen(a, b *big.Int) bool { return a == b || a.Cmp(b) == 0 }
+func sameDen(a, b *big.Int) bool {
+	return a == b || a != nil && b != nil && a.Cmp(b) == 0
+}
+
+// mul64 is a product that fits a word; false where it does not.
+func mul64(a, b int64) (int64, bool) {
+	if a == 0 || b == 0 {
+		return 0, true
+	}
+	hi, lo := bits.Mul64(magnitude64(a), magnitude64(b))
+	if hi != 0 || lo > math.MaxInt64 {
+		return 0, false
+	}
+	if (a < 0) != (b < 0) {
+		return -int64(lo), true
+	}
+	return int64(lo), true
+}
+
+func magnitude64(a int64) uint64 {
+	if a < 0 {
+		return uint64(-a)
+	}
+	return uint64(a)
+}
+
+var words = [...]int64{1, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15, 1e16, 1e17, 1e18}
+
+// shift64 is a·10^k in a word; false where it does not fit.
+func shift64(a int64, k int32) (int64, bool) {
+	if a == 0 {
+		return 0, true
+	}
+	if int(k) >= len(words) {
+		return 0, false
+	}
+	return mul64(a, words[k])
+}
+
+// aligned64 gives both numerators over one power of ten, in words.
+func aligned64(a, b Ratio) (x, y int64, e int32, ok bool) {
+	if a.n != nil || b.n != nil {
+		return 0, 0, 0, false
+	}
+	x, y, e, ok = a.s, b.s, min(a.e, b.e), true
+	if a.e > e {
+		x, ok = shift64(a.s, a.e-e)
+	} else if b.e > e {
+		y, ok = shift64(b.s, b.e-e)
+	}
+	return x, y, e, ok
+}
 
 // align gives both numerators over one power of ten.
 func align(a, b Ratio) (x, y *big.Int, e int32) {
@@ -93,11 +161,22 @@ func (r Ratio) Add(s Ratio) Ratio {
 	case s.IsZero():
 		return r
 	}
-	x, y, e := align(r, s)
-	a, b := r.den(), s.den()
-	if sameDen(a, b) {
-		return Over(new(big.Int).Add(x, y), e, a)
+	same := sameDen(r.d, s.d)
+	if same {
+		if x, y, e, ok := aligned64(r, s); ok {
+			if sum := x + y; (sum > x) == (y > 0) {
+				if sum == 0 {
+					return Ratio{}
+				}
+				return Ratio{s: sum, d: r.d, e: e}
+			}
+		}
 	}
+	x, y, e := align(r, s)
+	if same {
+		return Over(new(big.Int).Add(x, y), e, r.d)
+	}
+	a, b := r.den(), s.den()
 	if a.CmpAbs(b) < 0 {
 		x, y, a, b = y, x, b, a
 	}
@@ -115,8 +194,8 @@ func (r Ratio) Sub(s Ratio) Ratio { return r.Add(s.Neg()) }
 
 // Neg is -r.
 func (r Ratio) Neg() Ratio {
-	if r.IsZero() {
-		return Ratio{}
+	if r.n == nil {
+		return Ratio{s: -r.s, d: r.d, e: r.e}
 	}
 	return Ratio{n: new(big.Int).Neg(r.n), d: r.d, e: r.e}
 }
@@ -126,15 +205,19 @@ func (r Ratio) Mul(s Ratio) Ratio {
 	if r.IsZero() || s.IsZero() {
 		return Ratio{}
 	}
-	n := new(big.Int).Mul(r.n, s.n)
-	d := r.den()
+	d := r.d
 	switch {
-	case d == one:
-		d = s.den()
-	case s.den() != one:
-		d = new(big.Int).Mul(d, s.den())
+	case d == nil:
+		d = s.d
+	case s.d != nil:
+		d = new(big.Int).Mul(d, s.d)
 	}
-	return Ratio{n: n, d: d, e: r.e + s.e}
+	if r.n == nil && s.n == nil {
+		if p, ok := mul64(r.s, s.s); ok {
+			return Ratio{s: p, d: d, e: r.e + s.e}
+		}
+	}
+	return Over(new(big.Int).Mul(r.num(), s.num()), r.e+s.e, d)
 }
 
 // Times is r multiplied by a decimal; the denominator stays shared.
@@ -145,38 +228,85 @@ func (r Ratio) Quo(s Ratio) Ratio {
 	if r.IsZero() {
 		return Ratio{}
 	}
-	n, d := r.n, r.den()
-	if sameDen(d, s.den()) {
-		d = s.n
-	} else {
-		n, d = new(big.Int).Mul(n, s.den()), new(big.Int).Mul(d, s.n)
+	n, d := r, s.num()
+	if !sameDen(r.d, s.d) {
+		n = r.Mul(Over(s.den(), 0, nil))
+		if r.d != nil {
+			d = new(big.Int).Mul(d, r.d)
+		}
 	}
 	if d.Sign() < 0 {
-		n, d = new(big.Int).Neg(n), new(big.Int).Neg(d)
+		n, d = n.Neg(), new(big.Int).Neg(d)
 	}
-	return Ratio{n: n, d: d, e: r.e - s.e}
+	if d.Cmp(one) == 0 {
+		d = nil
+	}
+	return Ratio{s: n.s, n: n.n, d: d, e: r.e - s.e}
 }
 
 // Cmp compares two ratios by cross-multiplication.
 func (r Ratio) Cmp(s Ratio) int {
-	if r.Sign() != s.Sign() {
-		return sign(r.Sign() - s.Sign())
+	if a, b := r.Sign(), s.Sign(); a != b || a == 0 {
+		return sign(int64(a - b))
 	}
-	if r.IsZero() {
-		return 0
+	same := sameDen(r.d, s.d)
+	if x, y, _, ok := aligned64(r, s); ok {
+		if same {
+			return sign64(x, y)
+		}
+		if c, ok := cross64(x, y, r.d, s.d); ok {
+			return c
+		}
 	}
 	x, y, _ := align(r, s)
-	if sameDen(r.den(), s.den()) {
+	if same {
 		return x.Cmp(y)
 	}
 	return new(big.Int).Mul(x, s.den()).Cmp(new(big.Int).Mul(y, r.den()))
 }
 
-func sign(i int) int {
+func sign64(x, y int64) int {
 	switch {
-	case i < 0:
+	case x < y:
 		return -1
-	case i > 0:
+	case x > y:
+		return 1
+	}
+	return 0
+}
+
+// cross64 compares x/a with y/b, both of one sign, in double words.
+func cross64(x, y int64, a, b *big.Int) (int, bool) {
+	p, q := int64(1), int64(1)
+	if a != nil {
+		if !a.IsInt64() {
+			return 0, false
+		}
+		p = a.Int64()
+	}
+	if b != nil {
+		if !b.IsInt64() {
+			return 0, false
+		}
+		q = b.Int64()
+	}
+	h1, l1 := bits.Mul64(magnitude64(x), uint64(q))
+	h2, l2 := bits.Mul64(magnitude64(y), uint64(p))
+	c := 0
+	switch {
+	case h1 != h2:
+		c = 1 - 2*bit(h1 < h2)
+	case l1 != l2:
+		c = 1 - 2*bit(l1 < l2)
+	}
+	if x < 0 {
+		c = -c
+	}
+	return c, true
+}
+
+func bit(b bool) int {
+	if b {
 		return 1
 	}
 	return 0
@@ -185,7 +315,7 @@ func sign(i int) int {
 // CmpDecimal compares with a decimal.
 func (r Ratio) CmpDecimal(d decimal.Decimal) int { return r.Cmp(FromDecimal(d)) }
 
-// Min is the smaller of two, Max the larger.
+// Min is the smaller of two.
 func Min(a, b Ratio) Ratio {
 	if b.Cmp(a) < 0 {
 		return b
@@ -199,89 +329,4 @@ func Max(a, b Ratio) Ratio {
 		return b
 	}
 	return a
-}
-
-// fraction is the ratio as two integers, the denominator positive.
-func (r Ratio) fraction() (n, d *big.Int) {
-	n, d = r.num(), r.den()
-	switch {
-	case r.e > 0:
-		n = new(big.Int).Mul(n, Pow10(r.e))
-	case r.e < 0:
-		d = new(big.Int).Mul(d, Pow10(-r.e))
-	}
-	return n, d
-}
-
-// Bits is the size of the larger part, for callers that cap it.
-func (r Ratio) Bits() int { return max(r.num().BitLen(), r.den().BitLen()) }
-
-var powers = func() (p [64]*big.Int) {
-	v := big.NewInt(1)
-	for i := range p {
-		p[i] = new(big.Int).Set(v)
-		v.Mul(v, ten)
-	}
-	return p
-}()
-
-// Pow10 is 10^e for e of zero or more. The result is shared: never change it.
-func Pow10(e int32) *big.Int {
-	if int(e) < len(powers) {
-		return powers[e]
-	}
-	return new(big.Int).Exp(ten, big.NewInt(int64(e)), nil)
-}
-
-func trimZeros(c *big.Int, e int32) (*big.Int, int32) {
-	q, m := new(big.Int), new(big.Int)
-	for c.Sign() != 0 {
-		q.QuoRem(c, ten, m)
-		if m.Sign() != 0 {
-			break
-		}
-		c, e = new(big.Int).Set(q), e+1
-	}
-	return c, e
-}
-
-// Reduced is the same number in lowest terms, powers of ten apart.
-func (r Ratio) Reduced() Ratio {
-	if r.IsZero() || r.d == nil || r.d == one {
-		return r
-	}
-	n, d, e := new(big.Int).Set(r.n), new(big.Int).Set(r.d), r.e
-	g := new(big.Int).GCD(nil, nil, new(big.Int).Abs(n), d)
-	n.Quo(n, g)
-	d.Quo(d, g)
-	d, down := trimZeros(d, 0)
-	if e -= down; d.Cmp(one) == 0 {
-		d = one
-	}
-	return Ratio{n: n, d: d, e: e}
-}
-
-// Denominator is what the ratio is over, its power of ten apart. Never change it.
-func (r Ratio) Denominator() *big.Int { return r.den() }
-
-// Over writes the ratio over a multiple of its denominator.
-func (r Ratio) Over(den *big.Int) Ratio {
-	if r.IsZero() || r.den() == den {
-		return r
-	}
-	k := new(big.Int).Quo(den, r.den())
-	return Ratio{n: k.Mul(k, r.n), d: den, e: r.e}
-}
-
-// MulFraction is r·num/den. Where den divides r's numerator, as it does by construction in a batch, the denominator stays
-// the shared one.
-func (r Ratio) MulFraction(num, den *big.Int) Ratio {
-	if r.IsZero() || num.Sign() == 0 {
-		return Ratio{}
-	}
-	q, m := new(big.Int).QuoRem(r.n, den, new(big.Int))
-	if m.Sign() == 0 {
-		return Ratio{n: q.Mul(q, num), d: r.d, e: r.e}
-	}
-	return Ratio{n: m.Mul(r.n, num), d: new(big.Int).Mul(r.den(), den), e: r.e}
 }

@@ -17,6 +17,9 @@ const (
 
 // Round gives the multiple of step (above zero) nearest to r. It decides on the exact value.
 func (r Ratio) Round(step decimal.Decimal, ties Ties) decimal.Decimal {
+	if k, ok := r.round64(step, ties); ok {
+		return k
+	}
 	n, d := r.fraction()
 	sn, sd := FromDecimal(step).fraction()
 	// r/step = (n·sd) / (d·sn)
@@ -24,6 +27,44 @@ func (r Ratio) Round(step decimal.Decimal, ties Ties) decimal.Decimal {
 	den := new(big.Int).Mul(d, sn)
 	k := nearest(num, den, ties)
 	return normal(decimal.NewFromBigInt(k, 0).Mul(step))
+}
+
+// round64 is Round in machine words; false where they do not suffice.
+func (r Ratio) round64(step decimal.Decimal, ties Ties) (decimal.Decimal, bool) {
+	if r.n != nil || r.s < 0 || r.d != nil && !r.d.IsInt64() || step.NumDigits() > 18 {
+		return decimal.Decimal{}, false
+	}
+	c := step.CoefficientInt64()
+	num, den, ok := r.s, c, true
+	if r.d != nil {
+		den, ok = mul64(den, r.d.Int64())
+	}
+	ok2 := true
+	if k := r.e - step.Exponent(); k >= 0 {
+		num, ok2 = shift64(num, k)
+	} else {
+		den, ok2 = shift64(den, -k)
+	}
+	if !ok || !ok2 {
+		return decimal.Decimal{}, false
+	}
+	k, m := num/den, num%den
+	if rest := den - m; m > rest || m == rest && (ties != TiesEven || k%2 == 1) {
+		k++
+	}
+	v, ok := mul64(k, c)
+	return short(v, step.Exponent()), ok
+}
+
+// short is v·10^e without trailing zeros.
+func short(v int64, e int32) decimal.Decimal {
+	if v == 0 {
+		return decimal.Zero
+	}
+	for v%10 == 0 {
+		v, e = v/10, e+1
+	}
+	return decimal.New(v, e)
 }
 
 func nearest(num, den *big.Int, ties Ties) *big.Int {
@@ -96,8 +137,8 @@ func (r Ratio) Exact() Exact {
 
 // Shown is the ratio as a decimal, complete or cut after 20 significant digits.
 func (r Ratio) Shown() (d decimal.Decimal, complete bool) {
-	if r.IsZero() {
-		return decimal.Zero, true
+	if r.n == nil && r.d == nil {
+		return short(r.s, r.e), true
 	}
 	num, den := r.fraction()
 	e := r.magnitude() - ShownDigits + 1

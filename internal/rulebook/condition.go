@@ -51,6 +51,9 @@ type Condition struct {
 	Origin    string // "industrial" or "ruminant": only trans of that origin
 	Subject   string // "" is the product, "reference food" the other
 
+	terms []Term
+	bases []Per
+
 	// OpDeclared, OpMeets, OpFact
 	Name string // line, rule id or fact
 	Is   string
@@ -251,7 +254,24 @@ func (c *Condition) readCompare(r *reader) {
 		c.Origin = from.Origin
 	}
 	c.readRelation(r)
+	c.Prepare()
 }
+
+// Prepare readies a comparison that was not read from a rule. A basis that cannot be read is left to lint.
+func (c *Condition) Prepare() *Condition {
+	c.terms, c.bases = terms(c.Of), nil
+	for _, s := range c.Per {
+		p, _ := ParsePer(s)
+		c.bases = append(c.bases, p)
+	}
+	return c
+}
+
+// Terms is the comparison's linear form, Bases what it is per.
+func (c *Condition) Terms() []Term { return c.terms }
+
+// Bases are the parsed entries of Per, in order.
+func (c *Condition) Bases() []Per { return c.bases }
 
 func (c *Condition) readRelation(r *reader) {
 	if v := r.take(string(NotMore)); v != nil {

@@ -36,7 +36,9 @@ func (c *checker) quantities() {
 		if len(e.Methods) == 0 {
 			c.bad("energy", id, field+"/methods", "is empty")
 		}
-		for _, m := range e.Methods {
+		for i := range e.Methods {
+			m := &e.Methods[i]
+			m.terms = terms(m.Factors)
 			for _, q := range sorted(m.Factors) {
 				c.quantity("energy", id, field+"/methods/"+m.Method, q, quantity.Mass)
 			}
@@ -73,13 +75,16 @@ func (c *checker) way(id, field string, w *Way) {
 	if w.Sum != nil {
 		set++
 		for _, tag := range sorted(w.Sum) {
-			if _, ok := food.Lookup(tag); !ok {
+			component, ok := food.Lookup(tag)
+			if !ok {
 				c.bad("definitions", id, field+"/sum", "%q is no component of the register", tag)
 			}
+			w.parts = append(w.parts, Part{component.ID, quantity.FromDecimal(w.Sum[tag])})
 		}
 	}
 	if w.Of != nil {
 		set++
+		w.terms = terms(w.Of)
 		for _, q := range sorted(w.Of) {
 			c.quantity("definitions", id, field+"/of", q, quantity.Mass)
 			c.depend("quantity/"+Name(id), "quantity/"+q)

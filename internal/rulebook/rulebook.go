@@ -9,6 +9,7 @@ package rulebook
 import (
 	"github.com/shopspring/decimal"
 
+	"gramlaw/internal/food"
 	"gramlaw/internal/lipid"
 	"gramlaw/internal/quantity"
 )
@@ -127,11 +128,41 @@ type Way struct {
 	Sum   map[string]decimal.Decimal `json:"sum,omitzero"`   // over components, by tagname
 	Of    map[string]decimal.Decimal `json:"of,omitzero"`    // over quantities of the same law
 	Note  string                     `json:"note,omitzero"`
+
 	class *lipid.Class
+	parts []Part
+	terms []Term
+}
+
+// A Term is a factor times a named quantity.
+type Term struct {
+	Name   string
+	Factor quantity.Ratio
+}
+
+// A Part is a factor times a component.
+type Part struct {
+	ID     food.ID
+	Factor quantity.Ratio
+}
+
+// terms orders a linear form by name.
+func terms(m map[string]decimal.Decimal) []Term {
+	out := make([]Term, 0, len(m))
+	for _, name := range sorted(m) {
+		out = append(out, Term{name, quantity.FromDecimal(m[name])})
+	}
+	return out
 }
 
 // Class is the compiled predicate of an Acids way.
 func (w *Way) Class() *lipid.Class { return w.class }
+
+// Parts is the linear form of a Sum way.
+func (w *Way) Parts() []Part { return w.parts }
+
+// Terms is the linear form of an Of way.
+func (w *Way) Terms() []Term { return w.terms }
 
 // An Energy gives the energy of a food from its quantities.
 type Energy struct {
@@ -145,7 +176,12 @@ type Method struct {
 	Method  string                     `json:"method"`
 	Factors map[string]decimal.Decimal `json:"factors"`
 	Note    string                     `json:"note,omitzero"`
+
+	terms []Term
 }
+
+// Terms is the method's linear form.
+func (m *Method) Terms() []Term { return m.terms }
 
 // A Reference is a daily value, reference intake or the like, by population.
 type Reference struct {
