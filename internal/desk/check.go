@@ -125,6 +125,9 @@ func shown(name string) string {
 
 // told lists every fault on its own line. Members of the request become flags.
 func told(name string, faults recipe.Faults) error {
+	if at := faults[0].Pointer; at != "" && at[0] != '/' {
+		name = "the call"
+	}
 	var b strings.Builder
 	fmt.Fprintf(&b, "%s: %d ", name, len(faults))
 	b.WriteString(map[bool]string{true: "fault", false: "faults"}[len(faults) == 1])

@@ -122,7 +122,7 @@ func (c *call) fail(who string, err error) int {
 }
 
 func overview() string {
-	s := "Checks what a food label may say: label values, claims and limits, market by market.\n\nUsage: desk VERB [flags] [arguments]\n\n"
+	s := "Checks what a food label may say: values, claims and limits, market by market.\n\nUsage: desk VERB [flags] [arguments]\n\n"
 	for _, v := range verbs() {
 		s += fmt.Sprintf("  %-8s %s\n", v.name, v.line)
 	}

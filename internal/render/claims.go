@@ -1,7 +1,10 @@
 package render
 
 import (
+	"slices"
 	"strings"
+	"unicode"
+	"unicode/utf8"
 
 	"gramlaw/internal/check"
 )
@@ -71,16 +74,19 @@ func (p *page) claim(m *check.Market, c *check.Claim, o Options) {
 	if len(c.NeedsLines) > 0 {
 		p.line(2, "Makes mandatory in the declaration: "+strings.Join(terms(m, c.NeedsLines, o), ", ")+".")
 	}
-	if len(c.Needs) > 0 {
-		p.line(2, "Still to be known: "+strings.Join(c.Needs, ", ")+".")
+	if more := untold(m, c); len(more) > 0 {
+		p.line(2, "Still to be known: "+needed(more)+".")
 	}
 	if c.Source != "" {
-		p.line(2, "Source: "+c.Source+" ("+grade(c.Force, c.Evidence)+").")
+		p.line(2, "Source ("+grade(c.Force, c.Evidence)+"): "+sentence(c.Source))
 	}
 }
 
+// sentence begins with a capital and ends with a point.
 func sentence(s string) string {
-	if s == "" || strings.HasSuffix(s, ".") {
+	first, n := utf8.DecodeRuneInString(s)
+	s = string(unicode.ToUpper(first)) + s[n:]
+	if strings.HasSuffix(s, ".") {
 		return s
 	}
 	return s + "."
@@ -88,13 +94,16 @@ func sentence(s string) string {
 
 // terms turns names of quantities into the words of the declaration.
 func terms(m *check.Market, quantities []string, o Options) []string {
-	out := make([]string, len(quantities))
-	for i, q := range quantities {
-		out[i] = strings.ReplaceAll(q, "-", " ")
+	var out []string
+	for _, q := range quantities {
+		word := strings.ReplaceAll(q, "-", " ")
 		for j := range m.Declaration.Lines {
 			if l := &m.Declaration.Lines[j]; l.Quantity == q {
-				out[i] = term(l, o)
+				word = term(l, o)
 			}
+		}
+		if !slices.Contains(out, word) {
+			out = append(out, word)
 		}
 	}
 	return out
@@ -106,19 +115,33 @@ func (p *page) statementList(title string, list []check.Statement, o Options) {
 		p.heading(title, '-')
 	}
 	for _, s := range list {
-		how := []string{}
-		for _, w := range []string{presence(s.Presence), s.Place} {
-			if w != "" {
-				how = append(how, w)
-			}
-		}
-		p.hang(2, 4, "", "“"+in(o.Language, s.Text, s.Texts)+"” ("+strings.Join(how, ", ")+")")
 		shown := in(o.Language, s.Text, s.Texts)
-		for _, lang := range sorted(s.Texts) {
-			if s.Texts[lang] != shown {
-				p.hang(4, 8, lang+": ", "“"+s.Texts[lang]+"”")
-			}
+		p.hang(2, 4, "", "“"+shown+"” ("+presence(s.Presence)+place(s.Place)+")")
+		p.languages(shown, s.Texts)
+	}
+}
+
+func place(s string) string {
+	if s == "" {
+		return ""
+	}
+	return "; " + s
+}
+
+// languages shows a statement in the other languages of a market that has two, and names them where there are more.
+func (p *page) languages(shown string, texts map[string]string) {
+	var names []string
+	for _, lang := range sorted(texts) {
+		if texts[lang] == shown {
+			continue
 		}
+		names = append(names, lang)
+		if len(texts) == 2 {
+			p.hang(4, 8, lang+": ", "“"+texts[lang]+"”")
+		}
+	}
+	if len(texts) > 2 {
+		p.line(4, "The rules also have it in "+strings.Join(names, ", ")+".")
 	}
 }
 

@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"strings"
 
+	"github.com/shopspring/decimal"
+
 	"gramlaw/internal/check"
 )
 
@@ -94,11 +96,13 @@ func (p *page) figures(indent int, c *check.Condition, headroom bool) {
 		s := comparison(c)
 		if headroom && c.Exact != nil && c.Headroom != "" {
 			s += "; " + room(c)
+		} else if headroom && c.Exact == nil && c.Holds != nil {
+			s += roomOfRange(c)
 		}
 		p.line(indent, s)
 	}
 	if len(c.Needs) > 0 {
-		p.line(indent, "would be settled by: "+strings.Join(c.Needs, ", "))
+		p.line(indent, "would be settled by: "+needed(c.Needs))
 	}
 }
 
@@ -114,13 +118,15 @@ func comparison(c *check.Condition) string {
 		relation = "is not " + relation
 	}
 	value := measured(c)
-	if value == "" {
-		return "no value can be told; asked for is " + relation + " " + unitAfter(short(c.Threshold), c.Unit)
+	switch {
+	case value == "" && c.Holds == nil:
+		return "the value is not determined"
+	case value == "":
+		return "no single value can be told"
+	case c.Holds == nil:
+		return value + "; asked for is " + relation + " " + withUnit(short(c.Threshold), c.Unit)
 	}
-	if c.Holds == nil {
-		return value + "; asked for is " + relation + " " + unitAfter(short(c.Threshold), c.Unit)
-	}
-	return value + " " + relation + " " + unitAfter(short(c.Threshold), c.Unit)
+	return value + " " + relation + " " + withUnit(short(c.Threshold), c.Unit)
 }
 
 // measured is the value of a comparison: a number, a range, or "" where there is none.
@@ -130,27 +136,25 @@ func measured(c *check.Condition) string {
 	case c.Low == "" && c.High == "":
 	case c.Low == "0" && c.High == "0": // nothing is known, or the denominator is zero
 	case c.High == "0":
-		ends = unitAfter(beside(c.Low, c.Threshold), c.Unit) + " or more"
-	case c.Low == c.High:
-		ends = unitAfter(beside(c.Low, c.Threshold), c.Unit)
+		ends = withUnit(beside(c.Low, c.Threshold), c.Unit) + " or more"
+	case beside(c.Low, c.Threshold) == beside(c.High, c.Threshold):
+		ends = withUnit(beside(c.Low, c.Threshold), c.Unit)
 	default:
-		ends = beside(c.Low, c.Threshold) + " to " + unitAfter(beside(c.High, c.Threshold), c.Unit)
+		ends = beside(c.Low, c.Threshold) + " to " + withUnit(strings.TrimPrefix(beside(c.High, c.Threshold), "≈"), c.Unit)
 	}
 	if c.Exact == nil {
 		return ends
 	}
-	value := unitAfter(beside(*c.Exact, c.Threshold), c.Unit)
+	value := withUnit(beside(*c.Exact, c.Threshold), c.Unit)
 	if ends == "" || ends == value {
 		return value
 	}
 	return "typically " + value + ", possible " + ends
 }
 
-func unitAfter(value, unit string) string { return strings.TrimSpace(value + " " + unit) }
-
 // room tells how far inside or outside its threshold a value is.
 func room(c *check.Condition) string {
-	by := unitAfter(short(strings.TrimPrefix(c.Headroom, "-")), c.Unit)
+	by := withUnit(short(strings.TrimPrefix(c.Headroom, "-")), c.Unit)
 	switch {
 	case c.Headroom == "0":
 		return "exactly at the threshold"
@@ -158,4 +162,17 @@ func room(c *check.Condition) string {
 		return "outside by " + by
 	}
 	return "inside by " + by
+}
+
+// roomOfRange is the headroom of a decided range at the end that is nearer to the threshold.
+func roomOfRange(c *check.Condition) string {
+	low, err1 := decimal.NewFromString(c.Low)
+	high, err2 := decimal.NewFromString(c.High)
+	t, err3 := decimal.NewFromString(c.Threshold)
+	if err1 != nil || err2 != nil || err3 != nil || measured(c) == "" || high.LessThan(low) {
+		return ""
+	}
+	near := decimal.Min(low.Sub(t).Abs(), high.Sub(t).Abs())
+	word := map[bool]string{true: "inside", false: "outside"}[*c.Holds]
+	return "; " + word + " by " + withUnit(short(near.String()), c.Unit) + " or more"
 }

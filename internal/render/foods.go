@@ -85,7 +85,7 @@ func (p *page) facts(f food.Food) {
 	n, ok := f.Refuse()
 	put("Refuse", n, ok && n.Mantissa > 0, "% of the food as bought")
 	n, ok = f.NitrogenFactor()
-	put("Nitrogen to protein", n, ok, "")
+	put("Nitrogen to protein", n, ok && n.Mantissa > 0, "")
 	n, ok = f.ProteinEnergy()
 	put("Energy of protein", n, ok, "kcal/g")
 	n, ok = f.FatEnergy()

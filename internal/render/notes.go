@@ -19,7 +19,7 @@ func (p *page) findings(list []check.Finding) {
 		if !ok {
 			w = f.Severity
 		}
-		s := w + ": " + sentence(f.Says)
+		s := w + ": " + sentence(strings.TrimPrefix(f.Says, "not determined: "))
 		if f.Pointer != "" {
 			s += " At " + f.Pointer + "."
 		}
@@ -28,7 +28,7 @@ func (p *page) findings(list []check.Finding) {
 			p.decided(2, f.Condition)
 		}
 		if f.Source != "" {
-			p.line(2, "Source: "+f.Source+".")
+			p.line(2, "Source: "+sentence(f.Source))
 		}
 	}
 }
@@ -53,11 +53,11 @@ func (p *page) presumed(m *check.Market, told presumedBefore) {
 	}
 	p.heading("Presumed by practice, not stated by anyone", '-')
 	for _, e := range earlier {
-		p.item(2, fmt.Sprintf("%d %s as told under %s.", len(e.names), plural(len(e.names), "presumption", "presumptions"), e.key[0]))
+		p.item(2, fmt.Sprintf("%d %s as told for %s.", len(e.names), plural(len(e.names), "presumption", "presumptions"), e.key[0]))
 	}
 	for _, b := range presumptions(fresh) {
-		p.item(2, strings.Join(b.names, ", ")+" "+b.key[1]+": "+b.key[3])
-		p.line(4, "("+sentence(b.key[2])+" Rule "+b.key[0]+")")
+		p.item(2, strings.Join(b.names, ", ")+" taken as "+b.key[1]+": "+b.key[3])
+		p.line(4, "("+sentence(b.key[2])+" Rule "+b.key[0]+".)")
 	}
 }
 

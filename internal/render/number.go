@@ -30,21 +30,22 @@ func parse(s string) (number, bool) {
 	return shorten(d, figures), true
 }
 
-// shorten rounds to significant digits. A digit is added for as long as the last one is zero, so that 0.49996 never reads
-// 0.5 and stays on its side of every edge that a law writes with few digits.
+// shorten rounds to significant digits, but never up to a number of fewer digits: 0.49996 reads 0.4999 and not 0.5, so
+// that a value stays on its side of every edge a law writes with few digits.
 func shorten(d decimal.Decimal, digits int) number {
 	all := significant(d)
 	if all <= fullMost {
 		return number{d, d, true}
 	}
 	digits = max(digits, integerDigits(d)+1)
-	for ; digits < all; digits++ {
-		short := d.Round(places(d, digits))
-		if significant(short) >= digits {
-			return number{d, short, false}
-		}
+	if digits >= all {
+		return number{d, d, all < shownMax}
 	}
-	return number{d, d, all < shownMax}
+	short := d.Round(places(d, digits))
+	if significant(short) < digits && short.Abs().Cmp(d.Abs()) > 0 {
+		short = d.RoundDown(places(d, digits))
+	}
+	return number{d, short, false}
 }
 
 // significant counts the digits between the first and the last that are not zero.
@@ -105,7 +106,27 @@ func amount(value, unit string) string {
 		d = d.Shift(-3)
 		value = d.String()
 	}
-	return strings.TrimSpace(short(value) + " " + unit)
+	return withUnit(short(value), unit)
+}
+
+func withUnit(value, unit string) string {
+	if unit == "" {
+		return value
+	}
+	return value + bond + unit
+}
+
+// span shortens "2 g to 3 g" to "2 to 3 g".
+func span(s string) string {
+	from, to, ok := strings.Cut(s, " to ")
+	if !ok {
+		return s
+	}
+	number, unit, ok := strings.Cut(from, " ")
+	if !ok || !strings.HasSuffix(to, " "+unit) {
+		return s
+	}
+	return number + " to " + to
 }
 
 // between is an interval: one number where both ends read alike.
@@ -114,12 +135,15 @@ func between(low, high, unit string) string {
 	switch {
 	case a == b:
 		return a
-	case unit != "" && strings.HasSuffix(a, " "+unit) && strings.HasSuffix(b, " "+unit):
-		a = strings.TrimSuffix(a, " "+unit)
+	case unit != "" && strings.HasSuffix(a, bond+unit) && strings.HasSuffix(b, bond+unit):
+		a = strings.TrimSuffix(a, bond+unit)
 	case low == "0":
 		a = "0"
 	}
-	return a + " to " + b
+	if strings.HasPrefix(a, "≈") {
+		b = strings.TrimPrefix(b, "≈")
+	}
+	return a + bond + "to" + bond + b
 }
 
 // exactly is what lies behind a printed value: the number, or the typical one and its range.

@@ -2,6 +2,12 @@ package render
 
 import "strings"
 
+// bond is a space at which no line breaks.
+const bond = "\u00a0"
+
+// bound keeps a number and its unit on one line.
+func bound(s string) string { return strings.ReplaceAll(s, " ", bond) }
+
 // A page collects lines. Everything that reaches it is cleaned and wrapped.
 type page struct{ strings.Builder }
 
@@ -26,15 +32,19 @@ func (p *page) items(list []string) {
 // hang writes a paragraph behind a label; the lines after the first stand at rest columns.
 func (p *page) hang(indent, rest int, label, s string) {
 	start := indent + columns(label)
+	if label != "" && start < rest {
+		label, start = label+strings.Repeat(" ", rest-start), rest
+	}
 	lines := wrap(s, Width-max(start, rest))
-	p.put(strings.Repeat(" ", indent) + label + strings.Repeat(" ", max(rest-start, 0)) + lines[0])
+	p.put(strings.Repeat(" ", indent) + label + lines[0])
 	for _, l := range lines[1:] {
 		p.put(strings.Repeat(" ", rest) + l)
 	}
 }
 
+// put writes a line; spaces that held words together become plain.
 func (p *page) put(line string) {
-	p.WriteString(strings.TrimRight(line, " "))
+	p.WriteString(strings.TrimRight(strings.ReplaceAll(line, bond, " "), " "))
 	p.WriteByte('\n')
 }
 

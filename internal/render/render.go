@@ -37,7 +37,7 @@ func Text(w io.Writer, r *check.Report, o Options) error {
 func (p *page) front(r *check.Report) {
 	p.heading(r.Recipe.Name, '=')
 	p.line(0, fmt.Sprintf("Recipe %s (%s), %s of finished food.", r.Recipe.ID, digest(r.Recipe.Digest), spaced(r.Composition.Mass)))
-	p.line(0, fmt.Sprintf("Labelling date %s; %s.", r.Date, transition(r.Transition)))
+	p.line(0, fmt.Sprintf("Labelling date %s (of two editions in force, the %s one).", r.Date, r.Transition))
 	p.line(0, fmt.Sprintf("Rule set %s (%s).", r.Rules.Version, digest(r.Rules.Digest)))
 	t := table{gap: 2}
 	for i := range r.Jurisdictions {
@@ -50,13 +50,6 @@ func (p *page) front(r *check.Report) {
 		p.heading("About the recipe", '-')
 		p.findings(r.Findings)
 	}
-}
-
-func transition(t string) string {
-	if t == "newest" {
-		return "while two editions hold, the newest counts"
-	}
-	return "while two editions hold, the one already required counts"
 }
 
 // digest is the beginning of a digest, enough to tell two apart.

@@ -28,33 +28,53 @@ func (p *page) table(indent int, t table) {
 	}
 }
 
-// fit gives every column what it needs, and takes from the widest until all fit.
+// fit gives every column what it needs, and takes from the widest until all fit: first from columns that can give without
+// breaking a word.
 func (t *table) fit(most int) []int {
-	var widths []int
-	for _, row := range t.rows {
-		for i, c := range row {
-			if i == len(widths) {
-				widths = append(widths, 1)
-			}
-			if c.text != rule {
-				widths[i] = max(widths[i], c.indent+columns(clean(c.text)))
-			}
-		}
-	}
+	widths, least := t.wanted()
 	sum := t.gap * (len(widths) - 1)
 	for _, w := range widths {
 		sum += w
 	}
 	for ; sum > most; sum-- {
-		widest := 0
-		for i, w := range widths {
-			if w > widths[widest] {
-				widest = i
-			}
+		i := widest(widths, least)
+		if i < 0 {
+			i = widest(widths, make([]int, len(widths)))
 		}
-		widths[widest]--
+		widths[i]--
 	}
 	return widths
+}
+
+// wanted is the width of every column on one line, and with a line for every word.
+func (t *table) wanted() (widths, least []int) {
+	for _, row := range t.rows {
+		for i, c := range row {
+			if i == len(widths) {
+				widths, least = append(widths, 1), append(least, 1)
+			}
+			if c.text == rule {
+				continue
+			}
+			text := clean(c.text)
+			widths[i] = max(widths[i], c.indent+columns(text))
+			for _, word := range strings.Split(text, " ") {
+				least[i] = max(least[i], c.indent+columns(word))
+			}
+		}
+	}
+	return widths, least
+}
+
+// widest is the widest column above its least width, -1 where there is none.
+func widest(widths, least []int) int {
+	best := -1
+	for i, w := range widths {
+		if w > least[i] && (best < 0 || w > widths[best]) {
+			best = i
+		}
+	}
+	return best
 }
 
 func (p *page) row(indent, gap int, row []cell, widths []int) {

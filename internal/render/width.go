@@ -88,13 +88,19 @@ func wrap(s string, most int) []string {
 	return lines
 }
 
-// prefix is the longest beginning of a word that fits, at least one character.
+// prefix is the longest beginning of a word that fits, at least one character; it ends behind a bond where there is one.
 func prefix(word string, most int) string {
-	n := 0
+	n, end := 0, 0
 	for i, r := range word {
 		c := runeColumns(r)
 		if n += c; n > most && i > 0 && c > 0 {
-			return word[:i]
+			if end == 0 {
+				end = i
+			}
+			return word[:end]
+		}
+		if string(r) == bond {
+			end = i + len(bond)
 		}
 	}
 	return word

@@ -1,0 +1,66 @@
+package render
+
+import (
+	"slices"
+	"strings"
+
+	"gramlaw/internal/check"
+)
+
+// needed writes what would have to be known, the components of one ingredient together: "yolk (FASAT, FATRN), salt (ID)".
+func needed(list []string) string {
+	var by bundles
+	for _, s := range list {
+		name, what := s, ""
+		if i := strings.LastIndex(s, " ("); i > 0 && strings.HasSuffix(s, ")") {
+			name, what = s[:i], s[i+2:len(s)-1]
+		}
+		by.add(what, name)
+	}
+	out := make([]string, len(by))
+	for i, b := range by {
+		out[i] = b.key[0]
+		if what := slices.Compact(b.names); what[0] != "" {
+			out[i] += " (" + strings.Join(what, ", ") + ")"
+		}
+	}
+	return strings.Join(out, ", ")
+}
+
+// untold is what a claim needs and neither its condition nor the declaration has told.
+func untold(m *check.Market, c *check.Claim) []string {
+	told := map[string]bool{}
+	for _, l := range m.Declaration.Lines {
+		if l.Presence != "optional" {
+			tell(told, l.Needs)
+		}
+	}
+	if c.Condition != nil {
+		walk(c.Condition, func(c *check.Condition) { tell(told, c.Needs) })
+	}
+	var out []string
+	for _, n := range c.Needs {
+		if !told[n] {
+			told[n] = true
+			out = append(out, n)
+		}
+	}
+	return out
+}
+
+func tell(told map[string]bool, list []string) {
+	for _, n := range list {
+		told[n] = true
+	}
+}
+
+// walk visits a condition and all its parts.
+func walk(c *check.Condition, visit func(*check.Condition)) {
+	visit(c)
+	for i := range parts(c) {
+		walk(&parts(c)[i], visit)
+	}
+	if c.Not != nil {
+		walk(c.Not, visit)
+	}
+}
