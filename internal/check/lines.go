@@ -13,6 +13,7 @@ import (
 type column struct {
 	Basis
 	grams quantity.Ratio
+	share quantity.Ratio // of the product's batch
 	known bool
 }
 
@@ -50,6 +51,7 @@ func (m *market) openColumns(out *Market) {
 		}
 		c := column{Basis: Basis{ID: per, Amount: m.amountOf(p)}, grams: g, known: ok}
 		if ok {
+			c.share = g.Quo(m.product.Mass())
 			c.Grams = exactText(g) + " g"
 		} else {
 			out.Findings = append(out.Findings, Finding{Kind: "serving", Severity: "open", Code: "basis-unknown", Says: "the mass of the basis “" + per + "” is not known: " + missingBasis(per)})
@@ -119,10 +121,8 @@ func (v view) standsAlone(l *lineState) bool {
 	return l.needed || l.line.Presence == "mandatory" || l.line.MandatoryIf != nil && v.truth(l.line.MandatoryIf) == quantity.Yes
 }
 
-// on brings a quantity to a column's basis: per basis, in base units.
-func (c column) on(q quantity.Linear, mass quantity.Ratio) quantity.Linear {
-	return q.Mul(c.grams.Quo(mass))
-}
+// on brings a quantity of the product to a column's basis, in base units.
+func (c column) on(q quantity.Linear) quantity.Linear { return q.Mul(c.share) }
 
 // possible lists what a quantity may print as on the first column: one print when determined.
 func (v view) possible(q string) []declare.Printed { return v.on(v.subject, q).printed() }
@@ -137,7 +137,7 @@ func (v view) on(p *product, q string) outcomes {
 	if !ok || !rounded || len(r.Body.Bands) == 0 {
 		return nil
 	}
-	return v.outcomes(r.Body, v.columns[0].on(l, p.Mass()), v.unit(q))
+	return v.outcomes(r.Body, l.Mul(v.columns[0].grams.Quo(p.Mass())), v.unit(q))
 }
 
 // unit is the unit in which a quantity is printed.
@@ -223,7 +223,7 @@ func (v view) reportLine(l *lineState) (Line, bool) {
 			out.Status = "undetermined"
 			continue
 		}
-		value, settled := v.value(l, c, c.on(q, v.subject.Mass()))
+		value, settled := v.value(l, c, c.on(q))
 		if !settled {
 			out.Status = "undetermined"
 		}

@@ -46,10 +46,13 @@ func (p *product) Quantity(name string) (quantity.Linear, bool) {
 	if !ok {
 		return quantity.Linear{}, false
 	}
-	var sum quantity.Linear
-	for i := range parts {
-		sum = sum.Add(parts[i].amount)
-	}
+	sum := quantity.Sum(func(yield func(quantity.Linear) bool) {
+		for i := range parts {
+			if !yield(parts[i].amount) {
+				return
+			}
+		}
+	})
 	p.totals[name] = sum
 	return sum, true
 }
@@ -177,10 +180,13 @@ func (p *product) From(name, origin string) (quantity.Linear, bool) {
 	if !ok {
 		return quantity.Linear{}, false
 	}
-	var sum quantity.Linear
-	for i, l := range p.batch.Leaves {
-		sum = sum.Add(p.originShare(parts[i].amount, l, origin))
-	}
+	sum := quantity.Sum(func(yield func(quantity.Linear) bool) {
+		for i, l := range p.batch.Leaves {
+			if !yield(p.originShare(parts[i].amount, l, origin)) {
+				return
+			}
+		}
+	})
 	p.from[key] = sum
 	return sum, true
 }

@@ -13,9 +13,14 @@ func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	u, unit := v.unit(l.line.Quantity), l.line.Unit
 	r, ok := v.law.RoundingOf(l.line.Quantity)
 	inUnit := func(r quantity.Ratio) quantity.Ratio { return r.Mul(quantity.Scaled(1, -u.Scale().Exponent())) }
-	out := Value{Basis: c.ID, Low: exactText(quantity.Max(inUnit(x.Low()), quantity.Ratio{})), High: exactText(inUnit(x.High())), Unit: u.String(), Alternatives: []string{}}
+	out := Value{Basis: c.ID, Unit: u.String(), Alternatives: []string{}}
 	if mid, known := x.Central(); known {
 		out.setExact(inUnit(mid))
+	}
+	if x.Determined() && x.Known.Sign() >= 0 {
+		out.Low, out.High = *out.Exact, *out.Exact
+	} else {
+		out.Low, out.High = exactText(quantity.Max(inUnit(x.Low()), quantity.Ratio{})), exactText(inUnit(x.High()))
 	}
 	if !ok {
 		return out, false
@@ -94,7 +99,7 @@ func (v view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook
 		if !ok {
 			continue
 		}
-		o := v.outcomes(r, c.on(q, v.subject.Mass()), u)
+		o := v.outcomes(r, c.on(q), u)
 		if !o.determined() {
 			continue
 		}
@@ -188,7 +193,7 @@ func (v view) contributions(q string, c column, u quantity.Unit) []Contribution 
 		if !ok {
 			return nil
 		}
-		x := c.on(amount, v.subject.Mass()).Mul(quantity.Scaled(1, -u.Scale().Exponent()))
+		x := c.on(amount).Mul(quantity.Scaled(1, -u.Scale().Exponent()))
 		one := Contribution{Ingredient: strings.TrimSpace(l.Path), Low: exactText(x.Low()), High: exactText(x.High())}
 		if mid, known := x.Central(); known {
 			one.Value = text(mid)

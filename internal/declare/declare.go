@@ -132,7 +132,8 @@ func Text(p Printed, unit string, f rulebook.Number) string {
 	if f.Decimal != "" && f.Decimal != "." {
 		n = strings.Replace(n, ".", f.Decimal, 1)
 	}
-	return strings.TrimSpace(strings.NewReplacer("{n}", n, "{u}", unit).Replace(pattern))
+	text := strings.Replace(pattern, "{n}", n, 1)
+	return strings.TrimSpace(strings.Replace(text, "{u}", unit, 1))
 }
 
 func digits(p Printed, trailing bool) string {

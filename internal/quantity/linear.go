@@ -1,6 +1,7 @@
 package quantity
 
 import (
+	"iter"
 	"slices"
 
 	"github.com/shopspring/decimal"
@@ -71,6 +72,38 @@ func mergeTerms(a, b []term) []term {
 		}
 	}
 	return append(append(out, a...), b...)
+}
+
+// Sum adds many forms at once; its cost is linear in their terms, but for one sort.
+func Sum(forms iter.Seq[Linear]) Linear {
+	var s Linear
+	sorted, last := true, 0
+	for l := range forms {
+		s.Known = s.Known.Add(l.Known)
+		for _, t := range l.terms {
+			sorted = sorted && t.v.Index > last
+			last = t.v.Index
+			s.terms = append(s.terms, t)
+		}
+	}
+	if !sorted {
+		s.terms = united(s.terms)
+	}
+	return s
+}
+
+// united orders terms and adds up those of one variable.
+func united(terms []term) []term {
+	slices.SortStableFunc(terms, func(a, b term) int { return a.v.Index - b.v.Index })
+	out := terms[:0]
+	for _, t := range terms {
+		if n := len(out); n > 0 && out[n-1].v.Index == t.v.Index {
+			out[n-1].c = out[n-1].c.Add(t.c)
+			continue
+		}
+		out = append(out, t)
+	}
+	return slices.DeleteFunc(out, func(t term) bool { return t.c.IsZero() })
 }
 
 // Sub is l - m.

@@ -1,6 +1,7 @@
 package quantity
 
 import (
+	"slices"
 	"testing"
 
 	"github.com/shopspring/decimal"
@@ -113,5 +114,14 @@ func TestTruth(t *testing.T) {
 		if c.got != c.want {
 			t.Errorf("%s is %s, want %s", c.name, c.got, c.want)
 		}
+	}
+}
+
+func TestSumUnitesTheSameVariable(t *testing.T) {
+	v := &Variable{Index: 1, High: FromInt(4)}
+	w := &Variable{Index: 2, High: FromInt(1)}
+	s := Sum(slices.Values([]Linear{Of(w), Of(v), Exactly(FromInt(3)), Of(w).Mul(FromInt(-1)), Of(v)}))
+	if s.High().Cmp(FromInt(11)) != 0 || len(s.Variables()) != 1 {
+		t.Errorf("sums to at most %s over %d variables", s.High().Brief(1), len(s.Variables()))
 	}
 }

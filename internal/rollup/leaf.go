@@ -11,7 +11,6 @@ import (
 // leaf opens one ingredient's source.
 func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, kept []*recipe.Retention) (*Leaf, *Fault) {
 	l := &Leaf{Path: path, Pointer: in.Pointer, Name: in.Name, Ingredient: in, Mass: mass, batch: b, retentions: kept}
-	l.stated = make([]stated, food.Count+1)
 	switch {
 	case in.Food != "":
 		f, err := food.Find(in.Food)
@@ -22,8 +21,9 @@ func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, ke
 		if l.Name == "" {
 			l.Name = f.Name()
 		}
+		l.entries = make([]stated, 0, f.Values()+len(in.With))
 		f.Each(func(id food.ID, v food.Value) bool {
-			l.set(id, exactly(quantity.Scaled(v.Mantissa, int32(v.Exponent)+exponent(id))))
+			l.set(id, stated{value: quantity.Scaled(v.Mantissa, int32(v.Exponent)+exponent(id))})
 			return true
 		})
 	case in.Label != nil:
@@ -60,10 +60,13 @@ func tag(id food.ID) string {
 	return c.Tag
 }
 
-func exactly(r quantity.Ratio) stated { return stated{low: r, high: r, central: r, typical: true} }
-
 func (l *Leaf) set(id food.ID, s stated) {
-	l.stated[id] = s
+	if l.known.Has(id) {
+		l.entries[l.place[id]-1] = s
+		return
+	}
+	l.entries = append(l.entries, s)
+	l.place[id] = uint16(len(l.entries))
 	l.known.Add(id)
 }
 
@@ -100,7 +103,10 @@ func (l *Leaf) setValues(values map[string]recipe.Value, factor decimal.Decimal)
 
 func scaled(v recipe.Value, factor quantity.Ratio) stated {
 	base := func(d decimal.Decimal) quantity.Ratio { return factor.Times(d.Mul(v.Unit.Scale())) }
-	return stated{low: base(v.Low), high: base(v.High), central: base(v.Central), typical: v.Typical}
+	if v.Low.Equal(v.High) {
+		return stated{value: base(v.Low)}
+	}
+	return stated{value: base(v.Central), ends: &ends{base(v.Low), base(v.High), v.Typical}}
 }
 
 // Knows tells whether somebody stated the component for this leaf.
@@ -130,7 +136,7 @@ func (l *Leaf) component(id food.ID) Amount {
 		return a
 	}
 	if l.known.Has(id) {
-		s := l.stated[id]
+		s := l.entries[l.place[id]-1]
 		return Amount{Linear: l.kept(id, l.scale(id, s)), How: Stated}
 	}
 	if l.byNature(id) {
@@ -150,10 +156,10 @@ func (l *Leaf) component(id food.ID) Amount {
 
 // scale brings a value per 100 g to the leaf's share of the batch.
 func (l *Leaf) scale(id food.ID, s stated) quantity.Linear {
-	if s.low.Cmp(s.high) == 0 {
-		return quantity.Exactly(l.share(s.low))
+	if s.ends == nil {
+		return quantity.Exactly(l.share(s.value))
 	}
-	return quantity.Of(l.Variable(tag(id), l.share(s.low), l.share(s.high), l.share(s.central), s.typical))
+	return quantity.Of(l.Variable(tag(id), l.share(s.ends.low), l.share(s.ends.high), l.share(s.value), s.ends.typical))
 }
 
 func (l *Leaf) share(per100 quantity.Ratio) quantity.Ratio {

@@ -39,7 +39,7 @@ func (b *Batch) proximates(l *Leaf) {
 	for _, tag := range proximates {
 		c, _ := food.Lookup(tag)
 		if l.known.Has(c.ID) {
-			sum = sum.Add(l.stated[c.ID].low)
+			sum = sum.Add(l.entries[l.place[c.ID]-1].low())
 		}
 	}
 	if sum.Cmp(quantity.Scaled(1005, -1)) > 0 {

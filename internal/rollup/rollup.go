@@ -79,7 +79,8 @@ type Leaf struct {
 
 	batch      *Batch
 	pure       food.ID // set where the leaf is one component alone
-	stated     []stated
+	entries    []stated
+	place      [food.Count + 1]uint16 // of a component in entries, counted from one
 	known      food.Set
 	cache      []*Amount
 	acids      *acids
@@ -88,10 +89,23 @@ type Leaf struct {
 	weights    []weight
 }
 
-// stated is a component's value in base units (g; kcal, kJ or IU as they are) per 100 g.
+// stated is a component's value in base units (g; kcal, kJ or IU as they are) per 100 g; ends is nil where it is exact.
 type stated struct {
-	low, high, central quantity.Ratio
-	typical            bool
+	value quantity.Ratio
+	ends  *ends
+}
+
+// ends of a value that is stated as a range; the value is then its typical one, if it has one.
+type ends struct {
+	low, high quantity.Ratio
+	typical   bool
+}
+
+func (s stated) low() quantity.Ratio {
+	if s.ends != nil {
+		return s.ends.low
+	}
+	return s.value
 }
 
 // How tells where an amount comes from.
@@ -130,11 +144,13 @@ func (b *Batch) Owner(v *quantity.Variable) (Owner, bool) {
 
 // Total is the batch's content of a component, in base units.
 func (b *Batch) Total(id food.ID) quantity.Linear {
-	var sum quantity.Linear
-	for _, l := range b.Leaves {
-		sum = sum.Add(l.Component(id).Linear)
-	}
-	return sum
+	return quantity.Sum(func(yield func(quantity.Linear) bool) {
+		for _, l := range b.Leaves {
+			if !yield(l.Component(id).Linear) {
+				return
+			}
+		}
+	})
 }
 
 // Coverage is the share of the ingoing mass whose content of a component somebody stated or practice presumes.
