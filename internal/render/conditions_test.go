@@ -1,0 +1,53 @@
+package render
+
+import (
+	"strings"
+	"testing"
+
+	"gramlaw/internal/check"
+)
+
+func TestConditions(t *testing.T) {
+	yes, no := new(bool), new(bool)
+	*yes = true
+	text := func(s string) *string { return &s }
+	leaf := func(says string, holds *bool) check.Condition { return check.Condition{Says: says, Holds: holds} }
+	fat := func(c check.Condition) check.Condition {
+		c.Says, c.Relation, c.Threshold, c.Unit = "fat at most 3 g", "<=", "3", "g"
+		return c
+	}
+	for _, c := range []struct {
+		name string
+		c    check.Condition
+		want string
+	}{
+		{"groups of one vanish", check.Condition{All: []check.Condition{{All: []check.Condition{leaf("a", yes)}, Holds: yes}}, Holds: yes}, "yes   a\n"},
+		{"any", check.Condition{Any: []check.Condition{leaf("a", yes), leaf("b", no)}, Holds: yes}, "yes   one of these at least:\n      yes   a\n      NO    b\n"},
+		{"count", check.Condition{AtLeast: 2, Of: []check.Condition{leaf("a", yes), leaf("b", nil)}}, "open  2 of these at least:\n      yes   a\n      open  b\n"},
+		{"not", check.Condition{Not: &check.Condition{Says: "a", Holds: no}, Holds: yes}, "yes   does not hold: a\n"},
+		{"not a group", check.Condition{Not: &check.Condition{All: []check.Condition{leaf("a", yes), leaf("b", no)}, Holds: no}, Holds: yes},
+			"yes   not this:\n      yes   a\n      NO    b\n"},
+		{"a group with words of the law", check.Condition{Says: "as sold:", All: []check.Condition{leaf("a", yes), leaf("b", yes)}, Holds: yes},
+			"yes   as sold: all of these:\n      yes   a\n      yes   b\n"},
+		{"inside", fat(check.Condition{Exact: text("2.5"), Headroom: "0.5", Holds: yes}), "yes   fat at most 3 g\n      2.5 g ≤ 3 g; inside by 0.5 g\n"},
+		{"at the threshold", fat(check.Condition{Exact: text("3"), Headroom: "0", Holds: yes}), "yes   fat at most 3 g\n      3 g ≤ 3 g; exactly at the threshold\n"},
+		{"just outside", fat(check.Condition{Exact: text("3.0000012"), Headroom: "-0.0000012", Holds: no}),
+			"NO    fat at most 3 g\n      ≈3.000001 g is not ≤ 3 g; outside by 0.0000012 g\n"},
+		{"a decided range", fat(check.Condition{Low: "3.5", High: "4", Holds: no}), "NO    fat at most 3 g\n      3.5 to 4 g is not ≤ 3 g; outside by 0.5 g or more\n"},
+		{"an open range", fat(check.Condition{Low: "2.5", High: "4", Needs: []string{"oats (FAT)", "oats (FASAT)", "salt"}}),
+			"open  fat at most 3 g\n      2.5 to 4 g; asked for is ≤ 3 g\n      would be settled by: oats (FAT, FASAT), salt\n"},
+		{"an open range with a typical value", fat(check.Condition{Low: "2.5", High: "4", Exact: text("2.9"), Headroom: "0.1"}),
+			"open  fat at most 3 g\n      typically 2.9 g, possible 2.5 to 4 g; asked for is ≤ 3 g; inside by 0.1 g\n"},
+		{"no upper end", fat(check.Condition{Low: "2.5", High: "0"}), "open  fat at most 3 g\n      2.5 g or more; asked for is ≤ 3 g\n"},
+		{"nothing known", fat(check.Condition{Low: "0", High: "0"}), "open  fat at most 3 g\n      the value is not determined\n"},
+		{"no value", fat(check.Condition{Low: "0", High: "0", Holds: no}), "NO    fat at most 3 g\n      no single value can be told\n"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			p := &page{}
+			p.decided(0, &c.c)
+			if got := p.String(); got != c.want {
+				t.Errorf("reads\n%s\nwant\n%s", got, strings.TrimSpace(c.want))
+			}
+		})
+	}
+}
