@@ -67,6 +67,7 @@ func (p *page) basis(d *check.Table, b check.Basis, o Options, marks map[string]
 		printed, percent, exact := cellsOf(l, b.ID, o)
 		t.row(cell{text: mark}, cell{text: term(l, o), indent: 2 * l.Level}, cell{text: printed, right: true}, cell{text: percent, right: true}, cell{text: exact})
 	}
+	t.dropEmpty(3)
 	if len(t.rows) > 2 {
 		p.blank()
 		p.line(3, basisName(b))

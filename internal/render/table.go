@@ -1,6 +1,9 @@
 package render
 
-import "strings"
+import (
+	"slices"
+	"strings"
+)
 
 // A cell is a text in a table, wrapped where its column is too narrow.
 type cell struct {
@@ -16,6 +19,18 @@ type table struct {
 }
 
 func (t *table) row(cells ...cell) { t.rows = append(t.rows, cells) }
+
+// dropEmpty takes a column out that holds nothing below its head and its rule.
+func (t *table) dropEmpty(column int) {
+	for _, row := range t.rows[2:] {
+		if row[column].text != "" {
+			return
+		}
+	}
+	for i := range t.rows {
+		t.rows[i] = slices.Delete(t.rows[i], column, column+1)
+	}
+}
 
 // rule is a row that draws a line under every column.
 const rule = "\x00rule"
