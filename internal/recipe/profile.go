@@ -148,7 +148,13 @@ func (d *decoder) sum(p *Profile, at int32) {
 	whole := central.GreaterThanOrEqual(leastWhole) && central.LessThanOrEqual(mostWhole)
 	named := values != 0 && d.path(values, unidentified) != 0
 	p.Complete = named || whole && p.Basis.unit() == quantity.PerCent
+	if rest := hundredPercent.Sub(central); p.Complete && !named && rest.IsPositive() {
+		// What is missing to 100 has no name; only "complete": true says that there is nothing more.
+		p.Unidentified = Value{Low: rest, High: rest, Central: rest, Typical: true, Unit: quantity.PerCent}
+	}
 }
+
+var hundredPercent = decimal.New(100, 0)
 
 // middle is the typical value, else the low end.
 func (v Value) middle() decimal.Decimal {
