@@ -1,29 +1,40 @@
 package render
 
-import "slices"
+import (
+	"slices"
+	"strings"
+)
 
 // A bundle is names that share something.
 type bundle struct{ key, names []string }
 
 // bundles groups names by what they share, in the order of appearance.
-type bundles []bundle
-
-func (b *bundles) add(name string, key ...string) {
-	for i := range *b {
-		if slices.Equal((*b)[i].key, key) {
-			(*b)[i].names = append((*b)[i].names, name)
-			return
-		}
-	}
-	*b = append(*b, bundle{key, []string{name}})
+type bundles struct {
+	list []bundle
+	at   map[string]int
 }
 
-// addOnce is add for names that may repeat, such as energy in two units.
-func (b *bundles) addOnce(name string, key ...string) {
-	for _, x := range *b {
-		if slices.Equal(x.key, key) && slices.Contains(x.names, name) {
-			return
+func (b *bundles) add(name string, key ...string) {
+	joined := strings.Join(key, "\x00")
+	i, ok := b.at[joined]
+	if !ok {
+		if b.at == nil {
+			b.at = map[string]int{}
+		}
+		i = len(b.list)
+		b.at[joined] = i
+		b.list = append(b.list, bundle{key: key})
+	}
+	b.list[i].names = append(b.list[i].names, name)
+}
+
+// unique leaves out names that repeat, such as energy in two units.
+func unique(names []string) []string {
+	var out []string
+	for _, n := range names {
+		if !slices.Contains(out, n) {
+			out = append(out, n)
 		}
 	}
-	b.add(name, key...)
+	return out
 }

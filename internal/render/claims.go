@@ -34,11 +34,15 @@ func (p *page) claims(m *check.Market, o Options) {
 	if len(m.Claims) > 0 {
 		p.heading("Claims", '-')
 	}
+	others, told := shared(m.Claims)
 	for i := range m.Claims {
+		if told[i] {
+			continue
+		}
 		if i > 0 {
 			p.blank()
 		}
-		p.claim(m, &m.Claims[i], o)
+		p.claim(m, &m.Claims[i], others[i], o)
 	}
 	if len(m.AlsoPermitted) == 0 {
 		return
@@ -58,10 +62,13 @@ func (p *page) claims(m *check.Market, o Options) {
 // last is the shared name of a claim, the end of its rule's identifier.
 func last(id string) string { return id[strings.LastIndexByte(id, '/')+1:] }
 
-func (p *page) claim(m *check.Market, c *check.Claim, o Options) {
+func (p *page) claim(m *check.Market, c *check.Claim, others []string, o Options) {
 	title := "“" + c.Asked + "”"
 	if c.Name != "" && c.Name != c.Asked {
 		title = c.Name + " [" + c.Asked + "]"
+	}
+	for _, asked := range others {
+		title += ", “" + asked + "”"
 	}
 	p.line(0, verdict(c)+": "+title)
 	if c.Why != "" {
@@ -80,6 +87,27 @@ func (p *page) claim(m *check.Market, c *check.Claim, o Options) {
 	if c.Source != "" {
 		p.line(2, "Source ("+grade(c.Force, c.Evidence)+"): "+sentence(c.Source))
 	}
+}
+
+// shared finds claims that got the same answer for the same reason, where the answer is only that. The first stands for the
+// others, whose indices are told.
+func shared(claims []check.Claim) (others map[int][]string, told map[int]bool) {
+	type answer struct{ verdict, why, source string }
+	first := map[answer]int{}
+	others, told = map[int][]string{}, map[int]bool{}
+	for i := range claims {
+		c := &claims[i]
+		if c.Claim != "" || c.Condition != nil || c.Why == "" {
+			continue
+		}
+		a := answer{c.Verdict, c.Why, c.Source}
+		if f, ok := first[a]; ok {
+			others[f], told[i] = append(others[f], c.Asked), true
+			continue
+		}
+		first[a] = i
+	}
+	return others, told
 }
 
 // sentence begins with a capital and ends with a point.

@@ -37,10 +37,24 @@ func basisName(b check.Basis) string {
 			s = "per serving: " + b.Amount
 		}
 	}
-	if b.Grams != "" && !strings.Contains(b.Amount, b.Grams) {
+	switch {
+	case b.Grams == "" || strings.Contains(b.Amount, b.Grams):
+	case strings.Contains(s, "("):
 		s += ", " + spaced(b.Grams)
+	default:
+		s += " (" + spaced(b.Grams) + ")"
 	}
 	return s
+}
+
+// openEnd shortens a range, and leaves its upper end out where next to nothing is known: a label's milligrams that may be
+// many grams help nobody.
+func openEnd(text string, v *check.Value) string {
+	from, _, ranged := strings.Cut(text, " to ")
+	if ranged && !strings.HasSuffix(amount(v.High, v.Unit), bond+v.Unit) {
+		return from + " or more"
+	}
+	return span(text)
 }
 
 // in picks a text by language.
@@ -95,9 +109,9 @@ func cellsOf(l *check.Line, basis string, o Options) (printed, percent, exact st
 			continue
 		}
 		if r := v.PercentReference; r != nil && r.Text != "" {
-			percent = bound(span(r.Text)) + " " + bound("of "+r.Reference)
+			percent = bound(openEnd(r.Text, v)) + " " + bound("of "+r.Reference)
 		}
-		return bound(span(in(o.Language, v.Text, v.Texts))), percent, exactly(v)
+		return bound(openEnd(in(o.Language, v.Text, v.Texts), v)), percent, exactly(v)
 	}
 	return "", "", "not known"
 }

@@ -18,18 +18,19 @@ func (p *page) open(lines []check.Line, o Options) {
 		case l.Presence == "optional":
 			optional = append(optional, term(l, o))
 		default:
-			needs.addOnce(term(l, o), l.Needs...)
+			needs.add(term(l, o), l.Needs...)
 		}
 	}
-	if len(needs) > 0 {
+	if len(needs.list) > 0 {
 		p.heading("Not determined", '-')
 	}
-	for _, b := range needs {
+	for _, b := range needs.list {
+		names := strings.Join(unique(b.names), ", ")
 		if len(b.key) == 0 {
-			p.item(2, strings.Join(b.names, ", ")+": a basis, a rule or a reference value is not known.")
+			p.item(2, names+": a basis, a rule or a reference value is not known.")
 			continue
 		}
-		p.item(2, strings.Join(b.names, ", ")+": would be settled by data on "+needed(b.key)+".")
+		p.item(2, names+": would be settled by data on "+needed(b.key)+".")
 	}
 	if len(optional) > 0 {
 		p.blank()
@@ -49,10 +50,10 @@ func (p *page) omissions(lines []check.Line, o Options) {
 			notes = append(notes, term(l, o)+": "+l.Note)
 		}
 	}
-	if len(out) > 0 {
+	if len(out.list) > 0 {
 		p.heading("What may be left out", '-')
 	}
-	for _, b := range out {
+	for _, b := range out.list {
 		s := strings.Join(b.names, ", ")
 		if b.key[0] != "" {
 			s += ", where the label states “" + strings.TrimSuffix(b.key[0], ".") + "”"
@@ -81,17 +82,17 @@ func (p *page) alternatives(d *check.Table, o Options) {
 			}
 		}
 	}
-	for _, b := range by {
+	for _, b := range by.list {
 		bases := ""
 		if len(b.names) < len(d.Bases) {
 			bases = " " + strings.Join(b.names, " and ")
 		}
 		joined.add(b.key[0], bases, b.key[1])
 	}
-	if len(joined) > 0 {
+	if len(joined.list) > 0 {
 		p.heading("The law also allows", '-')
 	}
-	for _, b := range joined {
+	for _, b := range joined.list {
 		p.item(2, strings.Join(b.names, ", ")+b.key[0]+": "+b.key[1])
 	}
 }
@@ -110,13 +111,13 @@ func (p *page) grounds(lines []check.Line, o Options) {
 			grades.add(term(l, o), grade(l.Values[0].Force, l.Values[0].Evidence))
 		}
 	}
-	if len(grades) == 0 {
+	if len(grades.list) == 0 {
 		return
 	}
-	slices.SortStableFunc(grades, func(a, b bundle) int { return len(b.names) - len(a.names) })
-	s := "Grounds of these rounding rules: " + grades[0].key[0]
-	for _, g := range grades[1:] {
-		s += "; " + strings.Join(g.names, ", ") + ": " + g.key[0]
+	slices.SortStableFunc(grades.list, func(a, b bundle) int { return len(b.names) - len(a.names) })
+	s := "Grounds of these rounding rules: " + grades.list[0].key[0]
+	for _, g := range grades.list[1:] {
+		s += "; " + strings.Join(unique(g.names), ", ") + ": " + g.key[0]
 	}
 	p.blank()
 	p.line(0, s+".")

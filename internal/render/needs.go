@@ -1,11 +1,15 @@
 package render
 
 import (
+	"fmt"
 	"slices"
 	"strings"
 
 	"gramlaw/internal/check"
 )
+
+// namesMost is how many ingredients are named; JSON has them all.
+const namesMost = 15
 
 // needed writes what would have to be known, the components of one ingredient together: "yolk (FASAT, FATRN), salt (ID)".
 func needed(list []string) string {
@@ -17,12 +21,16 @@ func needed(list []string) string {
 		}
 		by.add(what, name)
 	}
-	out := make([]string, len(by))
-	for i, b := range by {
-		out[i] = b.key[0]
+	var out []string
+	for _, b := range by.list[:min(len(by.list), namesMost)] {
+		s := b.key[0]
 		if what := slices.Compact(b.names); what[0] != "" {
-			out[i] += " (" + strings.Join(what, ", ") + ")"
+			s += " (" + strings.Join(what, ", ") + ")"
 		}
+		out = append(out, s)
+	}
+	if more := len(by.list) - namesMost; more > 0 {
+		return fmt.Sprintf("%s and %d more", strings.Join(out, ", "), more)
 	}
 	return strings.Join(out, ", ")
 }

@@ -52,10 +52,10 @@ func (p *page) presumed(m *check.Market, told presumedBefore) {
 		return
 	}
 	p.heading("Presumed by practice, not stated by anyone", '-')
-	for _, e := range earlier {
+	for _, e := range earlier.list {
 		p.item(2, fmt.Sprintf("%d %s as told for %s.", len(e.names), plural(len(e.names), "presumption", "presumptions"), e.key[0]))
 	}
-	for _, b := range presumptions(fresh) {
+	for _, b := range presumptions(fresh).list {
 		p.item(2, strings.Join(b.names, ", ")+" taken as "+b.key[1]+": "+b.key[3])
 		p.line(4, "("+sentence(b.key[2])+" Rule "+b.key[0]+".)")
 	}
@@ -69,7 +69,7 @@ func presumptions(list []check.Presumed) bundles {
 		by.add(x.Ingredient, x.Rule, x.Taken, x.Reason, x.Component)
 	}
 	var out bundles
-	for _, b := range by {
+	for _, b := range by.list {
 		out.add(b.key[3], b.key[0], b.key[1], b.key[2], strings.Join(b.names, ", "))
 	}
 	return out
