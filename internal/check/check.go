@@ -63,8 +63,14 @@ func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Fa
 		out.Findings = append(out.Findings, Finding{Kind: "recipe", Severity: "warning", Code: f.Code, Says: name(f.Ingredient) + f.Says, Pointer: f.Pointer})
 	}
 	tags := map[string]bool{}
+	var markets []*market
 	for _, j := range c.request.In {
-		out.Jurisdictions = append(out.Jurisdictions, c.market(j, tags))
+		m := c.open(j, q.Transition)
+		out.Jurisdictions = append(out.Jurisdictions, m.report(tags))
+		markets = append(markets, m)
+	}
+	for i, m := range markets {
+		out.Jurisdictions[i].Presumed = m.presumed()
 	}
 	out.Composition = c.contents(tags)
 	return out, nil

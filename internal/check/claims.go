@@ -67,6 +67,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	b := rule.Body
 	out.Claim, out.Rule, out.Name = rule.ID, rule.ID, b.Name.In("en")
 	out.Source, out.Force, out.Evidence = sourceOf(rule.Head)
+	out.Evidence, out.Weakest = v.weakest(rule)
 	if b.Prohibited {
 		out.Verdict, out.Why = Refused, "the law names this claim in order to forbid it"
 		return out, nil
@@ -164,6 +165,10 @@ func (m *market) withStated(b *rulebook.Claim, a recipe.Claim) *rulebook.Conditi
 
 // accompany lists what must stand beside a permitted claim.
 func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
+	v.own = map[string]bool{}
+	for _, s := range b.About {
+		v.own[s] = true
+	}
 	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
 	out.Statements = append(out.Statements, v.disclosures(out)...)
 	out.NeedsLines = append(out.NeedsLines, b.NeedsLines...)
@@ -295,6 +300,8 @@ func (v view) placeholder(name string, c *Claim) string {
 		ok = text != ""
 	case strings.HasSuffix(name, " of reference food") && v.ref != nil:
 		text, ok = v.printed(v.ref, strings.TrimSuffix(name, " of reference food"))
+	case strings.HasPrefix(name, "amount of "):
+		text, ok = v.amountOfQuantity(strings.TrimPrefix(name, "amount of "))
 	case strings.HasSuffix(name, " difference") && v.ref != nil:
 		text, ok = v.difference(strings.TrimSuffix(name, " difference"))
 	default:
@@ -317,6 +324,17 @@ func (v view) printed(p *product, q string) (string, bool) {
 		return "", false
 	}
 	return l.text(o[0].Printed, v.unit(q), v.language()), true
+}
+
+// amountOfQuantity is a quantity without a line of its own, to three figures on the first column.
+func (v view) amountOfQuantity(q string) (string, bool) {
+	l, ok := v.subject.Quantity(q)
+	if !ok || !l.Determined() || len(v.columns) == 0 || !v.columns[0].known {
+		return "", false
+	}
+	u := v.unit(q)
+	amount := v.columns[0].on(l).Known.Mul(quantity.Scaled(1, -u.Scale().Exponent()))
+	return amount.RoundFigures(3, quantity.TiesUp).String() + " " + u.String(), true
 }
 
 // difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number.
@@ -366,7 +384,11 @@ func (m *market) printability(claims []Claim) {
 			if line, ok := v.reportLine(l); !ok || line.Status != "determined" {
 				claims[i].Printable = false
 				claims[i].Why = "the line “" + l.line.Terms[m.language()][0] + "” must stand in the declaration, and its value is not determined"
-				claims[i].Needs = append(claims[i].Needs, line.Needs...)
+				for _, n := range line.Needs {
+					if !slices.Contains(claims[i].Needs, n) {
+						claims[i].Needs = append(claims[i].Needs, n)
+					}
+				}
 			}
 		}
 	}

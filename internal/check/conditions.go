@@ -28,7 +28,7 @@ func (m *market) condition(r claim.Result) Condition {
 	case r.Op == rulebook.OpNot:
 		out.Not = &parts[0]
 	case r.Op == rulebook.OpCount:
-		out.Of = parts
+		out.Of, out.AtLeast = parts, r.N
 	default:
 		out.All = parts
 	}
@@ -37,6 +37,10 @@ func (m *market) condition(r claim.Result) Condition {
 
 func (m *market) comparison(out *Condition, c *claim.Comparison, t quantity.Truth) {
 	out.Relation, out.Unit, out.Threshold = symbol(c.Relation), c.Unit.String(), exactText(c.Threshold)
+	if c.Null {
+		out.NoValue = "there is nothing to be a share of"
+		return
+	}
 	if c.Known {
 		out.Exact, out.Headroom = text(c.Exact), exactText(c.Headroom)
 	}

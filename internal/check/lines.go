@@ -185,13 +185,18 @@ func (o outcomes) determined() bool {
 
 // table builds the declaration.
 func (m *market) table() Table {
-	t := Table{Lines: []Line{}, Statements: []Statement{}, Bases: []Basis{}}
+	t := Table{Lines: []Line{}, NotKnown: []OpenLine{}, Statements: []Statement{}, Bases: []Basis{}}
 	for _, c := range m.columns {
 		t.Bases = append(t.Bases, c.Basis)
 	}
 	v := m.as(m.product)
 	for _, l := range m.order {
-		if line, ok := v.reportLine(l); ok {
+		line, ok := v.reportLine(l)
+		switch {
+		case !ok:
+		case line.Presence == "optional" && line.Status != "determined":
+			t.NotKnown = append(t.NotKnown, OpenLine{line.Quantity, line.Term, line.Needs})
+		default:
 			t.Lines = append(t.Lines, line)
 		}
 		t.Title, t.Rule = l.rule.Body.Title.In(m.language()), l.rule.ID
@@ -206,7 +211,7 @@ func (m *market) language() string { return m.law.Market.Languages[0] }
 
 func (v view) reportLine(l *lineState) (Line, bool) {
 	q, ok := v.subject.Quantity(l.line.Quantity)
-	if !ok || l.line.Presence == "forbidden" {
+	if !ok || l.line.Presence == "forbidden" || l.line.ForbiddenIf != nil && v.truth(l.line.ForbiddenIf) == quantity.Yes {
 		return Line{}, false
 	}
 	out := Line{Quantity: l.line.Quantity, Component: l.line.Component, Level: l.line.Level, Status: "determined", Presence: "optional",

@@ -1,6 +1,7 @@
 package check
 
 import (
+	"cmp"
 	"maps"
 	"slices"
 	"strings"
@@ -36,9 +37,8 @@ type market struct {
 	columns []column
 }
 
-// market judges one jurisdiction and adds the components it speaks of to tags.
-func (c *checker) market(j string, tags map[string]bool) Market {
-	m := c.open(j, c.request.Transition)
+// report judges the market and adds the components it speaks of to tags.
+func (m *market) report(tags map[string]bool) Market {
 	out := m.judge()
 	out.Other = m.other(out)
 	for _, l := range m.order {
@@ -67,22 +67,32 @@ func (m *market) judge() Market {
 	m.printability(out.Claims)
 	out.Declaration = m.table()
 	out.Findings = append(out.Findings, m.limits()...)
-	out.Presumed = m.presumed()
 	for _, f := range sortedKeys(m.assumed) {
 		out.Assumed = append(out.Assumed, m.assumed[f])
 	}
 	return out
 }
 
-// presumed lists what practice was asked for so far, for components this market speaks of.
+// presumed lists what practice was asked for, for components this market's definitions speak of. It is asked after all markets
+// are judged, so that their order does not matter.
 func (m *market) presumed() []Presumed {
-	out := slices.Clone(m.c.habits.used)
-	slices.SortFunc(out, func(a, b Presumed) int {
-		return strings.Compare(a.Rule+"\x00"+a.Component+"\x00"+a.Ingredient, b.Rule+"\x00"+b.Component+"\x00"+b.Ingredient)
-	})
-	if out == nil {
-		out = []Presumed{}
+	spoken := map[string]bool{}
+	for _, d := range m.law.Definitions.All {
+		for _, w := range d.Body.Ways {
+			for tag := range w.Sum {
+				spoken[tag] = true
+			}
+		}
 	}
+	out := []Presumed{}
+	for _, p := range m.c.habits.used {
+		if spoken[p.Component] {
+			out = append(out, p)
+		}
+	}
+	slices.SortFunc(out, func(a, b Presumed) int {
+		return cmp.Or(strings.Compare(a.Rule, b.Rule), strings.Compare(a.Component, b.Component), strings.Compare(a.Ingredient, b.Ingredient))
+	})
 	return out
 }
 
@@ -139,7 +149,8 @@ type view struct {
 	*market
 	subject *product
 	ref     *product
-	against string // name of ref
+	against string          // name of ref
+	own     map[string]bool // what the one claim judged is about; nil where all that stand count
 }
 
 func (m *market) as(p *product) view { return view{market: m, subject: p} }
@@ -236,6 +247,15 @@ func (v view) Fact(name, is string) quantity.Truth {
 	return quantity.Open
 }
 
+// Measured is a fact that is an amount.
+func (v view) Measured(name string) (quantity.Ratio, bool) {
+	f, ok := v.c.recipe.Facts[name]
+	if !ok || f.Number == nil {
+		return quantity.Ratio{}, false
+	}
+	return quantity.FromDecimal(f.Number.Base()), true
+}
+
 // ReferenceAmount tells whether the reference amount is at most one of the amounts in its own kind of unit.
 func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 	r, ok := v.referenceAmount()
@@ -250,9 +270,13 @@ func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 	return quantity.No
 }
 
-// ClaimedAbout tells whether a claim that stands is about one of the subjects.
+// ClaimedAbout tells whether a claim that stands is about one of the subjects; where one claim is judged, whether it is.
 func (v view) ClaimedAbout(subjects []string) quantity.Truth {
-	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return v.about[s] || s == "any" && len(v.about) > 0 }))
+	about := v.about
+	if v.own != nil {
+		about = v.own
+	}
+	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return about[s] || s == "any" && len(about) > 0 }))
 }
 
 // ReferenceKind tells whether the reference food is of one of the kinds.

@@ -70,7 +70,15 @@ type Table struct {
 	Rule       string      `json:"rule"`
 	Bases      []Basis     `json:"bases"`
 	Lines      []Line      `json:"lines"`
+	NotKnown   []OpenLine  `json:"not_known"` // optional lines whose value is not determined
 	Statements []Statement `json:"statements"`
+}
+
+// An OpenLine is an optional line that cannot be printed because data are missing.
+type OpenLine struct {
+	Quantity string   `json:"quantity"`
+	Term     string   `json:"term"`
+	Needs    []string `json:"needs"`
 }
 
 // A Basis is a column of the declaration.
@@ -112,7 +120,7 @@ type Value struct {
 	Rule             string            `json:"rule"`
 	Source           string            `json:"source"`
 	Force            string            `json:"force"`
-	Evidence         string            `json:"evidence"`
+	Evidence         string            `json:"evidence"` // of the weakest of rounding and definition
 	Contributions    []Contribution    `json:"contributions,omitzero"`
 }
 
@@ -169,7 +177,8 @@ type Claim struct {
 	Rule       string      `json:"rule,omitzero"`
 	Source     string      `json:"source,omitzero"`
 	Force      string      `json:"force,omitzero"`
-	Evidence   string      `json:"evidence,omitzero"`
+	Evidence   string      `json:"evidence,omitzero"` // of the weakest rule it rests on
+	Weakest    string      `json:"weakest_rule,omitzero"`
 }
 
 // A Condition is a decided condition. Leaves have numbers where the condition compares.
@@ -181,6 +190,7 @@ type Condition struct {
 	Of        []Condition `json:"of,omitzero"`
 	Says      string      `json:"says,omitzero"`
 	Exact     *string     `json:"exact,omitzero"`
+	NoValue   string      `json:"no_value,omitzero"` // why there is none: the denominator is zero
 	Low       string      `json:"low,omitzero"`
 	High      string      `json:"high,omitzero"`
 	Relation  string      `json:"relation,omitzero"`

@@ -270,7 +270,8 @@ func raw(m map[string]string) map[string]json.RawMessage {
 // and 7 % poly; the remaining 2 % has no name and could be any of them.
 func TestOliveTypeOil(t *testing.T) {
 	doc := `{"id":"oil","name":"oil","ingredients":[{"id":"oil","name":"oil","amount":"100 g","composition":{"components":{"FAT":"100 g"},"fatty_acids":{"basis":"percent of fatty acids",
-		"share_of_fat":"1","profile":{"14:0":"1","16:0":"5","18:0":"5","18:1 9c":"80","18:2 9c,12c":"7"}}}}],"serving":{"default":{"amount":"100 g"}}}`
+		"share_of_fat":"1","profile":{"14:0":"1","16:0":"5","18:0":"5","18:1 9c":"80","18:2 9c,12c":"7"}}}}],"serving":{"default":{"amount":"100 g"}},
+		"claims":[{"claim":"monounsaturated-fat-high"},{"claim":"polyunsaturated-fat-high"}]}`
 	r, faults := recipe.Decode([]byte(doc))
 	if len(faults) > 0 {
 		t.Fatal(faults)
@@ -279,13 +280,18 @@ func TestOliveTypeOil(t *testing.T) {
 	if len(faults) > 0 {
 		t.Fatal(faults)
 	}
-	for q, want := range map[string]string{"saturated-fat": "11", "monounsaturated-fat": "80", "polyunsaturated-fat": "7"} {
-		_, v, err := printedLine(rep.Jurisdictions[0], q, "100 g")
-		if err != nil {
-			t.Fatal(err)
-		}
-		if v.Low != want || deref(v.Exact) != want {
-			t.Errorf("%s is %s (from %s to %s), want %s", q, deref(v.Exact), v.Low, v.High, want)
+	m := rep.Jurisdictions[0]
+	_, saturated, err := printedLine(m, "saturated-fat", "100 g")
+	if err != nil {
+		t.Fatal(err)
+	}
+	if saturated.Low != "11" || saturated.High != "13" || deref(saturated.Exact) != "11" {
+		t.Errorf("saturated is %s, from %s to %s", deref(saturated.Exact), saturated.Low, saturated.High)
+	}
+	for i, want := range []string{"80", "7"} {
+		share := m.Claims[i].Condition.All[0]
+		if deref(share.Exact) != want || !strings.Contains(share.Says, "share of fatty acids") {
+			t.Errorf("%s: %s, want %s", share.Says, deref(share.Exact), want)
 		}
 	}
 }

@@ -27,6 +27,7 @@ func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	}
 	out.Rule = r.ID
 	out.Source, out.Force, out.Evidence = sourceOf(r.Head)
+	out.Evidence = v.gradeOfValue(r.Head, l.line.Quantity)
 	settled := true
 	var printed outcomes
 	if len(r.Body.Bands) > 0 {

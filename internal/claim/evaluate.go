@@ -30,6 +30,7 @@ type Context interface {
 	ReferenceValue(quantity string) (v quantity.Ratio, ok bool)
 	Declared(quantity, is string) quantity.Truth // "" asks whether the line stands
 	Fact(name, is string) quantity.Truth
+	Measured(name string) (quantity.Ratio, bool) // a fact that is an amount, in base units
 	ReferenceAmount(atMost []quantity.Amount) quantity.Truth
 	ClaimedAbout(subjects []string) quantity.Truth
 	NoIngredient(c *rulebook.Condition) quantity.Truth
@@ -42,6 +43,7 @@ type Result struct {
 	Op      rulebook.Op
 	Says    string
 	Parts   []Result
+	N       int // of a count: how many parts must hold
 	Compare *Comparison
 	Missing string // what would have to be known, where that is not a number
 }
@@ -64,7 +66,7 @@ func (x evaluator) evaluate(c *rulebook.Condition) Result {
 		return Result{Truth: quantity.Yes, Op: rulebook.OpAll}
 	}
 	r := x.decide(c)
-	r.Op = c.Op
+	r.Op, r.N = c.Op, c.N
 	if c.Says != nil {
 		r.Says = c.Says.In("en")
 	}
@@ -145,7 +147,7 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 	case rulebook.OpMeets:
 		return x.meets(c)
 	case rulebook.OpFact:
-		return lacking(x.Fact(c.Name, c.Is), "the fact “"+c.Name+"”")
+		return lacking(x.fact(c), "the fact “"+c.Name+"”")
 	case rulebook.OpAmount:
 		return lacking(x.ReferenceAmount(c.Amounts), "the reference amount")
 	case rulebook.OpKind:
@@ -155,6 +157,17 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 	default:
 		return Result{Truth: x.NoIngredient(c)}
 	}
+}
+
+func (x evaluator) fact(c *rulebook.Condition) quantity.Truth {
+	if c.Is != "" {
+		return x.Fact(c.Name, c.Is)
+	}
+	v, ok := x.Measured(c.Name)
+	if !ok {
+		return quantity.Open
+	}
+	return sign(c.Relation, quantity.Exactly(v.Sub(quantity.FromDecimal(threshold(c)))))
 }
 
 // lacking names what an open answer lacks.

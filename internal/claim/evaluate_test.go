@@ -39,6 +39,9 @@ func (w world) Fact(name, is string) quantity.Truth {
 	}
 	return quantity.Open
 }
+func (w world) Measured(name string) (quantity.Ratio, bool) {
+	return quantity.Scaled(12, -1), name == "alcohol by volume"
+}
 func (w world) EnergyFactor(string) (quantity.Ratio, bool)       { return quantity.FromInt(9), true }
 func (w world) ReferenceValue(string) (quantity.Ratio, bool)     { return quantity.FromInt(20), true }
 func (w world) ReferenceAmount([]quantity.Amount) quantity.Truth { return quantity.Yes }
@@ -102,6 +105,9 @@ func TestConditions(t *testing.T) {
 		{"open stays open under not", `{"not":{"of":{"fat":"1"},"per":"100 g","at most":"3 g"}}`, world{product: hazy}, quantity.Open},
 		{"an open guard whose branches agree", `{"when":{"fact":"x","is":"y"},"then":{"fact":"state","is":"solid"},"else":{"fact":"state","is":"solid"}}`, world{product: bread}, quantity.Yes},
 		{"an open guard whose branches differ", `{"when":{"fact":"x","is":"y"},"then":{"fact":"state","is":"solid"},"else":{"fact":"state","is":"liquid"}}`, world{product: bread}, quantity.Open},
+		{"a measured fact at its limit", `{"fact":"alcohol by volume","above":"1.2 %"}`, world{product: bread}, quantity.No},
+		{"a measured fact below its limit", `{"fact":"alcohol by volume","below":"1.3 %"}`, world{product: bread}, quantity.Yes},
+		{"a measured fact nobody stated", `{"fact":"polyols","above":"10 %"}`, world{product: bread}, quantity.Open},
 		{"one of two", `{"at least":1,"of":[{"fact":"state","is":"solid"},{"fact":"x","is":"y"}]}`, world{product: bread}, quantity.Yes},
 
 		{"reduced by exactly 25 %", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{bread, food{"fat": exactly(4, 0)}}, quantity.Yes},

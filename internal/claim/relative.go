@@ -66,24 +66,36 @@ func (c *Comparison) dependsOn(f quantity.Linear) {
 	}
 }
 
-// change fills the comparison with the reduction or increase in per cent.
+// change fills the comparison with the reduction or increase in per cent: from the least to the greatest that is possible.
 func (c *Comparison) change(rel rulebook.Relation, product, other quantity.Linear) {
-	p, ok1 := product.Central()
-	o, ok2 := other.Central()
 	if c == nil {
 		return
 	}
-	if c.Null = other.High().Sign() == 0; !ok1 || !ok2 || o.Sign() == 0 {
+	if c.Null = other.High().Sign() == 0; c.Null {
 		return
 	}
-	diff := o.Sub(p)
+	c.Low, c.High = change(rel, product.High(), other.Low()), change(rel, product.Low(), other.High())
 	if rel == rulebook.IncreasedBy {
-		diff = p.Sub(o)
+		c.Low, c.High = change(rel, product.Low(), other.High()), change(rel, product.High(), other.Low())
 	}
-	c.Known = true
-	c.Exact = diff.Mul(quantity.FromInt(100)).Quo(o)
-	c.Low, c.High = c.Exact, c.Exact
-	c.Headroom = c.Exact.Sub(c.Threshold)
+	p, ok1 := product.Central()
+	o, ok2 := other.Central()
+	if c.Known = ok1 && ok2 && o.Sign() > 0; c.Known {
+		c.Exact = change(rel, p, o)
+		c.Headroom = c.Exact.Sub(c.Threshold)
+	}
+}
+
+// change is the reduction or increase from the reference food's value to the product's, in per cent; zero from nothing.
+func change(rel rulebook.Relation, product, other quantity.Ratio) quantity.Ratio {
+	if other.Sign() <= 0 {
+		return quantity.Ratio{}
+	}
+	diff := other.Sub(product)
+	if rel == rulebook.IncreasedBy {
+		diff = diff.Neg()
+	}
+	return diff.Mul(quantity.FromInt(100)).Quo(other)
 }
 
 func (c *Comparison) absolute(product, other quantity.Linear) {

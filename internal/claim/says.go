@@ -80,6 +80,9 @@ func atomSays(c *rulebook.Condition, x Context) string {
 		}
 		return "meets " + quote(rulebook.Name(c.Name))
 	case rulebook.OpFact:
+		if c.Is == "" {
+			return c.Name + " " + string(c.Relation) + " " + c.Threshold.String()
+		}
 		return c.Name + ": " + c.Is
 	case rulebook.OpAmount:
 		return amountSays(c)

@@ -36,6 +36,8 @@ var Facts = []FactRule{
 	{Name: "vitamins or minerals added", Kind: YesNo, Says: "vitamins or minerals are added as such"},
 	{Name: "sold to", Kind: OneOf, Values: []string{"final consumer", "other business"}, Says: "who buys the food"},
 	{Name: "table-top sweetener", Kind: YesNo, Says: "the food is a table-top sweetener"},
+	{Name: "single-portion package", Kind: YesNo, Says: "the package holds a single portion"},
+	{Name: "kind of drink", Kind: OneOf, Values: []string{"semi-skimmed milk", "natural mineral water", "other water", "other drink"}, Says: "which kind of drink, where limits differ"},
 	{Name: "beverage", Kind: YesNo, Says: "the food is a drink"},
 	{Name: "seafood or game meat product", Kind: YesNo, Says: "the food is a seafood or game meat product as packaged"},
 	{Name: "discrete product", Kind: YesNo, Says: "the product is whole pieces, not a mixture"},

@@ -68,6 +68,11 @@ func (b *Book) ListsClaim(name string) bool {
 			if Name(c.ID) == name {
 				return true
 			}
+			for _, v := range c.Versions {
+				if slices.Contains(v.Body.AlsoNamed, name) {
+					return true
+				}
+			}
 		}
 	}
 	return false

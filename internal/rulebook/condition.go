@@ -200,6 +200,9 @@ func (c *Condition) readAtom(r *reader) {
 		c.Op = OpFact
 		text("fact", &c.Name)
 		text("is", &c.Is)
+		if c.Is == "" {
+			c.readRelation(r)
+		}
 	case r.m["reference amount"] != nil:
 		c.Op = OpAmount
 		var at struct {

@@ -113,6 +113,13 @@ func (l *Law) index() {
 			l.roundingOf[q] = i
 		}
 	}
+	for i, c := range l.Claims.All {
+		for _, name := range c.Body.AlsoNamed {
+			if _, taken := l.Claims.byName[name]; !taken {
+				l.Claims.byName[name] = i
+			}
+		}
+	}
 	l.referenceOf = map[string]int{}
 	for i, r := range l.References.All {
 		l.referenceOf[r.Body.Quantity] = i

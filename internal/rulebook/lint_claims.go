@@ -61,6 +61,7 @@ func (c *checker) line(id, at string, line *Line) {
 	}
 	node := "line/" + line.Quantity
 	c.condition("declaration", id, at+"/mandatory if", node, line.MandatoryIf)
+	c.condition("declaration", id, at+"/forbidden if", node, line.ForbiddenIf)
 	c.condition("declaration", id, at+"/leave out if", node, line.LeaveOutIf)
 }
 

@@ -70,6 +70,10 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 			if p.N < 1 || p.N > len(p.Parts) {
 				bad("%d of %d conditions cannot hold", p.N, len(p.Parts))
 			}
+		case OpFact:
+			if p.Is == "" && p.Relation.Relative() {
+				bad("a measured fact is compared with an amount only")
+			}
 		case OpKind:
 			if len(p.Kinds) == 0 {
 				bad("reference food is compared with no kind")

@@ -177,6 +177,9 @@ func (c *checker) percent(id, field string, r *Rounding, p *Percent) {
 		c.bad("rounding", id, field+"/bands", "is empty")
 	}
 	c.bands(id, field+"/bands", p.Bands, quantity.Percent)
+	if p.Source != nil {
+		c.source(c.j+"/rounding.json", id, field+"/source", *p.Source)
+	}
 	c.condition("rounding", id, field+"/zero if", "percent/"+Name(id), p.ZeroIf)
 }
 

@@ -215,7 +215,8 @@ type Percent struct {
 	From   string     `json:"from"`        // "exact" or "declared": the amount it is computed from
 	Or     string     `json:"or,omitzero"` // the other one, where the law allows both
 	ZeroIf *Condition `json:"zero if,omitzero"`
-	Bands  []Band     `json:"bands"` // edges and steps in %
+	Bands  []Band     `json:"bands"`           // edges and steps in %
+	Source *Source    `json:"source,omitzero"` // where it differs from the rounding's
 }
 
 // A Declaration is the table of a market: lines in order, statements under it, how numbers look.
@@ -246,6 +247,7 @@ type Line struct {
 	Percent     string     `json:"percent"`             // "shown", "optional" or "none"
 	Presence    string     `json:"presence"`            // "mandatory", "optional" or "forbidden"
 	MandatoryIf *Condition `json:"mandatory if,omitzero"`
+	ForbiddenIf *Condition `json:"forbidden if,omitzero"`
 	LeaveOutIf  *Condition `json:"leave out if,omitzero"`
 	LeftOut     Words      `json:"left out says,omitzero"`
 }
@@ -271,7 +273,8 @@ type ReferenceAmount struct {
 // A Claim is a listed claim: what it needs and what it brings with it.
 type Claim struct {
 	Name       Words       `json:"name"`
-	About      []string    `json:"about"` // subjects, for conditions that ask what is claimed about
+	AlsoNamed  []string    `json:"also named,omitzero"` // shared names of other markets for the same claim
+	About      []string    `json:"about"`               // subjects, for conditions that ask what is claimed about
 	Condition  *Condition  `json:"condition,omitzero"`
 	Undecided  Words       `json:"undecided,omitzero"` // why the condition cannot be decided from data yet, instead of it
 	BarredIf   *Condition  `json:"barred if,omitzero"` // refuses the claim whatever its condition

@@ -1,0 +1,73 @@
+package check
+
+import (
+	"slices"
+
+	"gramlaw/internal/rulebook"
+)
+
+// What is derived takes the grade of its weakest input.
+
+func weaker(a, b string) bool {
+	return slices.Index(rulebook.Evidences, a) > slices.Index(rulebook.Evidences, b)
+}
+
+// gradeOf is the weakest grade of a quantity's definition, and of what the definition rests on.
+func (m *market) gradeOf(q string) (grade, rule string) {
+	grade = rulebook.Evidences[0]
+	lower := func(g, id string) {
+		if weaker(g, grade) {
+			grade, rule = g, id
+		}
+	}
+	if e, ok := m.law.Energy.Get(q); ok {
+		lower(e.Head.Source.Evidence, e.ID)
+		for _, t := range e.Body.Methods[0].Terms() {
+			lower(m.gradeOf(t.Name))
+		}
+	}
+	if d, ok := m.law.Definitions.Get(q); ok {
+		lower(d.Head.Source.Evidence, d.ID)
+	}
+	return grade, rule
+}
+
+// gradeOfValue is the weaker of a rounding and the definition of what is rounded.
+func (m *market) gradeOfValue(rounding *rulebook.Head, q string) string {
+	grade := rounding.Source.Evidence
+	if g, _ := m.gradeOf(q); weaker(g, grade) {
+		return g
+	}
+	return grade
+}
+
+// weakest is the weakest grade among a claim's rule and all its condition rests on, and the rule that has it.
+func (m *market) weakest(c rulebook.Active[rulebook.Claim]) (grade, rule string) {
+	grade, rule = c.Head.Source.Evidence, c.ID
+	lower := func(g, id string) {
+		if id != "" && weaker(g, grade) {
+			grade, rule = g, id
+		}
+	}
+	c.Body.Condition.Walk(func(p *rulebook.Condition) {
+		switch p.Op {
+		case rulebook.OpCompare:
+			for _, t := range p.Terms() {
+				lower(m.gradeOf(t.Name))
+				if p.As == "share of reference value" {
+					if r, ok := m.law.ReferenceOf(t.Name); ok {
+						lower(r.Head.Source.Evidence, r.ID)
+					}
+				}
+			}
+			if p.As == "share of energy" {
+				lower(m.gradeOf("energy"))
+			}
+		case rulebook.OpMeets:
+			if other, ok := m.law.Claims.Get(rulebook.Name(p.Name)); ok {
+				lower(m.weakest(other))
+			}
+		}
+	})
+	return grade, rule
+}
