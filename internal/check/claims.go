@@ -103,10 +103,13 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 // find reads a claim by its shared name, or by words that equal a listed wording.
 func (m *market) find(a recipe.Claim) (rulebook.Active[rulebook.Claim], bool) {
 	if a.Text == "" {
-		return m.law.Claims.Get(a.Claim)
+		if c, ok := m.law.Claims.Get(a.Claim); ok {
+			return c, true
+		}
+		return m.law.HealthClaims.Get(a.Claim)
 	}
 	want := folded(a.Text)
-	for _, c := range m.law.Claims.All {
+	for _, c := range slices.Concat(m.law.Claims.All, m.law.HealthClaims.All) {
 		for lang, words := range c.Body.Wordings {
 			if a.Language != "" && lang != a.Language {
 				continue
@@ -354,9 +357,14 @@ func (v view) difference(q string) (string, bool) {
 
 // alsoPermitted lists claims nobody asked for that the product meets on its own.
 func (m *market) alsoPermitted(asked []Claim) []Candidate {
+	out := m.candidates(m.law.Claims.All, asked, false)
+	return append(out, m.candidates(m.law.HealthClaims.All, asked, true)...)
+}
+
+func (m *market) candidates(list []rulebook.Active[rulebook.Claim], asked []Claim, health bool) []Candidate {
 	out := []Candidate{}
 	v := m.as(m.product)
-	for _, c := range m.law.Claims.All {
+	for _, c := range list {
 		if c.Body.Condition == nil || c.Body.Against || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
 			continue
 		}
@@ -366,7 +374,7 @@ func (m *market) alsoPermitted(asked []Claim) []Candidate {
 		one := Claim{Verdict: Permitted, Rule: c.ID}
 		m.accompany(&one, c.Body, v)
 		if one.Verdict != Refused {
-			out = append(out, Candidate{Claim: c.ID, Name: c.Body.Name.In("en"), Verdict: one.Verdict})
+			out = append(out, Candidate{Claim: c.ID, Name: c.Body.Name.In("en"), Verdict: one.Verdict, Health: health})
 		}
 	}
 	return out

@@ -7,11 +7,11 @@ import (
 	"gramlaw/internal/rulebook"
 )
 
-// limits checks what must hold for the product to be sold. A limit that holds leaves no finding.
-func (m *market) limits() []Finding {
+// judged checks what must hold for the product to be sold, or of its serving and package. What holds leaves no finding.
+func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []Finding {
 	var out []Finding
 	v := m.as(m.product)
-	for _, l := range m.law.Limits.All {
+	for _, l := range rules {
 		where := quantity.Yes
 		if l.Body.Where != nil {
 			where = v.truth(l.Body.Where)
@@ -24,14 +24,54 @@ func (m *market) limits() []Finding {
 			continue
 		}
 		c := m.condition(r)
-		f := Finding{Kind: "limit", Severity: l.Body.Severity, Code: l.Body.Code, Says: l.Body.Says.In("en"), Condition: &c, Rule: l.ID, Source: l.Head.Source.Ref}
+		f := Finding{Kind: kind, Severity: l.Body.Severity, Code: l.Body.Code, Says: l.Body.Says.In("en"), Condition: &c, Rule: l.ID, Source: l.Head.Source.Ref}
 		if r.Truth == quantity.Open || where == quantity.Open {
-			f.Severity = "open"
-			f.Says = "not determined: " + f.Says
+			if kind == "serving" {
+				continue // nothing is known of the package: packaging has said so
+			}
+			f.Severity, f.Says = "open", "not determined: "+f.Says
 		}
 		out = append(out, f)
 	}
-	return append(out, m.profileAgainstStated()...)
+	return out
+}
+
+// packaging finds a package whose net quantity nobody stated.
+func (m *market) packaging() []Finding {
+	p := m.c.recipe.Package
+	if p == nil || p.Net != nil {
+		return nil
+	}
+	return []Finding{{Kind: "serving", Severity: "warning", Code: "package-without-net-quantity", Pointer: "/package", Says: "the package has no net quantity, so servings per package and single servings cannot be judged"}}
+}
+
+// naming lists how ingredients must be named and which reserved names the product may bear.
+func (m *market) naming() []Naming {
+	out := []Naming{}
+	v := m.as(m.product)
+	for _, n := range m.law.Naming.All {
+		if n.Body.Where != nil && v.truth(n.Body.Where) != quantity.Yes {
+			continue
+		}
+		one := Naming{Name: n.Body.Name.In("en"), Says: n.Body.Says.In("en"), Rule: n.ID, Source: n.Head.Source.Ref}
+		if n.Body.Ingredients == nil {
+			t := v.truth(n.Body.Condition)
+			if one.Holds = truthPointer(t); t != quantity.No {
+				out = append(out, one)
+			}
+			continue
+		}
+		for _, l := range m.product.batch.Leaves {
+			if l.Ingredient == nil {
+				continue
+			}
+			t := m.matches(n.Body.Ingredients, l)
+			if one.Holds, one.Ingredient = truthPointer(t), l.Path; t != quantity.No {
+				out = append(out, one)
+			}
+		}
+	}
+	return out
 }
 
 // profileAgainstStated finds a stated total that differs by more than 5 % from what the profile gives.

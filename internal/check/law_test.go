@@ -273,9 +273,14 @@ type claimCases struct {
 }
 
 // Every claim just under, at and just over its thresholds, written from the dossiers; sources stand in the files.
-func TestClaimCases(t *testing.T) {
+func TestClaimCases(t *testing.T) { claimFiles(t, "claims") }
+
+func TestHealthClaimCases(t *testing.T) { claimFiles(t, "health_claims") }
+
+func claimFiles(t *testing.T, kind string) {
+	t.Helper()
 	b := book(t)
-	caseFiles(t, b, "claims", func(t *testing.T, j string, doc []byte) {
+	caseFiles(t, b, kind, func(t *testing.T, j string, doc []byte) {
 		var cases claimCases
 		decodeCases(t, doc, &cases)
 		if len(cases.Cases) == 0 {
@@ -369,4 +374,69 @@ func printedLine(m check.Market, q, basis string) (check.Line, check.Value, erro
 		}
 	}
 	return check.Line{}, check.Value{}, fmt.Errorf("the declaration has no line for %s", q)
+}
+
+type findingCases struct {
+	Jurisdiction string `json:"jurisdiction"`
+	Cases        []struct {
+		Name, Source, Evidence, On, Transition, Note string
+		Given                                        given
+		Findings                                     map[string]string // code -> severity; "none" says that it must be absent
+		Naming                                       []string          // parts of what is said of names
+		Servings                                     string            // servings per package
+		LeaveOut                                     []string          `json:"leave_out"` // terms the simplified format leaves out
+		Simplified                                   *bool             `json:"simplified"`
+	} `json:"cases"`
+}
+
+// Limits, servings, packages, names and simplified formats, written from the dossiers; sources stand in the files.
+func TestFindingCases(t *testing.T) {
+	b := book(t)
+	caseFiles(t, b, "findings", func(t *testing.T, j string, doc []byte) {
+		var cases findingCases
+		decodeCases(t, doc, &cases)
+		if len(cases.Cases) == 0 {
+			t.Error("no case")
+		}
+		for _, c := range cases.Cases {
+			t.Run(c.Name, func(t *testing.T) {
+				m := run(t, b, j, c.On, c.Transition, c.Given.document())
+				for code, want := range c.Findings {
+					if got := severityOf(m, code); got != want {
+						t.Errorf("%s is %s, want %s", code, got, want)
+					}
+				}
+				for _, want := range c.Naming {
+					if !slices.ContainsFunc(m.Naming, func(n check.Naming) bool { return strings.Contains(n.Name+" "+n.Says, want) }) {
+						t.Errorf("nothing named says %q: %v", want, m.Naming)
+					}
+				}
+				shortFormCase(t, m.Declaration, c.Servings, c.LeaveOut, c.Simplified)
+			})
+		}
+	})
+}
+
+func severityOf(m check.Market, code string) string {
+	for _, f := range m.Findings {
+		if f.Code == code {
+			return f.Severity
+		}
+	}
+	return "none"
+}
+
+func shortFormCase(t *testing.T, d check.Table, servings string, leaveOut []string, simplified *bool) {
+	t.Helper()
+	if servings != "" && (d.Servings == nil || d.Servings.Text != servings) {
+		t.Errorf("servings per package are %+v, want %q", d.Servings, servings)
+	}
+	if simplified != nil && *simplified != (d.Simplified != nil) {
+		t.Errorf("simplified format is %+v, want %v", d.Simplified, *simplified)
+	}
+	for _, want := range leaveOut {
+		if d.Simplified == nil || !slices.Contains(d.Simplified.LeaveOut, want) {
+			t.Errorf("the simplified format does not leave out %s: %+v", want, d.Simplified)
+		}
+	}
 }

@@ -203,6 +203,8 @@ func (m *market) table() Table {
 	}
 	for _, d := range m.law.Declarations.All {
 		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
+		t.Servings, t.Simplified = v.servings(d.Body.Servings), v.simplified(d.Body.Simplified)
+		break
 	}
 	return t
 }

@@ -59,14 +59,18 @@ func (c *checker) open(j string, t rulebook.Transition) *market {
 func (m *market) judge() Market {
 	law := m.law
 	out := Market{Jurisdiction: m.j, Name: law.Market.Name, Edition: law.Edition, Claims: []Claim{}, AlsoPermitted: []Candidate{},
-		FrontOfPack: []string{}, Findings: []Finding{}, Presumed: []Presumed{}, Assumed: []Assumed{}, Gaps: law.Market.Gaps, Caution: law.Market.Caution}
+		FrontOfPack: []string{}, Naming: []Naming{}, Findings: []Finding{}, Presumed: []Presumed{}, Assumed: []Assumed{}, Gaps: law.Market.Gaps, Caution: law.Market.Caution}
 	m.openColumns(&out)
 	m.openLines()
 	out.Claims = m.claims()
 	out.AlsoPermitted = m.alsoPermitted(out.Claims)
 	m.printability(out.Claims)
 	out.Declaration = m.table()
-	out.Findings = append(out.Findings, m.limits()...)
+	out.Findings = append(out.Findings, m.packaging()...)
+	out.Findings = append(out.Findings, m.judged("serving", m.law.Serving.All)...)
+	out.Findings = append(out.Findings, m.judged("limit", m.law.Limits.All)...)
+	out.Findings = append(out.Findings, m.profileAgainstStated()...)
+	out.Naming = m.naming()
 	for _, f := range sortedKeys(m.assumed) {
 		out.Assumed = append(out.Assumed, m.assumed[f])
 	}
@@ -279,6 +283,25 @@ func (v view) ClaimedAbout(subjects []string) quantity.Truth {
 	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return about[s] || s == "any" && len(about) > 0 }))
 }
 
+// Size is the mass in g of the package, of the serving, or of one of the package's units.
+func (v view) Size(name string) (quantity.Ratio, bool) {
+	if name == "serving" {
+		if _, stated := v.c.recipe.Serving.For(v.j); !stated {
+			return quantity.Ratio{}, false
+		}
+		return v.subject.Basis(rulebook.Per{Name: "serving"})
+	}
+	size, ok := v.subject.Basis(rulebook.Per{Name: "package"})
+	if !ok || name == "package" {
+		return size, ok
+	}
+	units := v.c.recipe.Package.Units
+	if !units.IsPositive() {
+		return quantity.Ratio{}, false
+	}
+	return size.Quo(quantity.FromDecimal(units)), true
+}
+
 // ReferenceKind tells whether the reference food is of one of the kinds.
 func (v view) ReferenceKind(kinds []string) quantity.Truth {
 	if v.ref == nil {
@@ -299,23 +322,36 @@ func (v view) NoIngredient(c *rulebook.Condition) quantity.Truth {
 }
 
 func (v view) processed(c *rulebook.Condition, l *rollup.Leaf) quantity.Truth {
+	return v.matches(&rulebook.IngredientTest{Process: c.Process, IodineAbove: c.IodineAbove}, l)
+}
+
+// matches tells whether an ingredient has one of the processes and an iodine value on the side asked for.
+func (m *market) matches(t *rulebook.IngredientTest, l *rollup.Leaf) quantity.Truth {
 	process := l.Ingredient.Process
 	if process == "" {
-		process = v.c.habits.origin(l).Process
+		process = m.c.habits.origin(l).Process
 	}
-	if !slices.Contains(c.Process, process) {
+	if !slices.Contains(t.Process, process) {
 		return quantity.No
 	}
-	if c.IodineAbove == nil {
-		return quantity.Yes
+	out := quantity.Yes
+	if t.IodineAbove != nil {
+		out = iodineAbove(l, *t.IodineAbove)
 	}
+	if t.IodineUpTo != nil {
+		out = quantity.All(out, iodineAbove(l, *t.IodineUpTo).Not())
+	}
+	return out
+}
+
+func iodineAbove(l *rollup.Leaf, limit decimal.Decimal) quantity.Truth {
 	low, high, ok := iodineValue(l)
-	switch limit := quantity.FromDecimal(*c.IodineAbove); {
+	switch {
 	case !ok:
 		return quantity.Open
-	case low.Cmp(limit) > 0:
+	case low.CmpDecimal(limit) > 0:
 		return quantity.Yes
-	case high.Cmp(limit) <= 0:
+	case high.CmpDecimal(limit) <= 0:
 		return quantity.No
 	}
 	return quantity.Open

@@ -267,7 +267,11 @@ func (p *product) Meets(id string) quantity.Truth {
 		return t
 	}
 	t := quantity.No
-	if c, ok := p.m.law.Claims.Get(rulebook.Name(id)); ok && c.Body.Condition != nil {
+	c, ok := p.m.law.Claims.Get(rulebook.Name(id))
+	if !ok || c.ID != id {
+		c, ok = p.m.law.HealthClaims.Get(rulebook.Name(id))
+	}
+	if ok && c.Body.Condition != nil {
 		t = p.m.as(p).truth(c.Body.Condition)
 	}
 	p.meets[id] = t

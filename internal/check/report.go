@@ -56,6 +56,7 @@ type Market struct {
 	Claims        []Claim     `json:"claims"`
 	AlsoPermitted []Candidate `json:"also_permitted"`
 	FrontOfPack   []string    `json:"front_of_pack"`
+	Naming        []Naming    `json:"naming"`
 	Findings      []Finding   `json:"findings"`
 	Presumed      []Presumed  `json:"presumed"`
 	Assumed       []Assumed   `json:"assumed"`
@@ -72,6 +73,22 @@ type Table struct {
 	Lines      []Line      `json:"lines"`
 	NotKnown   []OpenLine  `json:"not_known"` // optional lines whose value is not determined
 	Statements []Statement `json:"statements"`
+	Servings   *Servings   `json:"servings_per_package,omitzero"`
+	Simplified *Simplified `json:"simplified_format,omitzero"`
+}
+
+// Servings is how many servings the package holds.
+type Servings struct {
+	Exact string            `json:"exact"`
+	Text  string            `json:"text"`
+	Texts map[string]string `json:"texts,omitzero"`
+}
+
+// Simplified is a shorter format the law allows this product: which lines may go, and what must then be said.
+type Simplified struct {
+	Name     string   `json:"name"`
+	LeaveOut []string `json:"leave_out"` // terms
+	Says     string   `json:"says,omitzero"`
 }
 
 // An OpenLine is an optional line that cannot be printed because data are missing.
@@ -206,6 +223,7 @@ type Candidate struct {
 	Claim   string `json:"claim"`
 	Name    string `json:"name"`
 	Verdict string `json:"verdict"`
+	Health  bool   `json:"health,omitzero"` // a health claim
 }
 
 // A Finding is something to look at. Severity is "refused", "open", "warning" or "note".
@@ -218,6 +236,16 @@ type Finding struct {
 	Condition *Condition `json:"condition,omitzero"`
 	Rule      string     `json:"rule,omitzero"`
 	Source    string     `json:"source,omitzero"`
+}
+
+// A Naming is how an ingredient must be named, or a reserved name the product may bear. Holds is null where that is open.
+type Naming struct {
+	Ingredient string `json:"ingredient,omitzero"` // empty is the product
+	Name       string `json:"name,omitzero"`
+	Says       string `json:"says"`
+	Holds      *bool  `json:"holds"`
+	Rule       string `json:"rule"`
+	Source     string `json:"source"`
 }
 
 // A Presumed is a value nobody stated and practice takes.

@@ -35,6 +35,8 @@ type Context interface {
 	ClaimedAbout(subjects []string) quantity.Truth
 	NoIngredient(c *rulebook.Condition) quantity.Truth
 	ReferenceKind(kinds []string) quantity.Truth // open without a reference food
+	// Size is the mass in g of the package, the serving or one unit.
+	Size(name string) (quantity.Ratio, bool)
 }
 
 // A Result is the decision on a condition, with the parts that led to it.
@@ -150,6 +152,8 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 		return lacking(x.fact(c), "the fact “"+c.Name+"”")
 	case rulebook.OpAmount:
 		return lacking(x.ReferenceAmount(c.Amounts), "the reference amount")
+	case rulebook.OpSize:
+		return lacking(x.size(c), "the mass of the "+c.Name)
 	case rulebook.OpKind:
 		return lacking(x.ReferenceKind(c.Kinds), "the reference food")
 	case rulebook.OpAbout:
@@ -168,6 +172,24 @@ func (x evaluator) fact(c *rulebook.Condition) quantity.Truth {
 		return quantity.Open
 	}
 	return sign(c.Relation, quantity.Exactly(v.Sub(quantity.FromDecimal(threshold(c)))))
+}
+
+// size compares package, serving or unit with a mass, a volume or a share of the reference amount.
+func (x evaluator) size(c *rulebook.Condition) quantity.Truth {
+	size, ok := x.Size(c.Name)
+	if !ok {
+		return quantity.Open
+	}
+	per := rulebook.Per{Amount: c.Threshold}
+	share := quantity.FromInt(1)
+	if c.As != "" {
+		per, share = rulebook.Per{Name: "reference amount"}, quantity.FromDecimal(c.Threshold.Value.Shift(-2))
+	}
+	limit, ok := x.Product().Basis(per)
+	if !ok {
+		return quantity.Open
+	}
+	return sign(c.Relation, quantity.Exactly(size.Sub(limit.Mul(share))))
 }
 
 // lacking names what an open answer lacks.

@@ -19,7 +19,7 @@ func (f food) Mass() quantity.Ratio                         { return quantity.Fr
 func (f food) Meets(string) quantity.Truth                  { return quantity.Open }
 func (f food) Basis(p rulebook.Per) (quantity.Ratio, bool) {
 	switch {
-	case p.Name == "serving":
+	case p.Name == "serving", p.Name == "reference amount":
 		return quantity.FromInt(30), true
 	case p.Amount.Unit.Dimension() == quantity.Mass:
 		return quantity.FromDecimal(p.Amount.Base()), true
@@ -41,6 +41,9 @@ func (w world) Fact(name, is string) quantity.Truth {
 }
 func (w world) Measured(name string) (quantity.Ratio, bool) {
 	return quantity.Scaled(12, -1), name == "alcohol by volume"
+}
+func (w world) Size(name string) (quantity.Ratio, bool) {
+	return quantity.FromInt(60), name == "package"
 }
 func (w world) EnergyFactor(string) (quantity.Ratio, bool)       { return quantity.FromInt(9), true }
 func (w world) ReferenceValue(string) (quantity.Ratio, bool)     { return quantity.FromInt(20), true }
@@ -108,6 +111,10 @@ func TestConditions(t *testing.T) {
 		{"a measured fact at its limit", `{"fact":"alcohol by volume","above":"1.2 %"}`, world{product: bread}, quantity.No},
 		{"a measured fact below its limit", `{"fact":"alcohol by volume","below":"1.3 %"}`, world{product: bread}, quantity.Yes},
 		{"a measured fact nobody stated", `{"fact":"polyols","above":"10 %"}`, world{product: bread}, quantity.Open},
+		{"a package of twice the reference amount", `{"size of":"package","as":"share of reference amount","at least":"200 %"}`, world{product: bread}, quantity.Yes},
+		{"a package below twice the reference amount", `{"size of":"package","as":"share of reference amount","below":"200 %"}`, world{product: bread}, quantity.No},
+		{"a package by mass", `{"size of":"package","at most":"60 g"}`, world{product: bread}, quantity.Yes},
+		{"a unit nobody weighed", `{"size of":"unit","at most":"60 g"}`, world{product: bread}, quantity.Open},
 		{"one of two", `{"at least":1,"of":[{"fact":"state","is":"solid"},{"fact":"x","is":"y"}]}`, world{product: bread}, quantity.Yes},
 
 		{"reduced by exactly 25 %", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{bread, food{"fat": exactly(4, 0)}}, quantity.Yes},

@@ -86,6 +86,12 @@ func atomSays(c *rulebook.Condition, x Context) string {
 		return c.Name + ": " + c.Is
 	case rulebook.OpAmount:
 		return amountSays(c)
+	case rulebook.OpSize:
+		s := "the " + c.Name + " is " + string(c.Relation) + " " + c.Threshold.String()
+		if c.As != "" {
+			s += " of the reference amount"
+		}
+		return s
 	case rulebook.OpKind:
 		return "the reference food is " + list(c.Kinds)
 	case rulebook.OpAbout:

@@ -43,6 +43,9 @@ type Rules struct {
 	Claims           []Rule[Claim]
 	Disclosures      []Rule[Disclosure]
 	Limits           []Rule[Limit]
+	Serving          []Rule[Limit] // what must hold of serving and package
+	HealthClaims     []Rule[Claim]
+	Naming           []Rule[Naming]
 }
 
 // Jurisdictions lists the markets of the set, sorted.
@@ -64,7 +67,7 @@ func (b *Book) Rules(jurisdiction string) (*Rules, bool) {
 // ListsClaim tells whether any market of the set lists a claim of this shared name.
 func (b *Book) ListsClaim(name string) bool {
 	for _, m := range b.markets {
-		for _, c := range m.Claims {
+		for _, c := range slices.Concat(m.Claims, m.HealthClaims) {
 			if Name(c.ID) == name {
 				return true
 			}

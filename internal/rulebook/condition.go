@@ -27,6 +27,7 @@ const (
 	OpAbout      Op = "claimed about"
 	OpIngredient Op = "no ingredient"
 	OpKind       Op = "reference food is"
+	OpSize       Op = "size of"
 	OpAll        Op = "all"
 	OpAny        Op = "any"
 	OpNot        Op = "not"
@@ -215,6 +216,11 @@ func (c *Condition) readAtom(r *reader) {
 		r.into(r.take("claimed about"), &c.About)
 	case r.m["no ingredient"] != nil:
 		c.readIngredient(r)
+	case r.m[string(OpSize)] != nil:
+		c.Op = OpSize
+		text(string(OpSize), &c.Name)
+		text("as", &c.As)
+		c.readRelation(r)
 	case r.m[string(OpKind)] != nil:
 		c.Op = OpKind
 		r.into(r.take(string(OpKind)), &c.Kinds)

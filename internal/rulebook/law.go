@@ -51,6 +51,9 @@ type Law struct {
 	Claims           List[Claim]
 	Disclosures      List[Disclosure]
 	Limits           List[Limit]
+	Serving          List[Limit]
+	HealthClaims     List[Claim]
+	Naming           List[Naming]
 
 	roundingOf  map[string]int // quantity -> index in Roundings
 	referenceOf map[string]int
@@ -92,6 +95,9 @@ func (b *Book) At(jurisdiction, date string, t Transition, facts func(*Condition
 	law.Claims = active(s, m.Claims)
 	law.Disclosures = active(s, m.Disclosures)
 	law.Limits = active(s, m.Limits)
+	law.Serving = active(s, m.Serving)
+	law.HealthClaims = active(s, m.HealthClaims)
+	law.Naming = active(s, m.Naming)
 	law.index()
 	return law, true
 }

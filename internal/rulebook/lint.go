@@ -117,6 +117,7 @@ func (c *checker) market() {
 	c.declarations()
 	c.claims()
 	c.limits()
+	c.naming()
 	c.cycles()
 }
 
@@ -147,6 +148,9 @@ func each(m *Rules, visit func(kind, id string, h *Head)) {
 	eachOf("claims", m.Claims, visit)
 	eachOf("disclosure", m.Disclosures, visit)
 	eachOf("limits", m.Limits, visit)
+	eachOf("serving", m.Serving, visit)
+	eachOf("health_claims", m.HealthClaims, visit)
+	eachOf("naming", m.Naming, visit)
 }
 
 func eachOf[T any](kind string, rules []Rule[T], visit func(kind, id string, h *Head)) {

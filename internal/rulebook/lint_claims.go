@@ -26,6 +26,7 @@ func (c *checker) declarations() {
 			seen[line.Quantity] = true
 			c.line(id, field+at, line)
 		}
+		c.shortForms(id, field, d, seen)
 		for _, group := range d.Together {
 			for _, q := range group {
 				if !seen[q] {
@@ -37,6 +38,31 @@ func (c *checker) declarations() {
 			c.statement("declaration", id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
 		}
 	})
+}
+
+// shortForms checks the simplified format and the count of servings.
+func (c *checker) shortForms(id, field string, d *Declaration, lines map[string]bool) {
+	if f := d.Simplified; f != nil {
+		at := field + "/simplified"
+		c.words("declaration", id, at+"/name", f.Name)
+		c.condition("declaration", id, at+"/where", "simplified", f.Where)
+		if f.Needed < 1 || f.Needed > len(f.Of) {
+			c.bad("declaration", id, at, "%d of %d cannot be insignificant", f.Needed, len(f.Of))
+		}
+		for _, one := range f.Of {
+			c.condition("declaration", id, at+"/of/"+one.Quantity, "simplified", one.If)
+			if !lines[one.Quantity] || one.If == nil {
+				c.bad("declaration", id, at+"/of", "%q has no line or no condition", one.Quantity)
+			}
+		}
+	}
+	if s := d.Servings; s != nil {
+		for i, b := range s.Bands {
+			if open := b.Below == nil && b.AtMost == nil; open != (i == len(s.Bands)-1) || !b.Nearest.IsPositive() {
+				c.bad("declaration", id, field+"/servings per package/bands", "must have edges but for the last, and steps above zero")
+			}
+		}
+	}
 }
 
 func (c *checker) line(id, at string, line *Line) {
@@ -74,9 +100,14 @@ func (c *checker) statement(kind, id, at, node string, s Statement) {
 }
 
 func (c *checker) claims() {
-	bodies(c.m.Claims, func(id, field string, cl *Claim) {
+	c.claimsOf("claims", c.m.Claims)
+	c.claimsOf("health_claims", c.m.HealthClaims)
+}
+
+func (c *checker) claimsOf(kind string, rules []Rule[Claim]) {
+	bodies(rules, func(id, field string, cl *Claim) {
 		node := "claim/" + Name(id)
-		c.words("claims", id, field+"/name", cl.Name)
+		c.words(kind, id, field+"/name", cl.Name)
 		decides := 0
 		for _, set := range []bool{cl.Condition != nil, cl.Prohibited, cl.Undecided != nil} {
 			if set {
@@ -84,18 +115,18 @@ func (c *checker) claims() {
 			}
 		}
 		if decides != 1 {
-			c.bad("claims", id, field, "must have exactly one of condition, prohibited and undecided")
+			c.bad(kind, id, field, "must have exactly one of condition, prohibited and undecided")
 		}
-		c.condition("claims", id, field+"/barred if", "barred/"+Name(id), cl.BarredIf)
+		c.condition(kind, id, field+"/barred if", "barred/"+Name(id), cl.BarredIf)
 		if cl.Condition.Relative() != cl.Against {
-			c.bad("claims", id, field+"/needs reference food", "must be true exactly when the condition compares with one")
+			c.bad(kind, id, field+"/needs reference food", "must be true exactly when the condition compares with one")
 		}
-		c.condition("claims", id, field+"/condition", node, cl.Condition)
+		c.condition(kind, id, field+"/condition", node, cl.Condition)
 		for i, s := range cl.Statements {
-			c.statement("claims", id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
+			c.statement(kind, id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
 		}
 		for _, q := range cl.NeedsLines {
-			c.quantity("claims", id, field+"/mandatory lines", q, quantity.NoDimension)
+			c.quantity(kind, id, field+"/mandatory lines", q, quantity.NoDimension)
 		}
 		c.stated(id, field+"/stated", cl.Stated)
 	})
@@ -125,16 +156,32 @@ func (c *checker) limits() {
 		c.condition("disclosure", id, field+"/when", "disclosure/"+Name(id), d.When)
 		c.condition("disclosure", id, field+"/condition", "disclosure/"+Name(id), d.Condition)
 	})
-	bodies(c.m.Limits, func(id, field string, l *Limit) {
+	c.limitsOf("limits", c.m.Limits)
+	c.limitsOf("serving", c.m.Serving)
+}
+
+func (c *checker) limitsOf(kind string, rules []Rule[Limit]) {
+	bodies(rules, func(id, field string, l *Limit) {
 		if !slices.Contains([]string{"refused", "warning", "note"}, l.Severity) {
-			c.bad("limits", id, field+"/severity", "%q is none of refused, warning, note", l.Severity)
+			c.bad(kind, id, field+"/severity", "%q is none of refused, warning, note", l.Severity)
 		}
 		if l.Condition == nil || !plainName(l.Code) {
-			c.bad("limits", id, field, "needs a condition and a code")
+			c.bad(kind, id, field, "needs a condition and a code")
 		}
-		c.words("limits", id, field+"/says", l.Says)
-		c.condition("limits", id, field+"/where", "limit/"+Name(id), l.Where)
-		c.condition("limits", id, field+"/condition", "limit/"+Name(id), l.Condition)
+		c.words(kind, id, field+"/says", l.Says)
+		c.condition(kind, id, field+"/where", kind+"/"+Name(id), l.Where)
+		c.condition(kind, id, field+"/condition", kind+"/"+Name(id), l.Condition)
+	})
+}
+
+func (c *checker) naming() {
+	bodies(c.m.Naming, func(id, field string, n *Naming) {
+		c.words("naming", id, field+"/says", n.Says)
+		if (n.Ingredients == nil) == (n.Condition == nil) {
+			c.bad("naming", id, field, "must be about ingredients, or have a condition of the product's name")
+		}
+		c.condition("naming", id, field+"/where", "naming/"+Name(id), n.Where)
+		c.condition("naming", id, field+"/condition", "naming/"+Name(id), n.Condition)
 	})
 }
 

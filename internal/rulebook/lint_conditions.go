@@ -70,6 +70,8 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 			if p.N < 1 || p.N > len(p.Parts) {
 				bad("%d of %d conditions cannot hold", p.N, len(p.Parts))
 			}
+		case OpSize:
+			c.size(kind, id, field, p)
 		case OpFact:
 			if p.Is == "" && p.Relation.Relative() {
 				bad("a measured fact is compared with an amount only")
@@ -87,11 +89,28 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 }
 
 func (c *checker) meets(kind, id, field, node string, p *Condition) {
-	if !slices.ContainsFunc(c.m.Claims, func(r Rule[Claim]) bool { return r.ID == p.Name }) {
+	same := func(r Rule[Claim]) bool { return r.ID == p.Name }
+	if !slices.ContainsFunc(c.m.Claims, same) && !slices.ContainsFunc(c.m.HealthClaims, same) {
 		c.bad(kind, id, field, "%q is no claim of this market", p.Name)
 	}
 	if p.Subject == "" {
 		c.depend(node, "claim/"+Name(p.Name))
+	}
+}
+
+func (c *checker) size(kind, id, field string, p *Condition) {
+	if !slices.Contains([]string{"package", "serving", "unit"}, p.Name) {
+		c.bad(kind, id, field, "%q is none of package, serving, unit", p.Name)
+	}
+	dim := p.Threshold.Unit.Dimension()
+	switch {
+	case p.As == "share of reference amount" && dim == quantity.Percent:
+	case p.As == "" && (dim == quantity.Mass || dim == quantity.Volume):
+	default:
+		c.bad(kind, id, field, "compares with %s as %q; a mass, a volume or a share of reference amount is wanted", p.Threshold, p.As)
+	}
+	if p.Relation.Relative() {
+		c.bad(kind, id, field, "a size is compared with an amount only")
 	}
 }
 

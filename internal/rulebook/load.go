@@ -176,6 +176,12 @@ func (l *loader) kind(m *Rules, name, dir, kind string, b []byte) {
 		m.Disclosures = rules[Disclosure](l, name, dir, "disclosure", b)
 	case "limits":
 		m.Limits = rules[Limit](l, name, dir, "limit", b)
+	case "serving":
+		m.Serving = rules[Limit](l, name, dir, "serving", b)
+	case "health_claims":
+		m.HealthClaims = rules[Claim](l, name, dir, "health-claim", b)
+	case "naming":
+		m.Naming = rules[Naming](l, name, dir, "naming", b)
 	default:
 		l.problem(name, "", "", "is of no known kind")
 	}

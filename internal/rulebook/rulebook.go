@@ -225,7 +225,55 @@ type Declaration struct {
 	Number     map[string]Number `json:"number"` // by language
 	Lines      []Line            `json:"lines"`
 	Together   [][]string        `json:"together,omitzero"` // lines that all stand once one of them does
+	Simplified *Simplified       `json:"simplified,omitzero"`
+	Servings   *Servings         `json:"servings per package,omitzero"`
 	Statements []Statement       `json:"statements,omitzero"`
+}
+
+// Simplified is the shorter form a law allows when enough of its nutrients are insignificant.
+type Simplified struct {
+	Name   Words           `json:"name"`
+	Where  *Condition      `json:"where,omitzero"`
+	Needed int             `json:"at least"` // so many of Of must be insignificant
+	Of     []Insignificant `json:"of"`
+	Keeps  []string        `json:"keeps"` // lines that stay in any case
+	Says   Words           `json:"says"`  // with {names} of what is left out; empty where nothing need be said
+}
+
+// Insignificant says when a quantity counts as insignificant.
+type Insignificant struct {
+	Quantity string     `json:"quantity"`
+	If       *Condition `json:"if"`
+}
+
+// Servings is how many servings a package holds, rounded by its own bands of plain numbers.
+type Servings struct {
+	Bands []CountBand `json:"bands"`
+	Text  Words       `json:"text"`  // "{n} servings per container"
+	About Words       `json:"about"` // "about {n}", where the number was rounded
+}
+
+// A CountBand is a step of a rounded count.
+type CountBand struct {
+	Below   *decimal.Decimal `json:"below,omitzero"`
+	AtMost  *decimal.Decimal `json:"at most,omitzero"`
+	Nearest decimal.Decimal  `json:"nearest"`
+}
+
+// A Naming says how an ingredient must be named, or which name the product may bear.
+type Naming struct {
+	Ingredients *IngredientTest `json:"ingredients,omitzero"` // the ingredients it is about; nil is the product
+	Where       *Condition      `json:"where,omitzero"`
+	Condition   *Condition      `json:"condition,omitzero"` // of the product's name
+	Name        Words           `json:"name,omitzero"`
+	Says        Words           `json:"says"`
+}
+
+// An IngredientTest picks ingredients by how their fat was processed.
+type IngredientTest struct {
+	Process     []string         `json:"process"`
+	IodineAbove *decimal.Decimal `json:"iodine value above,omitzero"`
+	IodineUpTo  *decimal.Decimal `json:"iodine value at most,omitzero"`
 }
 
 // A Number is how numbers look in a language.
