@@ -46,7 +46,7 @@ var Facts = []FactRule{
 	{Name: "replaced food has added salt", Kind: YesNo, Says: "the food that this one resembles and replaces is normally processed with salt"},
 	{Name: "protein level reached after correction for quality", Kind: YesNo, Says: "the protein level of the claim is reached after correction for digestibility and amino acids"},
 	{Name: "named food in the meal meets the level", Kind: YesNo, Says: "the meal contains a food that meets the level of the claim, and the claim names it"},
-	{Name: "food group amounts for healthy reached", Kind: YesNo, Says: "the food holds the food-group amounts that the claim “healthy” asks for"},
+	{Name: "food group amounts for healthy reached", Kind: YesNo, Says: "the food-group amounts and the nutrient limits of the claim “healthy” (2024 text) are met"},
 	{Name: "spreadable fat", Kind: OneOf, Values: []string{"milk fat", "other fat", "blend", "no"}, Says: "the product is a spreadable fat, and of which group of fats"},
 	{Name: "kind of food", Kind: OneOf, Values: []string{"fat or oil", "fruit or vegetable", "dairy product", "mayonnaise or dressing", "snack bar", "other food"}, Says: "which kind of food, where a rule names kinds"},
 	{Name: "trans origin", Kind: OneOf, Values: []string{"ruminant", "industrial"}, Says: "where all trans fatty acids of the product come from"},
