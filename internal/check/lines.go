@@ -255,6 +255,9 @@ func (v view) terms(l *rulebook.Line) map[string]string {
 	return out
 }
 
+// mostNeeds bounds the list of what is missing: who has so many gaps needs no longer list.
+const mostNeeds = 50
+
 // needs names the ingredients on whose data variables depend.
 func (m *market) needs(vars []*quantity.Variable) []string {
 	var out []string
@@ -267,8 +270,13 @@ func (m *market) needs(vars []*quantity.Variable) []string {
 		}
 	}
 	for _, x := range vars {
+		if len(out) > mostNeeds {
+			break
+		}
 		add(m.c.batch, "", x)
-		for _, n := range sortedKeys(m.c.refs) {
+	}
+	for _, n := range sortedKeys(m.c.refs) {
+		for _, x := range vars {
 			add(m.c.refs[n], "reference food ", x)
 		}
 	}

@@ -302,10 +302,7 @@ func (r *Report) Outcome() int {
 	return 0
 }
 
-func exactText(r quantity.Ratio) string {
-	d, _ := r.Shown()
-	return d.String()
-}
+func exactText(r quantity.Ratio) string { return r.Text() }
 
 func text(r quantity.Ratio) *string {
 	s := exactText(r)

@@ -1,8 +1,6 @@
 package claim
 
 import (
-	"github.com/shopspring/decimal"
-
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
 )
@@ -69,7 +67,7 @@ func (x evaluator) compareOn(c *rulebook.Condition, name string, per rulebook.Pe
 		return x.relative(c, per, says, s)
 	}
 	cmp := x.comparison(c, says)
-	t := decideSides(c.Relation, s, quantity.FromDecimal(threshold(c)), cmp)
+	t := decideSides(c.Relation, s, c.Limit(), cmp)
 	return Result{Truth: t, Says: says, Compare: cmp}
 }
 
@@ -80,9 +78,6 @@ func (x evaluator) comparison(c *rulebook.Condition, says string) *Comparison {
 	}
 	return &Comparison{Says: says, Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
 }
-
-// threshold is the threshold in base units.
-func threshold(c *rulebook.Condition) decimal.Decimal { return c.Threshold.Base() }
 
 // measure builds the two sides for one food: the value is num/den in base units of the threshold.
 func measure(c *rulebook.Condition, per rulebook.Per, s Subject, x Context) side {

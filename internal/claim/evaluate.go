@@ -171,7 +171,7 @@ func (x evaluator) fact(c *rulebook.Condition) quantity.Truth {
 	if !ok {
 		return quantity.Open
 	}
-	return sign(c.Relation, quantity.Exactly(v.Sub(quantity.FromDecimal(threshold(c)))))
+	return sign(c.Relation, quantity.Exactly(v.Sub(c.Limit())))
 }
 
 // size compares package, serving or unit with a mass, a volume or a share of the reference amount.

@@ -25,7 +25,7 @@ func (x evaluator) relative(c *rulebook.Condition, per rulebook.Per, says string
 }
 
 func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *Comparison) quantity.Truth {
-	t := quantity.FromDecimal(threshold(c))
+	t := c.Limit()
 	change := product.Sub(other)
 	percent := t.Mul(quantity.Scaled(1, -2))
 	switch c.Relation {

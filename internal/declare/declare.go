@@ -44,7 +44,7 @@ func Round(bands []rulebook.Band, ties quantity.Ties, exact quantity.Ratio, unit
 	var out []Outcome
 	for i := range bands {
 		b := &bands[i]
-		if !takes(b, exact) {
+		if !b.Takes(exact) {
 			continue
 		}
 		t := quantity.Yes
@@ -62,16 +62,6 @@ func Round(bands []rulebook.Band, ties quantity.Ties, exact quantity.Ratio, unit
 	return out
 }
 
-func takes(b *rulebook.Band, exact quantity.Ratio) bool {
-	switch {
-	case b.Below != nil:
-		return exact.CmpDecimal(b.Below.Base()) < 0
-	case b.AtMost != nil:
-		return exact.CmpDecimal(b.AtMost.Base()) <= 0
-	}
-	return true
-}
-
 func outcome(bands []rulebook.Band, i int, ties quantity.Ties, exact quantity.Ratio, unit quantity.Unit) Outcome {
 	o := Outcome{Printed: print1(bands, i, ties, exact, unit)}
 	for j := range bands[i].Or {
@@ -87,8 +77,8 @@ func print1(bands []rulebook.Band, i int, ties quantity.Ties, exact quantity.Rat
 		return p
 	}
 	rounded := quantity.FromDecimal(p.Value.Mul(unit.Scale()))
-	for j := i + 1; j < len(bands) && !takes(&bands[j-1], rounded); j++ {
-		if takes(&bands[j], rounded) && bands[j].Nearest != nil {
+	for j := i + 1; j < len(bands) && !bands[j-1].Takes(rounded); j++ {
+		if bands[j].Takes(rounded) && bands[j].Nearest != nil {
 			p.Step, _ = bands[j].Nearest.In(unit)
 			break
 		}
@@ -97,7 +87,7 @@ func print1(bands []rulebook.Band, i int, ties quantity.Ties, exact quantity.Rat
 }
 
 func apply(b *rulebook.Band, ties quantity.Ties, exact quantity.Ratio, unit quantity.Unit) Printed {
-	inUnit := exact.Mul(quantity.Scaled(1, -unit.Scale().Exponent()))
+	inUnit := exact.Mul(quantity.Scaled(1, -unit.Scale().Exponent())) // a power of ten for all units a label prints
 	switch {
 	case b.Declare != nil:
 		v, _ := b.Declare.In(unit)

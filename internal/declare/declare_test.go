@@ -14,9 +14,9 @@ import (
 	"gramlaw/rules"
 )
 
-func bands(t *testing.T, s string) []rulebook.Band {
+func bands(t *testing.T, s string) rulebook.Bands {
 	t.Helper()
-	var b []rulebook.Band
+	var b rulebook.Bands
 	if err := json.Unmarshal([]byte(s), &b); err != nil {
 		t.Fatal(err)
 	}

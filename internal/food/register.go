@@ -133,6 +133,14 @@ func (id ID) Within() iter.Seq[ID] {
 	return slices.Values(register[id-1].within)
 }
 
+// WithinList is Within as a slice that must not be changed.
+func (id ID) WithinList() []ID {
+	if !id.valid() {
+		return nil
+	}
+	return register[id-1].within
+}
+
 // DisjointFrom lists the components the register names as sharing nothing with
 // this one. IsDisjoint knows the consequences for their parts as well.
 func (id ID) DisjointFrom() iter.Seq[ID] {
@@ -186,6 +194,21 @@ func (s *Set) Add(id ID) {
 
 // Has tells whether the set holds the component.
 func (s Set) Has(id ID) bool { return id.valid() && s[id/64]&(1<<(id%64)) != 0 }
+
+// Next is the first component of the set after another; start with 0.
+func (s *Set) Next(after ID) (ID, bool) {
+	i := int(after) + 1
+	for w := i / 64; w < len(s); w++ {
+		word := s[w]
+		if w == i/64 {
+			word &= ^uint64(0) << (i % 64)
+		}
+		if word != 0 {
+			return ID(w*64 + bits.TrailingZeros64(word)), true
+		}
+	}
+	return 0, false
+}
 
 // All lists the set in the order of IDs.
 func (s Set) All() iter.Seq[ID] {

@@ -118,6 +118,11 @@ func slowRound(r Ratio, step decimal.Decimal, ties Ties) decimal.Decimal {
 	return decimal.NewFromBigInt(k, 0).Mul(step)
 }
 
+func slowText(r Ratio) string {
+	d, _ := r.Shown()
+	return d.String()
+}
+
 // The arithmetic agrees with the rational numbers of the standard library, a general-purpose reference.
 func FuzzRatioAgreesWithRat(f *testing.F) {
 	f.Add(int64(3), int8(-2), uint16(6), int64(-5), int8(1), uint16(6))
@@ -133,6 +138,7 @@ func FuzzRatioAgreesWithRat(f *testing.F) {
 			"quo":     b.IsZero() || equal(a.Quo(b), new(big.Rat).Quo(x, y)),
 			"cmp":     a.Cmp(b) == x.Cmp(y),
 			"round":   a.Round(decimal.New(5, -2), TiesUp).Equal(slowRound(a, decimal.New(5, -2), TiesUp)) && a.Round(decimal.New(25, -1), TiesEven).Equal(slowRound(a, decimal.New(25, -1), TiesEven)),
+			"text":    a.Text() == slowText(a),
 			"reduced": equal(a.Reduced(), x),
 			"over":    equal(a.Over(new(big.Int).Mul(a.den(), b.den())), x),
 			"fraction": b.IsZero() || equal(a.MulFraction(b.num(), big.NewInt(7)),

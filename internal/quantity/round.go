@@ -1,7 +1,9 @@
 package quantity
 
 import (
+	"math"
 	"math/big"
+	"strconv"
 
 	"github.com/shopspring/decimal"
 )
@@ -133,6 +135,63 @@ func (r Ratio) Exact() Exact {
 		x.Num, x.Den = new(big.Int).Quo(n, g).String(), new(big.Int).Quo(d, g).String()
 	}
 	return x
+}
+
+// Text is Shown as text, without big integers where words suffice.
+func (r Ratio) Text() string {
+	if s, ok := r.text64(); ok {
+		return s
+	}
+	d, _ := r.Shown()
+	return d.String()
+}
+
+// text64 divides digit by digit in words.
+func (r Ratio) text64() (string, bool) {
+	if r.n != nil || r.d != nil && !r.d.IsInt64() || r.s < 0 {
+		return "", false
+	}
+	num, den, ok := uint64(r.s), int64(1), true
+	if r.d != nil {
+		den = r.d.Int64()
+	}
+	if r.e >= 0 {
+		var n int64
+		n, ok = shift64(r.s, r.e)
+		num = uint64(n)
+	} else {
+		den, ok = shift64(den, -r.e)
+	}
+	if !ok || den > math.MaxInt64/10 {
+		return "", false
+	}
+	d := uint64(den)
+	out := strconv.AppendUint(make([]byte, 0, 44), num/d, 10)
+	rest := num % d
+	if rest == 0 {
+		return string(out), true
+	}
+	figures := len(out)
+	if num < d {
+		figures = 0 // zeros in front are no figures
+	}
+	out = append(out, '.')
+	for figures < ShownDigits && rest != 0 {
+		rest *= 10
+		digit := rest / d
+		rest %= d
+		out = append(out, byte('0'+digit))
+		if figures > 0 || digit > 0 {
+			figures++
+		}
+	}
+	for out[len(out)-1] == '0' {
+		out = out[:len(out)-1]
+	}
+	if out[len(out)-1] == '.' {
+		out = out[:len(out)-1]
+	}
+	return string(out), true
 }
 
 // Shown is the ratio as a decimal, complete or cut after 20 significant digits.

@@ -120,16 +120,17 @@ func (l *Leaf) Component(id food.ID) Amount {
 		}
 		return Amount{}
 	}
-	if l.cache == nil {
-		l.cache = make([]*Amount, food.Count+1)
-	}
-	if a := l.cache[id]; a != nil {
-		return *a
+	if at := l.asked[id]; at != 0 {
+		return l.answers[at-1]
 	}
 	a := l.component(id)
-	l.cache[id] = &a
+	l.answers = append(l.answers, a)
+	l.asked[id] = uint16(len(l.answers))
 	return a
 }
+
+// forget drops what was computed, because the leaf's share has changed.
+func (l *Leaf) forget() { l.asked, l.answers, l.acids = [food.Count + 1]uint16{}, nil, nil }
 
 func (l *Leaf) component(id food.ID) Amount {
 	if a, ok := l.folateEquivalents(id); ok {
@@ -196,7 +197,7 @@ func (l *Leaf) byNature(id food.ID) bool {
 // beside it.
 func (l *Leaf) bound(id food.ID) quantity.Ratio {
 	best, any := quantity.Ratio{}, false
-	for whole := range id.Within() {
+	for _, whole := range id.WithinList() {
 		r := l.remainder(id, whole, l.Component(whole).High())
 		if !any || r.Cmp(best) < 0 {
 			best, any = r, true
@@ -209,7 +210,8 @@ func (l *Leaf) bound(id food.ID) quantity.Ratio {
 }
 
 func (l *Leaf) remainder(id, whole food.ID, most quantity.Ratio) quantity.Ratio {
-	for beside := range food.Beside(id, whole, l.known).All() {
+	set := food.Beside(id, whole, l.known)
+	for beside, ok := set.Next(0); ok; beside, ok = set.Next(beside) {
 		most = most.Sub(l.Component(beside).Low())
 	}
 	return quantity.Max(most, quantity.Ratio{})

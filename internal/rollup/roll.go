@@ -183,7 +183,7 @@ func (r *rolled) fat(b *Batch, c *recipe.Change, path string) *Fault {
 }
 
 func (l *Leaf) keepLipids(kept quantity.Ratio) {
-	l.cache, l.acids = nil, nil
+	l.forget()
 	if l.lipidsKept != nil {
 		kept = kept.Mul(*l.lipidsKept)
 	}
@@ -211,7 +211,7 @@ func (b *Batch) commonDenominator() *Fault {
 	}
 	for i, l := range b.Leaves {
 		l.Mass = parts[i].Over(plain)
-		l.cache, l.acids = nil, nil
+		l.forget()
 	}
 	b.Input, b.Mass = b.Input.Reduced(), b.Mass.Reduced()
 	return nil

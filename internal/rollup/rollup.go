@@ -82,7 +82,8 @@ type Leaf struct {
 	entries    []stated
 	place      [food.Count + 1]uint16 // of a component in entries, counted from one
 	known      food.Set
-	cache      []*Amount
+	asked      [food.Count + 1]uint16 // of a component in answers, counted from one
+	answers    []Amount
 	acids      *acids
 	retentions []*recipe.Retention
 	lipidsKept *quantity.Ratio // set where fat was lost

@@ -54,6 +54,7 @@ type Condition struct {
 
 	terms []Term
 	bases []Per
+	limit quantity.Ratio
 
 	// OpDeclared, OpMeets, OpFact
 	Name string // line, rule id or fact
@@ -203,6 +204,7 @@ func (c *Condition) readAtom(r *reader) {
 		text("is", &c.Is)
 		if c.Is == "" {
 			c.readRelation(r)
+			c.Prepare()
 		}
 	case r.m["reference amount"] != nil:
 		c.Op = OpAmount
@@ -221,6 +223,7 @@ func (c *Condition) readAtom(r *reader) {
 		text(string(OpSize), &c.Name)
 		text("as", &c.As)
 		c.readRelation(r)
+		c.Prepare()
 	case r.m[string(OpKind)] != nil:
 		c.Op = OpKind
 		r.into(r.take(string(OpKind)), &c.Kinds)
@@ -268,7 +271,7 @@ func (c *Condition) readCompare(r *reader) {
 
 // Prepare readies a comparison that was not read from a rule. A basis that cannot be read is left to lint.
 func (c *Condition) Prepare() *Condition {
-	c.terms, c.bases = terms(c.Of), nil
+	c.terms, c.bases, c.limit = terms(c.Of), nil, quantity.FromDecimal(c.Threshold.Base())
 	for _, s := range c.Per {
 		p, _ := ParsePer(s)
 		c.bases = append(c.bases, p)
@@ -278,6 +281,9 @@ func (c *Condition) Prepare() *Condition {
 
 // Terms is the comparison's linear form, Bases what it is per.
 func (c *Condition) Terms() []Term { return c.terms }
+
+// Limit is the threshold in base units.
+func (c *Condition) Limit() quantity.Ratio { return c.limit }
 
 // Bases are the parsed entries of Per, in order.
 func (c *Condition) Bases() []Per { return c.bases }

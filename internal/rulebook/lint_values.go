@@ -189,7 +189,7 @@ func (c *checker) bands(id, field string, bands []Band, dim quantity.Dimension) 
 	for i := range bands {
 		b := &bands[i]
 		at := fmt.Sprintf("%s/%d", field, i)
-		edge := b.edge()
+		edge := b.limit()
 		switch {
 		case edge == nil && i < len(bands)-1:
 			c.bad("rounding", id, at, "has no edge but is not the last band")
@@ -217,13 +217,6 @@ func (c *checker) roundingQuantities(id string) []string {
 		}
 	})
 	return out
-}
-
-func (b *Band) edge() *quantity.Amount {
-	if b.Below != nil {
-		return b.Below
-	}
-	return b.AtMost
 }
 
 func (c *checker) band(id, at string, b *Band, dim quantity.Dimension) {

@@ -7,6 +7,7 @@
 package rulebook
 
 import (
+	"github.com/go-json-experiment/json"
 	"github.com/shopspring/decimal"
 
 	"gramlaw/internal/food"
@@ -192,7 +193,7 @@ type Reference struct {
 // A Rounding turns exact values of some quantities into declared ones.
 type Rounding struct {
 	Quantities []string      `json:"quantities"`
-	Bands      []Band        `json:"bands,omitzero"`
+	Bands      Bands         `json:"bands,omitzero"`
 	Ties       quantity.Ties `json:"ties"`
 	TiesSource *Source       `json:"ties source,omitzero"` // where the rule for ties has another source
 	Percent    *Percent      `json:"percent,omitzero"`
@@ -208,14 +209,59 @@ type Band struct {
 	Declare  *quantity.Amount `json:"declare,omitzero"`
 	LessThan *quantity.Amount `json:"less than,omitzero"`
 	Or       []Band           `json:"or,omitzero"` // what else the law allows here, in order of preference; no edges
+
+	edge    quantity.Ratio // in base units
+	bounded bool
 }
+
+// Takes tells whether an exact value in base units falls into the band.
+func (b *Band) Takes(exact quantity.Ratio) bool {
+	switch {
+	case !b.bounded:
+		return true
+	case b.Below != nil:
+		return exact.Cmp(b.edge) < 0
+	}
+	return exact.Cmp(b.edge) <= 0
+}
+
+// prepare readies the edges of bands.
+func prepare(bands []Band) {
+	for i := range bands {
+		b := &bands[i]
+		if a := b.limit(); a != nil {
+			b.edge, b.bounded = quantity.FromDecimal(a.Base()), true
+		}
+	}
+}
+
+func (b *Band) limit() *quantity.Amount {
+	if b.Below != nil {
+		return b.Below
+	}
+	return b.AtMost
+}
+
+// UnmarshalJSON readies the bands it reads.
+func (b *Bands) UnmarshalJSON(doc []byte) error {
+	var list []Band
+	if err := json.Unmarshal(doc, &list, json.RejectUnknownMembers(true)); err != nil {
+		return err
+	}
+	prepare(list)
+	*b = list
+	return nil
+}
+
+// Bands are the steps of a rounding, edges rising.
+type Bands []Band
 
 // A Percent is the per cent of the reference value beside an amount.
 type Percent struct {
 	From   string     `json:"from"`        // "exact" or "declared": the amount it is computed from
 	Or     string     `json:"or,omitzero"` // the other one, where the law allows both
 	ZeroIf *Condition `json:"zero if,omitzero"`
-	Bands  []Band     `json:"bands"`           // edges and steps in %
+	Bands  Bands      `json:"bands"`           // edges and steps in %
 	Source *Source    `json:"source,omitzero"` // where it differs from the rounding's
 }
 
