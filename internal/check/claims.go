@@ -336,7 +336,7 @@ func (v view) amountOfQuantity(q string) (string, bool) {
 		return "", false
 	}
 	u := v.unit(q)
-	amount := v.columns[0].on(l).Known.Mul(quantity.Scaled(1, -u.Scale().Exponent()))
+	amount := v.columns[0].on(l).Known.In(u)
 	return amount.RoundFigures(3, quantity.TiesUp).String() + " " + u.String(), true
 }
 

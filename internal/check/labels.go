@@ -84,7 +84,7 @@ func lineOf(law *rulebook.Law, tag string) (*rulebook.Line, bool) {
 
 // per100 brings an interval per serving to 100 g. Ends are cut to decimals outward, so that nothing is lost.
 func per100(tag string, low, high decimal.Decimal, serving quantity.Amount) recipe.Value {
-	g := quantity.FromDecimal(serving.Base())
+	g := serving.Ratio()
 	per := func(d decimal.Decimal) quantity.Ratio {
 		return quantity.FromDecimal(d).Mul(quantity.FromInt(100)).Quo(g)
 	}

@@ -104,9 +104,9 @@ func (m *market) presumed() []Presumed {
 func (m *market) grams(a quantity.Amount, stated *quantity.Amount) (quantity.Ratio, bool) {
 	switch {
 	case a.Unit.Dimension() == quantity.Mass:
-		return quantity.FromDecimal(a.Base()), true
+		return a.Ratio(), true
 	case stated != nil:
-		return quantity.FromDecimal(stated.Base()), true
+		return stated.Ratio(), true
 	case a.Unit.Dimension() != quantity.Volume:
 		return quantity.Ratio{}, false
 	}
@@ -215,7 +215,7 @@ func (v view) ReferenceValue(q string) (quantity.Ratio, bool) {
 		return quantity.Ratio{}, false
 	}
 	a, ok := r.Body.Amounts[v.population()]
-	return quantity.FromDecimal(a.Base()), ok
+	return a.Ratio(), ok
 }
 
 // stated compares a fact the recipe states.
@@ -257,7 +257,7 @@ func (v view) Measured(name string) (quantity.Ratio, bool) {
 	if !ok || f.Number == nil {
 		return quantity.Ratio{}, false
 	}
-	return quantity.FromDecimal(f.Number.Base()), true
+	return f.Number.Ratio(), true
 }
 
 // ReferenceAmount tells whether the reference amount is at most one of the amounts in its own kind of unit.

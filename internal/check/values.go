@@ -12,7 +12,7 @@ import (
 func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	u, unit := v.unit(l.line.Quantity), l.line.Unit
 	r, ok := v.law.RoundingOf(l.line.Quantity)
-	inUnit := func(r quantity.Ratio) quantity.Ratio { return r.Mul(quantity.Scaled(1, -u.Scale().Exponent())) }
+	inUnit := func(r quantity.Ratio) quantity.Ratio { return r.In(u) }
 	out := Value{Basis: c.ID, Unit: u.String(), Alternatives: []string{}}
 	if mid, known := x.Central(); known {
 		out.setExact(inUnit(mid))
@@ -170,7 +170,7 @@ func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties qua
 				values = append(values, x.Low(), x.High()) // "less than 5 mg" is no number to take a share of
 				continue
 			}
-			values = append(values, quantity.FromDecimal(d.Value.Mul(u.Scale())))
+			values = append(values, quantity.Amount{Value: d.Value, Unit: u}.Ratio())
 		}
 	} else {
 		values = []quantity.Ratio{x.Low(), x.High()}
@@ -194,7 +194,7 @@ func (v view) contributions(q string, c column, u quantity.Unit) []Contribution 
 		if !ok {
 			return nil
 		}
-		x := c.on(amount).Mul(quantity.Scaled(1, -u.Scale().Exponent()))
+		x := c.on(amount).Mul(quantity.FromInt(1).In(u))
 		one := Contribution{Ingredient: strings.TrimSpace(l.Path), Low: exactText(x.Low()), High: exactText(x.High())}
 		if mid, known := x.Central(); known {
 			one.Value = text(mid)

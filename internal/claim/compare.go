@@ -117,7 +117,7 @@ func (s side) per(p rulebook.Per, food Subject) side {
 	if p == (rulebook.Per{}) {
 		return s
 	}
-	amount := quantity.FromDecimal(p.Amount.Base())
+	amount := p.Amount.Ratio()
 	of := p.Quantity
 	switch p.Amount.Unit.Dimension() {
 	case quantity.EnergyKcal:

@@ -76,7 +76,7 @@ func print1(bands []rulebook.Band, i int, ties quantity.Ties, exact quantity.Rat
 	if p.Step.IsZero() {
 		return p
 	}
-	rounded := quantity.FromDecimal(p.Value.Mul(unit.Scale()))
+	rounded := quantity.Amount{Value: p.Value, Unit: unit}.Ratio()
 	for j := i + 1; j < len(bands) && !bands[j-1].Takes(rounded); j++ {
 		if bands[j].Takes(rounded) && bands[j].Nearest != nil {
 			p.Step, _ = bands[j].Nearest.In(unit)
@@ -87,7 +87,7 @@ func print1(bands []rulebook.Band, i int, ties quantity.Ties, exact quantity.Rat
 }
 
 func apply(b *rulebook.Band, ties quantity.Ties, exact quantity.Ratio, unit quantity.Unit) Printed {
-	inUnit := exact.Mul(quantity.Scaled(1, -unit.Scale().Exponent())) // a power of ten for all units a label prints
+	inUnit := exact.In(unit) // a power of ten for all units a label prints
 	switch {
 	case b.Declare != nil:
 		v, _ := b.Declare.In(unit)

@@ -90,3 +90,23 @@ func (a *Amount) UnmarshalText(b []byte) error {
 
 // MarshalText writes what UnmarshalText reads.
 func (a Amount) MarshalText() ([]byte, error) { return []byte(a.String()), nil }
+
+// Ratio is the amount in the base unit of its dimension; exact.
+func (a Amount) Ratio() Ratio {
+	r := FromDecimal(a.Value)
+	if units[a.Unit].household {
+		return r.Times(a.Unit.Scale())
+	}
+	if !r.IsZero() {
+		r.e += units[a.Unit].scale.Exponent()
+	}
+	return r
+}
+
+// In is a value in base units as a number of u; u must be a power of ten of its base unit.
+func (r Ratio) In(u Unit) Ratio {
+	if !r.IsZero() {
+		r.e -= units[u].scale.Exponent()
+	}
+	return r
+}

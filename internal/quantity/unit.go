@@ -38,25 +38,27 @@ const (
 type unitFacts struct {
 	name  string
 	dim   Dimension
-	scale decimal.Decimal // how many base units (g, mL, kcal, kJ, %)
+	scale decimal.Decimal // how many base units (g, mL, kcal, kJ, %); a power of ten but for household measures
+
+	household bool
 }
 
 func tenTo(e int32) decimal.Decimal { return decimal.New(1, e) }
 
 var units = [...]unitFacts{
-	NoUnit:      {"", NoDimension, tenTo(0)},
-	Gram:        {"g", Mass, tenTo(0)},
-	Milligram:   {"mg", Mass, tenTo(-3)},
-	Microgram:   {"µg", Mass, tenTo(-6)},
-	Kilogram:    {"kg", Mass, tenTo(3)},
-	Millilitre:  {"mL", Volume, tenTo(0)},
-	Litre:       {"L", Volume, tenTo(3)},
-	Teaspoon:    {"tsp", Volume, decimal.New(5, 0)},
-	Tablespoon:  {"tbsp", Volume, decimal.New(15, 0)},
-	Cup:         {"cup", Volume, decimal.New(240, 0)},
-	Kilocalorie: {"kcal", EnergyKcal, tenTo(0)},
-	Kilojoule:   {"kJ", EnergyKJ, tenTo(0)},
-	PerCent:     {"%", Percent, tenTo(0)},
+	NoUnit:      {"", NoDimension, tenTo(0), false},
+	Gram:        {"g", Mass, tenTo(0), false},
+	Milligram:   {"mg", Mass, tenTo(-3), false},
+	Microgram:   {"µg", Mass, tenTo(-6), false},
+	Kilogram:    {"kg", Mass, tenTo(3), false},
+	Millilitre:  {"mL", Volume, tenTo(0), false},
+	Litre:       {"L", Volume, tenTo(3), false},
+	Teaspoon:    {"tsp", Volume, decimal.New(5, 0), true},
+	Tablespoon:  {"tbsp", Volume, decimal.New(15, 0), true},
+	Cup:         {"cup", Volume, decimal.New(240, 0), true},
+	Kilocalorie: {"kcal", EnergyKcal, tenTo(0), false},
+	Kilojoule:   {"kJ", EnergyKJ, tenTo(0), false},
+	PerCent:     {"%", Percent, tenTo(0), false},
 }
 
 // ParseUnit knows g, mg, µg (also ug, mcg), kg, mL (also ml), L (also l), tsp, tbsp, cup, kcal, kJ and %.

@@ -63,7 +63,7 @@ func (b *Batch) part(p recipe.Part, path string, kept []*recipe.Retention) (roll
 func grams(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
 	switch in.Amount.Unit.Dimension() {
 	case quantity.Mass:
-		return quantity.FromDecimal(in.Amount.Base()), nil
+		return in.Amount.Ratio(), nil
 	case quantity.Volume:
 		if in.Density.IsPositive() {
 			return quantity.FromDecimal(in.Amount.Base().Mul(in.Density)), nil
@@ -108,7 +108,7 @@ func (b *Batch) yield(r *rolled, y *recipe.Yield, path string) *Fault {
 		return nil
 	}
 	if y.Mass != nil {
-		final := quantity.FromDecimal(y.Mass.Base())
+		final := y.Mass.Ratio()
 		r.water(b, final.Sub(r.input), path)
 		return nil
 	}
@@ -133,7 +133,7 @@ func changed(c *recipe.Change, input quantity.Ratio) quantity.Ratio {
 	if c.Amount.Unit == quantity.PerCent {
 		return input.Times(c.Amount.Value.Shift(-2))
 	}
-	return quantity.FromDecimal(c.Amount.Base())
+	return c.Amount.Ratio()
 }
 
 // water adds water that came, or a negative amount that went.

@@ -271,7 +271,7 @@ func (c *Condition) readCompare(r *reader) {
 
 // Prepare readies a comparison that was not read from a rule. A basis that cannot be read is left to lint.
 func (c *Condition) Prepare() *Condition {
-	c.terms, c.bases, c.limit = terms(c.Of), nil, quantity.FromDecimal(c.Threshold.Base())
+	c.terms, c.bases, c.limit = terms(c.Of), nil, c.Threshold.Ratio()
 	for _, s := range c.Per {
 		p, _ := ParsePer(s)
 		c.bases = append(c.bases, p)

@@ -230,7 +230,7 @@ func prepare(bands []Band) {
 	for i := range bands {
 		b := &bands[i]
 		if a := b.limit(); a != nil {
-			b.edge, b.bounded = quantity.FromDecimal(a.Base()), true
+			b.edge, b.bounded = a.Ratio(), true
 		}
 	}
 }
