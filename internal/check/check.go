@@ -39,6 +39,7 @@ type checker struct {
 	refs    map[string]*rollup.Batch
 	habits  *habits
 	laws    map[string]*rulebook.Law // of labels, by market and date
+	shared  map[shared][]part
 }
 
 // Check judges a recipe. Faults are about the recipe or the request and point into the document ("/…") or name the
@@ -47,7 +48,7 @@ func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Fa
 	if q.Transition == "" {
 		q.Transition = rulebook.WhenRequired
 	}
-	c := &checker{recipe: r, book: book, request: q, refs: map[string]*rollup.Batch{}, laws: map[string]*rulebook.Law{}}
+	c := &checker{recipe: r, book: book, request: q, refs: map[string]*rollup.Batch{}, laws: map[string]*rulebook.Law{}, shared: map[shared][]part{}}
 	if faults := c.accept(); len(faults) > 0 {
 		return nil, faults
 	}

@@ -191,12 +191,10 @@ func (m *market) table() Table {
 	}
 	v := m.as(m.product)
 	for _, l := range m.order {
-		line, ok := v.reportLine(l)
-		switch {
-		case !ok:
-		case line.Presence == "optional" && line.Status != "determined":
-			t.NotKnown = append(t.NotKnown, OpenLine{line.Quantity, line.Term, line.Needs})
-		default:
+		if v.open(l) {
+			q, _ := v.subject.Quantity(l.line.Quantity)
+			t.NotKnown = append(t.NotKnown, OpenLine{l.line.Quantity, l.line.Terms[v.language()][0], v.needs(q.Variables())})
+		} else if line, ok := v.reportLine(l); ok {
 			t.Lines = append(t.Lines, line)
 		}
 		t.Title, t.Rule = l.rule.Body.Title.In(m.language()), l.rule.ID
@@ -210,6 +208,20 @@ func (m *market) table() Table {
 }
 
 func (m *market) language() string { return m.law.Market.Languages[0] }
+
+// open tells whether an optional line's print is not determined on some column.
+func (v view) open(l *lineState) bool {
+	q, ok := v.subject.Quantity(l.line.Quantity)
+	if !ok || q.Determined() || l.line.Presence == "forbidden" || v.stands(l) {
+		return false
+	}
+	r, ok := v.law.RoundingOf(l.line.Quantity)
+	if !ok || len(r.Body.Bands) == 0 {
+		return false
+	}
+	u := v.unit(l.line.Quantity)
+	return slices.ContainsFunc(v.columns, func(c column) bool { return c.known && !v.outcomes(r.Body, c.on(q), u).determined() })
+}
 
 func (v view) reportLine(l *lineState) (Line, bool) {
 	q, ok := v.subject.Quantity(l.line.Quantity)

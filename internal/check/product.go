@@ -82,6 +82,11 @@ func (p *product) parts(name string) ([]part, bool) {
 	if !ok {
 		return nil, false
 	}
+	key := shared{p.batch, d.Body.Key()}
+	if parts, ok := p.m.c.shared[key]; ok && key.definition != "" {
+		p.leaves[name] = parts
+		return parts, true
+	}
 	parts := make([]part, len(p.batch.Leaves))
 	for i, l := range p.batch.Leaves {
 		part, ok := p.resolve(d.Body, l)
@@ -91,7 +96,14 @@ func (p *product) parts(name string) ([]part, bool) {
 		parts[i] = part
 	}
 	p.leaves[name] = parts
+	p.m.c.shared[key] = parts
 	return parts, true
+}
+
+// shared names what all markets with one definition have in common.
+type shared struct {
+	batch      *rollup.Batch
+	definition string
 }
 
 // resolve takes the first way whose data are complete for a leaf, else the last with what is missing between its bounds.

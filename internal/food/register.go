@@ -171,8 +171,15 @@ func Beside(part, whole ID, known Set) Set {
 		return picked
 	}
 	candidates := register[part-1].apart.and(known)
+	left := candidates.count()
 	for _, id := range parentsFirst {
-		if !candidates.Has(id) || (whole != 0 && !id.IsWithin(whole)) {
+		if left == 0 {
+			break
+		}
+		if !candidates.Has(id) {
+			continue
+		}
+		if left--; whole != 0 && !id.IsWithin(whole) {
 			continue
 		}
 		if register[id-1].apart.containsAll(picked) {
@@ -221,6 +228,13 @@ func (s Set) All() iter.Seq[ID] {
 			}
 		}
 	}
+}
+
+func (s Set) count() (n int) {
+	for _, word := range s {
+		n += bits.OnesCount64(word)
+	}
+	return n
 }
 
 func (s Set) and(t Set) Set {

@@ -123,6 +123,9 @@ func (l *Leaf) Component(id food.ID) Amount {
 	if at := l.asked[id]; at != 0 {
 		return l.answers[at-1]
 	}
+	if l.answers == nil {
+		l.answers = make([]Amount, 0, 96) // about what three markets ask
+	}
 	a := l.component(id)
 	l.answers = append(l.answers, a)
 	l.asked[id] = uint16(len(l.answers))

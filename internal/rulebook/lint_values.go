@@ -60,6 +60,7 @@ func (c *checker) definition(id, field string, d *Definition) {
 	for i := range d.Ways {
 		c.way(id, fmt.Sprintf("%s/ways/%d", field, i), &d.Ways[i])
 	}
+	d.key = d.makeKey()
 }
 
 func (c *checker) way(id, field string, w *Way) {

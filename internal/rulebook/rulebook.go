@@ -121,6 +121,29 @@ type Definition struct {
 	EnergyAs    string `json:"energy as,omitzero"`    // quantity whose energy factor a share of energy uses
 	Ways        []Way  `json:"ways"`
 	Claimless   bool   `json:"no claims,omitzero"` // values from the last way cannot carry a claim
+
+	key string
+}
+
+// Key is equal for definitions that give the same for every ingredient; empty where that depends on other definitions of
+// the market.
+func (d *Definition) Key() string { return d.key }
+
+// makeKey writes the ways out.
+func (d *Definition) makeKey() string {
+	key := d.ExpressedAs
+	for i := range d.Ways {
+		w := &d.Ways[i]
+		if w.Of != nil {
+			return ""
+		}
+		b, err := json.Marshal(Way{Acids: w.Acids, Sum: w.Sum}, json.Deterministic(true))
+		if err != nil {
+			return ""
+		}
+		key += string(b)
+	}
+	return key
 }
 
 // A Way is one route to a quantity. Exactly one of Acids, Sum and Of is set.
