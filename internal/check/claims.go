@@ -340,19 +340,23 @@ func (v view) amountOfQuantity(q string) (string, bool) {
 	return amount.RoundFigures(3, quantity.TiesUp).String() + " " + u.String(), true
 }
 
-// difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number.
+// difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number. Of a range it is
+// the smallest change, so that what is stated is true at least.
 func (v view) difference(q string) (string, bool) {
 	own, ok1 := v.subject.Quantity(q)
 	other, ok2 := v.ref.Quantity(q)
-	if !ok1 || !ok2 || !own.Determined() || !other.Determined() || other.Known.Sign() <= 0 {
+	if !ok1 || !ok2 || other.Low().Sign() <= 0 {
 		return "", false
 	}
-	a, b := own.Known.Quo(v.subject.Mass()), other.Known.Quo(v.ref.Mass())
-	d := b.Sub(a)
-	if d.Sign() < 0 {
-		d = d.Neg()
+	per := func(r, mass quantity.Ratio) quantity.Ratio { return r.Quo(mass) }
+	mine, theirs := v.subject.Mass(), v.ref.Mass()
+	less := per(other.Low(), theirs).Sub(per(own.High(), mine)).Quo(per(other.Low(), theirs))
+	more := per(own.Low(), mine).Sub(per(other.High(), theirs)).Quo(per(other.High(), theirs))
+	d := quantity.Max(less, more)
+	if d.Sign() <= 0 {
+		return "", false
 	}
-	return d.Mul(quantity.FromInt(100)).Quo(b).Floor(0).String() + " %", true
+	return d.Mul(quantity.FromInt(100)).Floor(0).String() + " %", true
 }
 
 // alsoPermitted lists claims nobody asked for that the product meets on its own.
