@@ -3,12 +3,14 @@ module gramlaw
 go 1.26.8
 
 require (
-	github.com/aws/aws-lambda-go v1.55.1 // indirect
-	github.com/go-json-experiment/json v1.27.2 // indirect
-	github.com/rogpeppe/go-internal v1.16.0 // indirect
-	github.com/santhosh-tekuri/jsonschema/v5 v5.3.1 // indirect
-	github.com/shopspring/decimal v1.6.0 // indirect
+	github.com/go-json-experiment/json v1.27.2
+	github.com/rogpeppe/go-internal v1.16.0
+	github.com/santhosh-tekuri/jsonschema/v5 v5.3.1
+	github.com/shopspring/decimal v1.6.0
+	golang.org/x/text v0.44.0
+)
+
+require (
 	golang.org/x/sys v0.49.0 // indirect
-	golang.org/x/text v0.44.0 // indirect
 	golang.org/x/tools v0.52.0 // indirect
 )

@@ -2,6 +2,7 @@ package check
 
 import (
 	"fmt"
+	"slices"
 
 	"github.com/shopspring/decimal"
 
@@ -72,14 +73,15 @@ func invert(law *rulebook.Law, tag string, v recipe.Value, serving quantity.Amou
 }
 
 func lineOf(law *rulebook.Law, tag string) (*rulebook.Line, bool) {
-	for _, d := range law.Declarations.All {
-		for i := range d.Body.Lines {
-			if d.Body.Lines[i].Component == tag {
-				return &d.Body.Lines[i], true
-			}
-		}
+	d, ok := law.Declaration()
+	if !ok {
+		return nil, false
 	}
-	return nil, false
+	i := slices.IndexFunc(d.Body.Lines, func(l rulebook.Line) bool { return l.Component == tag })
+	if i < 0 {
+		return nil, false
+	}
+	return &d.Body.Lines[i], true
 }
 
 // per100 brings an interval per serving to 100 g. Ends are cut to decimals outward, so that nothing is lost.

@@ -151,21 +151,22 @@ func roundOne(t *testing.T, b *rulebook.Book, j, on, transition, q string, row r
 
 func lineFormat(t *testing.T, law *rulebook.Law, q string, u quantity.Unit) (unit quantity.Unit, shown string, n rulebook.Number) {
 	t.Helper()
-	for _, d := range law.Declarations.All {
-		lang, shown := law.Market.Languages[0], u.String()
-		for _, l := range d.Body.Lines {
-			if l.Quantity == q && l.Unit != "" {
-				u, _ = quantity.ParseUnit(l.Unit)
-				shown = u.String()
-				if l.ShownUnit != nil {
-					shown = l.ShownUnit.In(lang)
-				}
+	d, ok := law.Declaration()
+	if !ok {
+		t.Fatal("no declaration holds")
+	}
+	lang := law.Market.Languages[0]
+	unit, shown = u, u.String()
+	for _, l := range d.Body.Lines {
+		if l.Quantity == q && l.Unit != "" {
+			unit, _ = quantity.ParseUnit(l.Unit)
+			shown = unit.String()
+			if l.ShownUnit != nil {
+				shown = l.ShownUnit.In(lang)
 			}
 		}
-		return u, shown, d.Body.Number[lang]
 	}
-	t.Fatal("no declaration holds")
-	return u, "", rulebook.Number{}
+	return unit, shown, d.Body.Number[lang]
 }
 
 func checkPercent(t *testing.T, law *rulebook.Law, r *rulebook.Rounding, q string, value quantity.Ratio, printed declare.Printed, unit quantity.Unit, row roundingRow) {

@@ -88,13 +88,14 @@ func (m *market) amountOf(p rulebook.Per) string {
 }
 
 func (m *market) openLines() {
-	for _, d := range m.law.Declarations.All {
-		for i := range d.Body.Lines {
-			l := &lineState{line: &d.Body.Lines[i], rule: d}
-			m.lines[l.line.Quantity] = l
-			m.order = append(m.order, l)
-		}
-		break // one table a market
+	d, ok := m.law.Declaration()
+	if !ok {
+		return
+	}
+	for i := range d.Body.Lines {
+		l := &lineState{line: &d.Body.Lines[i], rule: d}
+		m.lines[l.line.Quantity] = l
+		m.order = append(m.order, l)
 	}
 }
 
@@ -197,12 +198,11 @@ func (m *market) table() Table {
 		} else if line, ok := v.reportLine(l); ok {
 			t.Lines = append(t.Lines, line)
 		}
-		t.Title, t.Rule = l.rule.Body.Title.In(m.language()), l.rule.ID
 	}
-	for _, d := range m.law.Declarations.All {
+	if d, ok := m.law.Declaration(); ok {
+		t.Title, t.Rule = d.Body.Title.In(m.language()), d.ID
 		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
 		t.Servings, t.Simplified = v.servings(d.Body.Servings), v.simplified(d.Body.Simplified)
-		break
 	}
 	return t
 }

@@ -12,25 +12,17 @@
 // Everything here is pure, exact (integers only) and safe for concurrent use.
 package lipid
 
+import "gramlaw/internal/quantity"
+
 // Truth is the answer to a question about a species that may be a group.
-type Truth uint8
+type Truth = quantity.Truth
 
 // The three answers. Open is the zero value: nothing is claimed until something is known.
 const (
-	Open Truth = iota
-	No
-	Yes
+	Open = quantity.Open
+	No   = quantity.No
+	Yes  = quantity.Yes
 )
-
-func (t Truth) String() string {
-	switch t {
-	case Yes:
-		return "yes"
-	case No:
-		return "no"
-	}
-	return "open"
-}
 
 // decide turns "some member does" and "some member does not" into one answer.
 func decide(some, someNot bool) Truth {

@@ -68,6 +68,14 @@ func (l *Law) RoundingOf(name string) (Active[Rounding], bool) {
 	return l.Roundings.All[i], true
 }
 
+// Declaration is the market's table; false before it has one.
+func (l *Law) Declaration() (Active[Declaration], bool) {
+	if len(l.Declarations.All) == 0 {
+		return Active[Declaration]{}, false
+	}
+	return l.Declarations.All[0], true
+}
+
 // ReferenceOf finds the reference value of a quantity.
 func (l *Law) ReferenceOf(name string) (Active[Reference], bool) {
 	i, ok := l.referenceOf[name]

@@ -151,10 +151,11 @@ func TestDigestFollowsEveryByte(t *testing.T) {
 		}
 		return b.Digest
 	}
-	if digest(nil) != digest(nil) {
+	first := digest(nil)
+	if again := digest(nil); again != first {
 		t.Error("one set has two digests")
 	}
-	if digest(nil) == digest(map[string]string{"set.json": `{"version":"1" }`}) {
+	if first == digest(map[string]string{"set.json": `{"version":"1" }`}) {
 		t.Error("two sets have one digest")
 	}
 }
