@@ -138,7 +138,7 @@ func (v view) on(p *product, q string) outcomes {
 	if !ok || !rounded || len(r.Body.Bands) == 0 {
 		return nil
 	}
-	return v.outcomes(r.Body, l.Mul(v.columns[0].grams.Quo(p.Mass())), v.unit(q))
+	return v.outcomes(r.Body, l, v.columns[0].grams.Quo(p.Mass()), v.unit(q))
 }
 
 // unit is the unit in which a quantity is printed.
@@ -157,11 +157,11 @@ func (v view) unit(q string) quantity.Unit {
 
 type outcomes []declare.Outcome
 
-// outcomes rounds both ends of a value. Rounding is monotonic, so the ends enclose what is between.
-func (v view) outcomes(r *rulebook.Rounding, value quantity.Linear, u quantity.Unit) outcomes {
-	out := outcomes(declare.Round(r.Bands, r.Ties, value.Low(), u, v.truth))
-	if !value.Determined() {
-		out = append(out, declare.Round(r.Bands, r.Ties, value.High(), u, v.truth)...)
+// outcomes rounds both ends of a quantity's share. Rounding is monotonic, so the ends enclose what is between.
+func (v view) outcomes(r *rulebook.Rounding, q quantity.Linear, share quantity.Ratio, u quantity.Unit) outcomes {
+	out := outcomes(declare.Round(r.Bands, r.Ties, q.Low().Mul(share), u, v.truth))
+	if !q.Determined() {
+		out = append(out, declare.Round(r.Bands, r.Ties, q.High().Mul(share), u, v.truth)...)
 	}
 	return out
 }
@@ -220,7 +220,7 @@ func (v view) open(l *lineState) bool {
 		return false
 	}
 	u := v.unit(l.line.Quantity)
-	return slices.ContainsFunc(v.columns, func(c column) bool { return c.known && !v.outcomes(r.Body, c.on(q), u).determined() })
+	return slices.ContainsFunc(v.columns, func(c column) bool { return c.known && !v.outcomes(r.Body, q, c.share, u).determined() })
 }
 
 func (v view) reportLine(l *lineState) (Line, bool) {

@@ -88,9 +88,19 @@ func properties(t *testing.T, same func(r *rand.Rand, in *recipe.Recipe) *recipe
 		in := randomRecipe(r)
 		want := result(t, b, in)
 		if got := result(t, b, same(r, in)); got != want {
-			t.Fatalf("seed %d: the label changed\n%s\n%s", seed, want, got)
+			t.Fatalf("seed %d: the label changed%s", seed, firstDifference(want, got))
 		}
 	}
+}
+
+// firstDifference shows both sides around the place where they part.
+func firstDifference(a, b string) string {
+	i := 0
+	for i < min(len(a), len(b)) && a[i] == b[i] {
+		i++
+	}
+	around := func(s string) string { return s[max(0, i-80):min(len(s), i+80)] }
+	return "\n" + around(a) + "\n" + around(b)
 }
 
 func clone(in *recipe.Recipe) *recipe.Recipe {

@@ -31,7 +31,7 @@ func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	settled := true
 	var printed outcomes
 	if len(r.Body.Bands) > 0 {
-		printed = v.outcomes(r.Body, x, u)
+		printed = v.outcomes(r.Body, x, quantity.FromInt(1), u)
 		settled = printed.determined()
 		v.print(&out, l, printed, unit != "", u)
 	}
@@ -100,7 +100,7 @@ func (v view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook
 		if !ok {
 			continue
 		}
-		o := v.outcomes(r, c.on(q), u)
+		o := v.outcomes(r, q, c.share, u)
 		if !o.determined() {
 			continue
 		}

@@ -19,64 +19,58 @@ type Comparison struct {
 	Variables []*quantity.Variable // what it still depends on
 }
 
-// side is a numerator over a denominator; the value is num·scale/den.
+// side is a numerator over a denominator; the value is num·scale/den. The scale, above zero, is kept apart so that forms of many
+// uncertain parts need not be multiplied out.
 type side struct {
-	num, den quantity.Linear
-	missing  string
+	num     quantity.Linear
+	scale   quantity.Ratio
+	den     quantity.Linear
+	missing string
 }
 
 // compare decides a comparison on every basis it names.
 func (x evaluator) compare(c *rulebook.Condition) Result {
-	if len(c.Per) == 0 {
+	switch bases := c.Bases(); len(bases) {
+	case 0:
 		return x.compareOn(c, "", rulebook.Per{})
-	}
-	bases := c.Bases()
-	if len(bases) == 1 {
+	case 1:
 		return x.compareOn(c, c.Per[0], bases[0])
 	}
-	parts := make([]Result, len(bases))
-	truths := make([]quantity.Truth, len(bases))
-	for i, per := range bases {
-		parts[i] = x.compareOn(c, c.Per[i], per)
-		truths[i] = parts[i].Truth
-		if !x.explain && truths[i] == quantity.No {
-			return parts[i]
-		}
+	r := Result{Op: rulebook.OpAll, Truth: quantity.Yes}
+	for i, per := range c.Bases() {
+		part := x.compareOn(c, c.Per[i], per)
+		r.Parts = append(r.Parts, part)
+		r.Truth = quantity.All(r.Truth, part.Truth)
 	}
-	return Result{Truth: quantity.All(truths...), Op: rulebook.OpAll, Parts: parts}
+	return r
 }
 
 func (x evaluator) compareOn(c *rulebook.Condition, name string, per rulebook.Per) Result {
-	says := ""
-	if x.explain {
-		says = compareSays(c, name, x)
-	}
-	subject := x.Product()
-	if c.Subject == "reference food" {
-		ref, ok := x.Reference()
-		if !ok {
-			return Result{Says: says, Missing: "the reference food"}
-		}
-		subject = ref
+	cmp := &Comparison{Says: compareSays(c, name, x), Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
+	subject, missing := x.subject(c)
+	if missing != "" {
+		return Result{Says: cmp.Says, Missing: missing}
 	}
 	s := measure(c, per, subject, x)
-	if s.missing != "" {
-		return Result{Says: says, Missing: s.missing}
+	switch {
+	case s.missing != "":
+		return Result{Says: cmp.Says, Missing: s.missing}
+	case c.Relation.Relative():
+		return x.relative(c, per, s, cmp)
 	}
-	if c.Relation.Relative() {
-		return x.relative(c, per, says, s)
-	}
-	cmp := x.comparison(c, says)
-	t := decideSides(c.Relation, s, c.Limit(), cmp)
-	return Result{Truth: t, Says: says, Compare: cmp}
+	return Result{Truth: decideSides(c.Relation, s, c.Limit(), cmp), Says: cmp.Says, Compare: cmp}
 }
 
-// comparison is where the numbers go; nil where nobody reads them.
-func (x evaluator) comparison(c *rulebook.Condition, says string) *Comparison {
-	if !x.explain {
-		return nil
+// subject is the food a comparison measures.
+func (x evaluator) subject(c *rulebook.Condition) (food Subject, missing string) {
+	if c.Subject != "reference food" {
+		return x.Product(), ""
 	}
-	return &Comparison{Says: says, Relation: c.Relation, Unit: c.Threshold.Unit, Threshold: quantity.FromDecimal(c.Threshold.Value)}
+	ref, ok := x.Reference()
+	if !ok {
+		return nil, "the reference food"
+	}
+	return ref, ""
 }
 
 // measure builds the two sides for one food: the value is num/den in base units of the threshold.
@@ -85,7 +79,7 @@ func measure(c *rulebook.Condition, per rulebook.Per, s Subject, x Context) side
 	if missing != "" {
 		return side{missing: missing}
 	}
-	out := side{num: num, den: quantity.Exactly(s.Mass())}
+	out := side{num: num, scale: quantity.FromInt(1), den: quantity.Exactly(s.Mass())}
 	switch c.As {
 	case "share of energy":
 		return share(num, s, "energy")
@@ -98,7 +92,7 @@ func measure(c *rulebook.Condition, per rulebook.Per, s Subject, x Context) side
 		if !ok {
 			return side{missing: "a reference value of " + x.Name(first(c))}
 		}
-		out.num = num.Mul(quantity.FromInt(100))
+		out.scale = quantity.FromInt(100)
 		out.den = quantity.Exactly(s.Mass().Mul(v))
 	}
 	return out.per(per, s)
@@ -109,7 +103,7 @@ func share(num quantity.Linear, s Subject, of string) side {
 	if !ok {
 		return side{missing: "the quantity " + of}
 	}
-	return side{num: num.Mul(quantity.FromInt(100)), den: den}
+	return side{num: num, scale: quantity.FromInt(100), den: den}
 }
 
 // per brings a side to its basis.
@@ -130,13 +124,13 @@ func (s side) per(p rulebook.Per, food Subject) side {
 		if !ok {
 			return side{missing: "the quantity " + of}
 		}
-		return side{num: s.num.Mul(amount), den: den}
+		return side{num: s.num, scale: s.scale.Mul(amount), den: den}
 	}
 	g, ok := food.Basis(p)
 	if !ok {
 		return side{missing: "the " + basisName(p)}
 	}
-	s.num = s.num.Mul(g)
+	s.scale = s.scale.Mul(g)
 	return s
 }
 
@@ -170,10 +164,9 @@ func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, str
 
 // decideSides decides num relation T·den, and fills the comparison's numbers.
 func decideSides(rel rulebook.Relation, s side, t quantity.Ratio, cmp *Comparison) quantity.Truth {
-	f := s.num.Sub(s.den.Mul(t))
 	zero := s.den.High().Sign() == 0
 	if cmp != nil {
-		cmp.Variables, cmp.Null = f.Variables(), zero
+		cmp.Variables, cmp.Null = quantity.Merge(s.num.Variables(), s.den.Variables()), zero
 		cmp.numbers(s)
 	}
 	if zero {
@@ -182,16 +175,30 @@ func decideSides(rel rulebook.Relation, s side, t quantity.Ratio, cmp *Compariso
 		}
 		return quantity.No
 	}
-	truth := sign(rel, f)
+	truth := s.against(rel, t)
 	if s.den.Low().Sign() == 0 && (rel == rulebook.AtLeast || rel == rulebook.Above) && truth == quantity.Yes {
 		return quantity.Open
 	}
 	return truth
 }
 
+// against decides num·scale relation t·den. With an exact denominator the ends of the numerator suffice; else what is uncertain in
+// both must cancel first.
+func (s side) against(rel rulebook.Relation, t quantity.Ratio) quantity.Truth {
+	if s.den.Determined() {
+		limit := s.den.Known.Mul(t)
+		return between(rel, s.num.Low().Mul(s.scale).Cmp(limit), s.num.High().Mul(s.scale).Cmp(limit))
+	}
+	return sign(rel, s.num.Mul(s.scale).Sub(s.den.Mul(t)))
+}
+
 // sign decides f relation 0.
 func sign(rel rulebook.Relation, f quantity.Linear) quantity.Truth {
-	low, high := f.Low().Sign(), f.High().Sign()
+	return between(rel, f.Low().Sign(), f.High().Sign())
+}
+
+// between decides from the signs of both ends.
+func between(rel rulebook.Relation, low, high int) quantity.Truth {
 	var always, never bool
 	switch rel {
 	case rulebook.AtMost:
@@ -218,7 +225,8 @@ func (c *Comparison) numbers(s side) {
 		return
 	}
 	unit := quantity.Scaled(1, -c.Unit.Scale().Exponent())
-	quo := func(a, b quantity.Ratio) quantity.Ratio { return a.Mul(unit).Quo(b) }
+	scale := s.scale.Mul(unit)
+	quo := func(a, b quantity.Ratio) quantity.Ratio { return a.Mul(scale).Quo(b) }
 	if high := s.den.High(); high.Sign() > 0 {
 		c.Low = quantity.Max(quo(s.num.Low(), high), quantity.Ratio{})
 	}

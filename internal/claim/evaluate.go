@@ -51,23 +51,15 @@ type Result struct {
 }
 
 // Evaluate decides a condition and keeps every part, with its words and numbers. A nil condition holds.
-func Evaluate(c *rulebook.Condition, x Context) Result { return evaluator{x, true}.evaluate(c) }
+func Evaluate(c *rulebook.Condition, x Context) Result { return evaluator{x}.evaluate(c) }
 
-// Decide is the decision alone.
-func Decide(c *rulebook.Condition, x Context) quantity.Truth {
-	return evaluator{x, false}.evaluate(c).Truth
-}
-
-type evaluator struct {
-	Context
-	explain bool
-}
+type evaluator struct{ Context }
 
 func (x evaluator) evaluate(c *rulebook.Condition) Result {
 	if c == nil {
 		return Result{Truth: quantity.Yes, Op: rulebook.OpAll}
 	}
-	r := x.decide(c)
+	r := x.explain(c)
 	r.Op, r.N = c.Op, c.N
 	if c.Says != nil {
 		r.Says = c.Says.In("en")
@@ -75,39 +67,39 @@ func (x evaluator) evaluate(c *rulebook.Condition) Result {
 	return r
 }
 
-func (x evaluator) decide(c *rulebook.Condition) Result {
+func (x evaluator) explain(c *rulebook.Condition) Result {
 	switch c.Op {
 	case rulebook.OpCompare:
 		return x.compare(c)
-	case rulebook.OpAll:
-		return x.combine(c, quantity.No, quantity.All)
-	case rulebook.OpAny:
-		return x.combine(c, quantity.Yes, quantity.Any)
-	case rulebook.OpCount:
-		return x.combine(c, quantity.Open, func(t ...quantity.Truth) quantity.Truth { return quantity.AtLeast(c.N, t...) })
-	case rulebook.OpNot:
-		return x.combine(c, quantity.Open, func(t ...quantity.Truth) quantity.Truth { return t[0].Not() })
+	case rulebook.OpAll, rulebook.OpAny, rulebook.OpCount, rulebook.OpNot:
+		return x.combine(c)
 	case rulebook.OpWhen:
 		return x.when(c)
 	}
 	return x.atom(c)
 }
 
-// combine decides all parts; where nobody reads them, the first part that settles the whole ends it.
-func (x evaluator) combine(c *rulebook.Condition, settles quantity.Truth, of func(...quantity.Truth) quantity.Truth) Result {
-	var r Result
-	truths := make([]quantity.Truth, 0, len(c.Parts))
-	for _, p := range c.Parts {
-		part := x.evaluate(p)
-		truths = append(truths, part.Truth)
-		if x.explain {
-			r.Parts = append(r.Parts, part)
-		} else if settles != quantity.Open && part.Truth == settles {
-			break
-		}
+func (x evaluator) combine(c *rulebook.Condition) Result {
+	r := Result{Parts: make([]Result, len(c.Parts))}
+	truths := make([]quantity.Truth, len(c.Parts))
+	for i, p := range c.Parts {
+		r.Parts[i] = x.evaluate(p)
+		truths[i] = r.Parts[i].Truth
 	}
-	r.Truth = of(truths...)
+	r.Truth = united(c, truths)
 	return r
+}
+
+func united(c *rulebook.Condition, truths []quantity.Truth) quantity.Truth {
+	switch c.Op {
+	case rulebook.OpAny:
+		return quantity.Any(truths...)
+	case rulebook.OpCount:
+		return quantity.AtLeast(c.N, truths...)
+	case rulebook.OpNot:
+		return truths[0].Not()
+	}
+	return quantity.All(truths...)
 }
 
 // when takes the branch the guard points to. With the guard open, the branches must agree.
@@ -136,9 +128,7 @@ func taken(branch Result) Result {
 
 func (x evaluator) atom(c *rulebook.Condition) Result {
 	r := x.ask(c)
-	if x.explain {
-		r.Says = atomSays(c, x)
-	}
+	r.Says = atomSays(c, x)
 	return r
 }
 

@@ -63,14 +63,14 @@ func parse(t *testing.T, s string) *rulebook.Condition {
 
 func exactly(n int64, e int32) quantity.Linear { return quantity.Exactly(quantity.Scaled(n, e)) }
 
-func between(i int, low, high int64) quantity.Linear {
+func somewhere(i int, low, high int64) quantity.Linear {
 	return quantity.Of(&quantity.Variable{Index: i, Low: quantity.FromInt(low), High: quantity.FromInt(high)})
 }
 
 var (
 	water = food{"fat": {}, "mono": {}, "fatty-acids": {}, "energy": {}}
 	bread = food{"fat": exactly(3, 0), "mono": exactly(1, 0), "fatty-acids": exactly(28, -1), "energy": exactly(250, 0)}
-	hazy  = food{"fat": between(1, 2, 4), "mono": between(2, 0, 1), "fatty-acids": exactly(3, 0), "energy": exactly(100, 0)}
+	hazy  = food{"fat": somewhere(1, 2, 4), "mono": somewhere(2, 0, 1), "fatty-acids": exactly(3, 0), "energy": exactly(100, 0)}
 )
 
 func TestConditions(t *testing.T) {
@@ -128,6 +128,9 @@ func TestConditions(t *testing.T) {
 			r := Evaluate(parse(t, c.condition), c.w)
 			if r.Truth != c.want {
 				t.Errorf("is %s, want %s: %+v", r.Truth, c.want, r.Compare)
+			}
+			if got := Decide(parse(t, c.condition), c.w); got != c.want {
+				t.Errorf("is decided as %s, want %s", got, c.want)
 			}
 		})
 	}

@@ -5,23 +5,30 @@ import (
 	"gramlaw/internal/rulebook"
 )
 
-// relative compares the product's value with the reference food's, both per the same basis.
-func (x evaluator) relative(c *rulebook.Condition, per rulebook.Per, says string, s side) Result {
+// relative compares the product's value with the reference food's, both per the same basis. cmp takes the numbers; nil where
+// nobody reads them.
+func (x evaluator) relative(c *rulebook.Condition, per rulebook.Per, s side, cmp *Comparison) Result {
+	var out Result
+	if cmp != nil {
+		out.Says = cmp.Says
+	}
 	ref, ok := x.Reference()
 	if !ok {
-		return Result{Says: says, Missing: "the reference food"}
+		out.Missing = "the reference food"
+		return out
 	}
 	r := measure(c, per, ref, x)
 	if r.missing != "" {
-		return Result{Says: says, Missing: r.missing + " of the reference food"}
+		out.Missing = r.missing + " of the reference food"
+		return out
 	}
 	if !s.den.Determined() || !r.den.Determined() || s.den.Known.Sign() == 0 || r.den.Known.Sign() == 0 {
-		return Result{Says: says, Missing: "an exact basis"}
+		out.Missing = "an exact basis"
+		return out
 	}
-	one := quantity.FromInt(1)
-	product, other := s.num.Mul(one.Quo(s.den.Known)), r.num.Mul(one.Quo(r.den.Known))
-	cmp := x.comparison(c, says)
-	return Result{Truth: decideRelative(c, product, other, cmp), Says: says, Compare: cmp}
+	product, other := s.num.Mul(s.scale.Quo(s.den.Known)), r.num.Mul(r.scale.Quo(r.den.Known))
+	out.Truth, out.Compare = decideRelative(c, product, other, cmp), cmp
+	return out
 }
 
 func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *Comparison) quantity.Truth {

@@ -25,7 +25,8 @@ type term struct {
 // in two places but is the same thing cancels instead of adding up.
 type Linear struct {
 	Known Ratio
-	terms []term // by index, no zero coefficients
+	terms []term    // by index, no zero coefficients
+	ends  *[2]Ratio // least and greatest value, where somebody has worked them out
 }
 
 // Exactly is a linear form without uncertainty.
@@ -89,6 +90,9 @@ func Sum(forms iter.Seq[Linear]) Linear {
 	if !sorted {
 		s.terms = united(s.terms)
 	}
+	if len(s.terms) > 0 {
+		s.ends = &[2]Ratio{s.end(true), s.end(false)}
+	}
 	return s
 }
 
@@ -114,7 +118,7 @@ func (l Linear) Mul(r Ratio) Linear {
 	if r.IsZero() {
 		return Linear{}
 	}
-	if r.n == nil && r.s == 1 && r.e == 0 && r.d == nil {
+	if r.isOne() {
 		return l
 	}
 	s := Linear{Known: l.Known.Mul(r)}
@@ -131,10 +135,20 @@ func (l Linear) Mul(r Ratio) Linear {
 func (l Linear) Times(d decimal.Decimal) Linear { return l.Mul(FromDecimal(d)) }
 
 // Low is the least value over all variables, High the greatest.
-func (l Linear) Low() Ratio { return l.end(true) }
+func (l Linear) Low() Ratio {
+	if l.ends != nil {
+		return l.ends[0]
+	}
+	return l.end(true)
+}
 
 // High is the greatest value over all variables.
-func (l Linear) High() Ratio { return l.end(false) }
+func (l Linear) High() Ratio {
+	if l.ends != nil {
+		return l.ends[1]
+	}
+	return l.end(false)
+}
 
 func (l Linear) end(low bool) Ratio {
 	s := l.Known
@@ -143,7 +157,10 @@ func (l Linear) end(low bool) Ratio {
 		if low == (t.c.Sign() > 0) {
 			x = t.v.Low
 		}
-		s = s.Add(t.c.Mul(x))
+		if !t.c.isOne() {
+			x = t.c.Mul(x)
+		}
+		s = s.Add(x)
 	}
 	return s
 }

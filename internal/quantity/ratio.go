@@ -88,6 +88,8 @@ func sign(i int64) int {
 // IsZero reports the number zero.
 func (r Ratio) IsZero() bool { return r.n == nil && r.s == 0 }
 
+func (r Ratio) isOne() bool { return r.n == nil && r.s == 1 && r.e == 0 && r.d == nil }
+
 func sameDen(a, b *big.Int) bool {
 	return a == b || a != nil && b != nil && a.Cmp(b) == 0
 }
