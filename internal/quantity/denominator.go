@@ -61,7 +61,7 @@ func (r Ratio) Reduced() Ratio {
 // Denominator is what the ratio is over, its power of ten apart. Never change it.
 func (r Ratio) Denominator() *big.Int { return r.den() }
 
-// Over writes the ratio over a multiple of its denominator.
+// Over writes the ratio over den, or where its own denominator does not divide den over the least multiple of both.
 func (r Ratio) Over(den *big.Int) Ratio {
 	if r.IsZero() || sameDen(r.den(), den) {
 		if den.Cmp(one) != 0 && !r.IsZero() {
@@ -69,7 +69,12 @@ func (r Ratio) Over(den *big.Int) Ratio {
 		}
 		return r
 	}
-	k := new(big.Int).Quo(den, r.den())
+	k, rest := new(big.Int).QuoRem(den, r.den(), new(big.Int))
+	if rest.Sign() != 0 {
+		g := new(big.Int).GCD(nil, nil, den, r.den())
+		k.Quo(den, g)
+		den = new(big.Int).Mul(k, r.den())
+	}
 	return Over(k.Mul(k, r.num()), r.e, den)
 }
 

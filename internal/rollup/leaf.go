@@ -83,7 +83,7 @@ func (l *Leaf) per(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
 }
 
 func (l *Leaf) setPer(values map[string]recipe.Value, per quantity.Ratio) {
-	factor := quantity.FromInt(100).Quo(per)
+	factor := quantity.FromInt(100).Quo(per).Reduced()
 	for tag, v := range values {
 		c, ok := food.Lookup(tag)
 		if !ok {
