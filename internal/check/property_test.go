@@ -12,6 +12,7 @@ import (
 
 	"gramlaw/internal/check"
 	"gramlaw/internal/food"
+	"gramlaw/internal/lipid"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/recipe"
 	"gramlaw/internal/rulebook"
@@ -41,6 +42,9 @@ func randomRecipe(r *rand.Rand) *recipe.Recipe {
 		})
 	}
 	if r.IntN(2) == 0 {
+		out.Ingredients = append(out.Ingredients, randomOil(r))
+	}
+	if r.IntN(2) == 0 {
 		out.Yield = &recipe.Yield{Water: &recipe.Change{Gain: r.IntN(2) == 0, Amount: quantity.Amount{Value: decimal.New(r.Int64N(20), -1), Unit: quantity.PerCent}}}
 	}
 	out.Serving = recipe.PerMarket[recipe.Serving]{"default": {Amount: gram(1+r.Int64N(2000), -1)}}
@@ -50,6 +54,31 @@ func randomRecipe(r *rand.Rand) *recipe.Recipe {
 		out.Claims = append(out.Claims, recipe.Claim{Claim: c})
 	}
 	return out
+}
+
+// randomOil is a fat known by a specification per some amount, with a profile in per cent of FAME.
+func randomOil(r *rand.Rand) recipe.Ingredient {
+	exact := func(n int64, e int32) recipe.Value {
+		d := decimal.New(n, e)
+		return recipe.Value{Low: d, High: d, Central: d, Typical: true, Unit: quantity.PerCent}
+	}
+	per := gram(1+r.Int64N(200), 0)
+	fat := exact(per.Value.CoefficientInt64(), 0)
+	fat.Unit = quantity.Gram
+	profile := &recipe.Profile{Basis: recipe.PercentFAME, Complete: true}
+	rest := int64(1000)
+	for _, notation := range []string{"12:0", "16:0", "18:0", "18:1", "18:1 9c", "18:2 9c,12c", "18:3 n-3", "22:6 n-3"} {
+		s, err := lipid.Parse(notation)
+		if err != nil {
+			panic(err)
+		}
+		x := r.Int64N(rest/2 + 1)
+		rest -= x
+		profile.Acids = append(profile.Acids, recipe.Acid{Notation: notation, Species: s, Value: exact(x, -1)})
+	}
+	profile.Unidentified = exact(rest, -1)
+	return recipe.Ingredient{Pointer: "/ingredients/9", ID: "oil", Amount: gram(1+r.Int64N(99999), -2), Process: "refined",
+		Source: recipe.Source{Composition: &recipe.Composition{Per: per, Components: map[string]recipe.Value{"FAT": fat}, Acids: profile}}}
 }
 
 // result is what a label shows and a claim is judged by, without the names of ingredients.

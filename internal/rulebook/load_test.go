@@ -17,3 +17,12 @@ func TestEmbeddedRulesPassLint(t *testing.T) {
 		t.Error("the set holds no market")
 	}
 }
+
+// Reading, linting and preparing the embedded set.
+func BenchmarkLoad(b *testing.B) {
+	for b.Loop() {
+		if _, err := rulebook.Load(rules.FS); err != nil {
+			b.Fatal(err)
+		}
+	}
+}
