@@ -3,6 +3,7 @@ package check
 import (
 	"slices"
 
+	"gramlaw/internal/claim"
 	"gramlaw/internal/declare"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
@@ -249,9 +250,41 @@ func (v view) reportLine(l *lineState) (Line, bool) {
 		out.Values = append(out.Values, value)
 	}
 	if out.Status != "determined" {
-		out.Needs = v.needs(q.Variables())
+		out.Needs = append(v.needs(q.Variables()), v.bandNeeds(l.line.Quantity)...)
 	}
 	return out, true
+}
+
+// bandNeeds lists what the open conditions of a rounding's bands lack.
+func (v view) bandNeeds(q string) []string {
+	r, ok := v.law.RoundingOf(q)
+	if !ok {
+		return nil
+	}
+	var out []string
+	for i := range r.Body.Bands {
+		c := r.Body.Bands[i].If
+		if c == nil || v.truth(c) != quantity.Open {
+			continue
+		}
+		for _, n := range needsOf(v.condition(claim.Evaluate(v.unfolded(c), v))) {
+			if !slices.Contains(out, n) {
+				out = append(out, n)
+			}
+		}
+	}
+	return out
+}
+
+// unfolded puts a claim's condition in place of the question whether it is met, so that what is open in it can be told.
+func (v view) unfolded(c *rulebook.Condition) *rulebook.Condition {
+	if c.Op != rulebook.OpMeets || c.Subject != "" {
+		return c
+	}
+	if cl, ok := v.law.Claims.Get(rulebook.Name(c.Name)); ok && cl.Body.Condition != nil {
+		return cl.Body.Condition
+	}
+	return c
 }
 
 func (v view) terms(l *rulebook.Line) map[string]string {
