@@ -1,0 +1,201 @@
+package check
+
+import (
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rulebook"
+	"slices"
+	"strings"
+)
+
+// accompany lists what must stand beside a permitted claim.
+func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
+	v.own = map[string]bool{}
+	for _, s := range b.About {
+		v.own[s] = true
+	}
+	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
+	out.Statements = append(out.Statements, v.disclosures(out)...)
+	out.NeedsLines = append(out.NeedsLines, b.NeedsLines...)
+	out.NeedsLines = append(out.NeedsLines, v.raisedBy(b.About)...)
+	for _, s := range out.Statements {
+		if s.Presence == "mandatory" {
+			out.Verdict = WithStatement
+		}
+	}
+}
+
+// raisedBy lists the lines that stand because something is claimed about one of the subjects.
+func (v view) raisedBy(about []string) []string {
+	var out []string
+	for _, l := range v.order {
+		raised := false
+		l.line.MandatoryIf.Walk(func(c *rulebook.Condition) {
+			raised = raised || c.Op == rulebook.OpAbout && slices.ContainsFunc(c.About, func(s string) bool { return slices.Contains(about, s) })
+		})
+		if raised && v.truth(l.line.MandatoryIf) == quantity.Yes {
+			out = append(out, l.line.Quantity)
+		}
+	}
+	return out
+}
+
+// statements are those of a list whose conditions hold, or are open.
+func (v view) statements(list []rulebook.Statement, rule string, c *Claim) []Statement {
+	var out []Statement
+	for _, s := range list {
+		t := quantity.Yes
+		if s.If != nil {
+			t = v.truth(s.If)
+		}
+		if t == quantity.No {
+			continue
+		}
+		st := v.statement(s.Text, s.Place, rule, c)
+		if s.Presence != "" {
+			st.Presence = s.Presence
+		}
+		if t == quantity.Open {
+			st.Presence = "open"
+		}
+		out = append(out, st)
+	}
+	return out
+}
+
+func (v view) statement(words rulebook.Words, place, rule string, c *Claim) Statement {
+	st := Statement{Text: v.fill(words.In(v.language()), c), Place: place, Presence: "mandatory", Rule: rule}
+	if len(words) > 1 {
+		st.Texts = map[string]string{}
+		for _, lang := range sortedKeys(words) {
+			st.Texts[lang] = v.fill(words[lang], c)
+		}
+	}
+	return st
+}
+
+// disclosures are the levels that make any claim carry a statement, one statement naming all of them, or bar it.
+func (v view) disclosures(out *Claim) []Statement {
+	type group struct {
+		d     *rulebook.Disclosure
+		id    string
+		names []string
+	}
+	var groups []*group
+	for _, d := range v.law.Disclosures.All {
+		if d.Body.When != nil && v.truth(d.Body.When) != quantity.Yes || v.truth(d.Body.Condition) != quantity.Yes {
+			continue
+		}
+		if d.Body.Effect == "bars" {
+			out.Verdict, out.Printable, out.Why = Refused, false, "barred by the level of "+d.Body.Named.In("en")+" ("+d.Head.Source.Ref+")"
+			continue
+		}
+		i := slices.IndexFunc(groups, func(g *group) bool { return g.d.Statement.In("en") == d.Body.Statement.In("en") })
+		if i < 0 {
+			groups, i = append(groups, &group{d: d.Body, id: d.ID}), len(groups)
+		}
+		groups[i].names = append(groups[i].names, d.Body.Named.In("en"))
+	}
+	var st []Statement
+	for _, g := range groups {
+		words := rulebook.Words{}
+		for lang, s := range g.d.Statement {
+			words[lang] = strings.ReplaceAll(s, "{names}", joined(g.names))
+		}
+		st = append(st, v.statement(words, g.d.Place, g.id, out))
+	}
+	return st
+}
+
+func joined(names []string) string {
+	if len(names) < 2 {
+		return strings.Join(names, "")
+	}
+	comma := ""
+	if len(names) > 2 {
+		comma = ","
+	}
+	return strings.Join(names[:len(names)-1], ", ") + comma + " and " + names[len(names)-1]
+}
+
+// fill replaces placeholders: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and
+// {fat difference} by the change against it in per cent, {reference food} by its name.
+func (v view) fill(s string, c *Claim) string {
+	var out strings.Builder
+	for {
+		i := strings.IndexByte(s, '{')
+		j := strings.IndexByte(s, '}')
+		if i < 0 || j < i {
+			out.WriteString(s)
+			return out.String()
+		}
+		out.WriteString(s[:i])
+		out.WriteString(v.placeholder(s[i+1:j], c))
+		s = s[j+1:]
+	}
+}
+
+func (v view) placeholder(name string, c *Claim) string {
+	text, ok := "", false
+	switch {
+	case name == "reference food" && v.ref != nil:
+		text, ok = v.ref.batch.Leaves[0].Name, true
+	case name == "difference" && c != nil && c.Condition != nil:
+		text = differenceIn(c.Condition)
+		ok = text != ""
+	case strings.HasSuffix(name, " of reference food") && v.ref != nil:
+		text, ok = v.printed(v.ref, strings.TrimSuffix(name, " of reference food"))
+	case strings.HasPrefix(name, "amount of "):
+		text, ok = v.amountOfQuantity(strings.TrimPrefix(name, "amount of "))
+	case strings.HasSuffix(name, " difference") && v.ref != nil:
+		text, ok = v.difference(strings.TrimSuffix(name, " difference"))
+	default:
+		text, ok = v.printed(v.subject, name)
+	}
+	if !ok {
+		return "(" + name + ")"
+	}
+	return text
+}
+
+// printed is what a food's quantity prints as on the first column, where that is determined.
+func (v view) printed(p *product, q string) (string, bool) {
+	l, ok := v.lines[q]
+	if !ok {
+		return "", false
+	}
+	o := v.on(p, q)
+	if !o.determined() {
+		return "", false
+	}
+	return l.text(o[0].Printed, v.unit(q), v.language()), true
+}
+
+// amountOfQuantity is a quantity without a line of its own, to three figures on the first column.
+func (v view) amountOfQuantity(q string) (string, bool) {
+	l, ok := v.subject.Quantity(q)
+	if !ok || !l.Determined() || len(v.columns) == 0 || !v.columns[0].known {
+		return "", false
+	}
+	u := v.unit(q)
+	amount := v.columns[0].on(l).Known.In(u)
+	return amount.RoundFigures(3, quantity.TiesUp).String() + " " + u.String(), true
+}
+
+// difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number. Of a range it is
+// the smallest change, so that what is stated is true at least.
+func (v view) difference(q string) (string, bool) {
+	own, ok1 := v.subject.Quantity(q)
+	other, ok2 := v.ref.Quantity(q)
+	if !ok1 || !ok2 || other.Low().Sign() <= 0 {
+		return "", false
+	}
+	per := func(r, mass quantity.Ratio) quantity.Ratio { return r.Quo(mass) }
+	mine, theirs := v.subject.Mass(), v.ref.Mass()
+	less := per(other.Low(), theirs).Sub(per(own.High(), mine)).Quo(per(other.Low(), theirs))
+	more := per(own.Low(), mine).Sub(per(other.High(), theirs)).Quo(per(other.High(), theirs))
+	d := quantity.Max(less, more)
+	if d.Sign() <= 0 {
+		return "", false
+	}
+	return d.Mul(quantity.FromInt(100)).Floor(0).String() + " %", true
+}

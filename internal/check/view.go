@@ -1,0 +1,247 @@
+package check
+
+import (
+	"gramlaw/internal/claim"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
+	"slices"
+	"strings"
+
+	"github.com/shopspring/decimal"
+)
+
+// A view is the market seen with one food as the product of a condition, and one as its reference food. It is a
+// claim.Context.
+type view struct {
+	*market
+	subject *product
+	ref     *product
+	against string          // name of ref
+	own     map[string]bool // what the one claim judged is about; nil where all that stand count
+}
+
+func (m *market) as(p *product) view { return view{market: m, subject: p} }
+
+func (v view) truth(c *rulebook.Condition) quantity.Truth { return claim.Decide(c, v) }
+
+// Product is the food the condition speaks of.
+func (v view) Product() claim.Subject { return v.subject }
+
+// Reference is the food it is compared with.
+func (v view) Reference() (claim.Subject, bool) { return v.ref, v.ref != nil }
+
+// Name is a quantity in words.
+func (v view) Name(q string) string {
+	if d, ok := v.law.Definitions.Get(q); ok {
+		return d.Body.Name.In("en")
+	}
+	if e, ok := v.law.Energy.Get(q); ok {
+		return e.Body.Name.In("en")
+	}
+	return strings.ReplaceAll(q, "-", " ")
+}
+
+// EnergyFactor is kcal per g of a quantity: its own, or that of the quantity it counts as.
+func (v view) EnergyFactor(q string) (quantity.Ratio, bool) {
+	e, ok := v.law.Energy.Get("energy")
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	factors := e.Body.Methods[0].Factors
+	if f, ok := factors[q]; ok {
+		return quantity.FromDecimal(f), true
+	}
+	d, ok := v.law.Definitions.Get(q)
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	f, ok := factors[d.Body.EnergyAs]
+	return quantity.FromDecimal(f), ok
+}
+
+const everybody = "general population"
+
+// population is for whom the food is made, as reference values name it.
+func (v view) population() string {
+	for _, p := range []string{"children 1 to 3", "infants", "pregnant or lactating"} {
+		if v.stated("intended for", p) == quantity.Yes {
+			return p
+		}
+	}
+	return everybody
+}
+
+// ReferenceValue is the reference value of a quantity in base units.
+func (v view) ReferenceValue(q string) (quantity.Ratio, bool) {
+	r, ok := v.law.ReferenceOf(q)
+	if !ok {
+		return quantity.Ratio{}, false
+	}
+	a, ok := r.Body.Amounts[v.population()]
+	return a.Ratio(), ok
+}
+
+// stated compares a fact the recipe states.
+func (m *market) stated(name, is string) quantity.Truth {
+	f, ok := m.c.recipe.Facts[name]
+	if !ok {
+		return quantity.Open
+	}
+	if f.Text != "" {
+		return quantity.TruthOf(f.Text == is)
+	}
+	if f.Flag == quantity.Open {
+		return quantity.Open
+	}
+	return quantity.TruthOf((f.Flag == quantity.Yes) == (is == "yes"))
+}
+
+// Fact compares a fact: as stated, else as the market's rules assume, which is noted.
+func (v view) Fact(name, is string) quantity.Truth {
+	if name == "state" {
+		if s, ok := v.c.recipe.State.For(v.j); ok {
+			return quantity.TruthOf(s == is)
+		}
+	} else if t := v.stated(name, is); t != quantity.Open {
+		return t
+	}
+	for _, a := range v.law.Market.Assumed {
+		if a.Fact == name {
+			v.assumed[name] = Assumed{a.Fact, a.Is, a.Why}
+			return quantity.TruthOf(a.Is == is)
+		}
+	}
+	return quantity.Open
+}
+
+// Measured is a fact that is an amount.
+func (v view) Measured(name string) (quantity.Ratio, bool) {
+	f, ok := v.c.recipe.Facts[name]
+	if !ok || f.Number == nil {
+		return quantity.Ratio{}, false
+	}
+	return f.Number.Ratio(), true
+}
+
+// ReferenceAmount tells whether the reference amount is at most one of the amounts in its own kind of unit.
+func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
+	r, ok := v.referenceAmount()
+	if !ok {
+		return quantity.Open
+	}
+	for _, a := range atMost {
+		if a.Unit.Dimension() == r.Amount.Unit.Dimension() && !r.Amount.Base().GreaterThan(a.Base()) {
+			return quantity.Yes
+		}
+	}
+	return quantity.No
+}
+
+// ClaimedAbout tells whether a claim that stands is about one of the subjects; where one claim is judged, whether it is.
+func (v view) ClaimedAbout(subjects []string) quantity.Truth {
+	about := v.about
+	if v.own != nil {
+		about = v.own
+	}
+	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return about[s] || s == "any" && len(about) > 0 }))
+}
+
+// Size is the mass in g of the package, of the serving, or of one of the package's units.
+func (v view) Size(name string) (quantity.Ratio, bool) {
+	if name == "serving" {
+		if _, stated := v.c.recipe.Serving.For(v.j); !stated {
+			return quantity.Ratio{}, false
+		}
+		return v.subject.Basis(rulebook.Per{Name: "serving"})
+	}
+	size, ok := v.subject.Basis(rulebook.Per{Name: "package"})
+	if !ok || name == "package" {
+		return size, ok
+	}
+	units := v.c.recipe.Package.Units
+	if !units.IsPositive() {
+		return quantity.Ratio{}, false
+	}
+	return size.Quo(quantity.FromDecimal(units)), true
+}
+
+// ReferenceKind tells whether the reference food is of one of the kinds.
+func (v view) ReferenceKind(kinds []string) quantity.Truth {
+	if v.ref == nil {
+		return quantity.Open
+	}
+	return quantity.TruthOf(slices.Contains(kinds, v.c.recipe.References[v.against].Kind))
+}
+
+// NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit.
+func (v view) NoIngredient(c *rulebook.Condition) quantity.Truth {
+	found := quantity.No
+	for _, l := range v.subject.batch.Leaves {
+		if l.Ingredient != nil {
+			found = quantity.Any(found, v.processed(c, l))
+		}
+	}
+	return found.Not()
+}
+
+func (v view) processed(c *rulebook.Condition, l *rollup.Leaf) quantity.Truth {
+	return v.matches(&rulebook.IngredientTest{Process: c.Process, IodineAbove: c.IodineAbove}, l)
+}
+
+// matches tells whether an ingredient has one of the processes and an iodine value on the side asked for.
+func (m *market) matches(t *rulebook.IngredientTest, l *rollup.Leaf) quantity.Truth {
+	process := l.Ingredient.Process
+	if process == "" {
+		process = m.c.habits.origin(l).Process
+	}
+	if !slices.Contains(t.Process, process) {
+		return quantity.No
+	}
+	out := quantity.Yes
+	if t.IodineAbove != nil {
+		out = iodineAbove(l, *t.IodineAbove)
+	}
+	if t.IodineUpTo != nil {
+		out = quantity.All(out, iodineAbove(l, *t.IodineUpTo).Not())
+	}
+	return out
+}
+
+func iodineAbove(l *rollup.Leaf, limit decimal.Decimal) quantity.Truth {
+	low, high, ok := iodineValue(l)
+	switch {
+	case !ok:
+		return quantity.Open
+	case low.CmpDecimal(limit) > 0:
+		return quantity.Yes
+	case high.CmpDecimal(limit) <= 0:
+		return quantity.No
+	}
+	return quantity.Open
+}
+
+// Declared compares what a line prints on the first basis with "0", or asks whether the line stands.
+func (v view) Declared(q, is string) quantity.Truth {
+	if is == "" {
+		l, ok := v.lines[q]
+		return quantity.TruthOf(ok && v.stands(l))
+	}
+	p := v.possible(q)
+	want, err := decimal.NewFromString(is)
+	if err != nil || len(p) == 0 {
+		return quantity.Open
+	}
+	all, none := true, true
+	for _, o := range p {
+		same := !o.LessThan && o.Value.Equal(want)
+		all, none = all && same, none && !same
+	}
+	switch {
+	case all:
+		return quantity.Yes
+	case none:
+		return quantity.No
+	}
+	return quantity.Open
+}
