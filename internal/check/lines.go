@@ -230,7 +230,7 @@ func (v view) reportLine(l *lineState) (Line, bool) {
 		return Line{}, false
 	}
 	out := Line{Quantity: l.line.Quantity, Component: l.line.Component, Level: l.line.Level, Status: "determined", Presence: "optional",
-		Values: []Value{}, Term: l.line.Terms[v.language()][0], Terms: v.terms(l.line)}
+		Values: []Value{}, Term: l.line.Terms[v.language()][0], Terms: l.line.FirstTerms()}
 	if v.stands(l) {
 		out.Presence = "mandatory"
 		if l.line.LeaveOutIf != nil && !l.needed && v.truth(l.line.LeaveOutIf) == quantity.Yes {
@@ -285,19 +285,6 @@ func (v view) unfolded(c *rulebook.Condition) *rulebook.Condition {
 		return cl.Body.Condition
 	}
 	return c
-}
-
-func (v view) terms(l *rulebook.Line) map[string]string {
-	if len(v.law.Market.Languages) < 2 {
-		return nil
-	}
-	out := map[string]string{}
-	for _, lang := range v.law.Market.Languages {
-		if words := l.Terms[lang]; len(words) > 0 {
-			out[lang] = words[0]
-		}
-	}
-	return out
 }
 
 // mostNeeds bounds the list of what is missing: who has so many gaps needs no longer list.

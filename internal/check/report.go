@@ -131,7 +131,7 @@ type Value struct {
 	Declared         *string           `json:"declared"` // null where undetermined or not an amount
 	Unit             string            `json:"unit"`
 	Text             string            `json:"text"`
-	Texts            map[string]string `json:"texts,omitzero"` // by language, where more than one
+	Texts            map[string]string `json:"texts,omitzero"` // in the languages where it differs
 	Alternatives     []string          `json:"alternatives"`
 	PercentReference *Percent          `json:"percent_reference"`
 	Rule             string            `json:"rule"`

@@ -1,10 +1,11 @@
 package check
 
 import (
-	"gramlaw/internal/quantity"
-	"gramlaw/internal/rulebook"
 	"slices"
 	"strings"
+
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rulebook"
 )
 
 // accompany lists what must stand beside a permitted claim.

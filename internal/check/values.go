@@ -78,12 +78,28 @@ func (v view) print(out *Value, l *lineState, printed outcomes, amount bool, u q
 	for _, a := range printed[0].Alternatives {
 		out.Alternatives = append(out.Alternatives, format(lang, a))
 	}
-	if len(v.law.Market.Languages) > 1 {
-		out.Texts = map[string]string{}
-		for _, lang := range v.law.Market.Languages {
-			out.Texts[lang] = format(lang, first)
+	out.Texts = v.otherTexts(l, first, u, out.Text)
+}
+
+// otherTexts is what a line prints in the languages where that differs from the first.
+func (v view) otherTexts(l *lineState, p declare.Printed, u quantity.Unit, first string) map[string]string {
+	var out map[string]string
+	numbers := l.rule.Body.Number
+	lang := v.language()
+	last, text := numbers[lang], first
+	for _, other := range v.law.Market.Languages[1:] {
+		if f := numbers[other]; f != last || l.line.ShownUnit != nil {
+			last, text = f, l.text(p, u, other)
 		}
+		if text == first {
+			continue
+		}
+		if out == nil {
+			out = map[string]string{}
+		}
+		out[other] = text
 	}
+	return out
 }
 
 func (v view) isEnergy(q string) bool {
@@ -118,7 +134,7 @@ func (v view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x quan
 	}
 	ref, _ := v.law.ReferenceOf(l.line.Quantity)
 	p := r.Body.Percent
-	out := &Percent{Reference: ref.Body.Amounts[v.population()].String(), Rule: ref.ID, Source: ref.Head.Source.Ref}
+	out := &Percent{Reference: ref.Body.Text(v.population()), Rule: ref.ID, Source: ref.Head.Source.Ref}
 	if mid, known := x.Central(); known {
 		out.Exact = text(mid.Mul(quantity.FromInt(100)).Quo(rv))
 	}

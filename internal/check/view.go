@@ -1,14 +1,15 @@
 package check
 
 import (
-	"gramlaw/internal/claim"
-	"gramlaw/internal/quantity"
-	"gramlaw/internal/rollup"
-	"gramlaw/internal/rulebook"
 	"slices"
 	"strings"
 
 	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/claim"
+	"gramlaw/internal/quantity"
+	"gramlaw/internal/rollup"
+	"gramlaw/internal/rulebook"
 )
 
 // A view is the market seen with one food as the product of a condition, and one as its reference food. It is a

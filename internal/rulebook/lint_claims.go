@@ -80,9 +80,16 @@ func (c *checker) line(id, at string, line *Line) {
 	if u, ok := quantity.ParseUnit(line.Unit); line.Unit != "" && (!ok || u.Dimension() != c.dims[line.Quantity]) {
 		bad("/unit", "%q does not fit the quantity", line.Unit)
 	}
+	if len(c.m.Market.Languages) > 1 {
+		line.first = map[string]string{}
+	}
 	for _, lang := range c.m.Market.Languages {
 		if len(line.Terms[lang]) == 0 {
 			bad("/terms", "has no words in %q", lang)
+			continue
+		}
+		if line.first != nil {
+			line.first[lang] = line.Terms[lang][0]
 		}
 	}
 	node := "line/" + line.Quantity

@@ -134,7 +134,9 @@ func (c *checker) references() {
 		if len(r.Amounts) == 0 {
 			c.bad("reference_values", id, field+"/amounts", "is empty")
 		}
+		r.texts = make(map[string]string, len(r.Amounts))
 		for who, a := range r.Amounts {
+			r.texts[who] = a.String()
 			if a.Unit.Dimension() != c.dims[r.Quantity] {
 				c.bad("reference_values", id, field+"/amounts/"+who, "%s does not fit the quantity %s", a, r.Quantity)
 			}

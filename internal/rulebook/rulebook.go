@@ -211,7 +211,12 @@ func (m *Method) Terms() []Term { return m.terms }
 type Reference struct {
 	Quantity string                     `json:"quantity"`
 	Amounts  map[string]quantity.Amount `json:"amounts"` // by the values of the fact "intended for"
+
+	texts map[string]string
 }
+
+// Text is a population's amount as text.
+func (r *Reference) Text(population string) string { return r.texts[population] }
 
 // A Rounding turns exact values of some quantities into declared ones.
 type Rounding struct {
@@ -367,7 +372,12 @@ type Line struct {
 	ForbiddenIf *Condition `json:"forbidden if,omitzero"`
 	LeaveOutIf  *Condition `json:"leave out if,omitzero"`
 	LeftOut     Words      `json:"left out says,omitzero"`
+
+	first map[string]string
 }
+
+// FirstTerms are the preferred terms by language, where there is more than one language. Never change them.
+func (l *Line) FirstTerms() map[string]string { return l.first }
 
 // Terms are the words a line may carry, by language, the preferred first.
 type Terms map[string][]string
