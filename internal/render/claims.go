@@ -44,19 +44,27 @@ func (p *page) claims(m *check.Market, o Options) {
 		}
 		p.claim(m, &m.Claims[i], others[i], o)
 	}
-	if len(m.AlsoPermitted) == 0 {
-		return
-	}
+	p.candidates("Other claims this product could carry", m.AlsoPermitted, false)
+	p.candidates("Health claims it could carry", m.AlsoPermitted, true)
+}
+
+// candidates lists claims nobody asked for.
+func (p *page) candidates(title string, list []check.Candidate, health bool) {
 	var names []string
-	for _, c := range m.AlsoPermitted {
+	for _, c := range list {
+		if c.Health != health {
+			continue
+		}
 		s := c.Name + " [" + last(c.Claim) + "]"
 		if c.Verdict != check.Permitted {
 			s += " " + strings.ToLower(strings.TrimPrefix(verdicts[c.Verdict], "PERMITTED "))
 		}
 		names = append(names, s)
 	}
-	p.heading("Other claims this product could carry", '-')
-	p.line(0, strings.Join(names, "; ")+".")
+	if len(names) > 0 {
+		p.blank()
+		p.run(title, strings.Join(names, "; ")+".")
+	}
 }
 
 // last is the shared name of a claim, the end of its rule's identifier.
@@ -75,18 +83,38 @@ func (p *page) claim(m *check.Market, c *check.Claim, others []string, o Options
 		p.line(2, sentence(c.Why))
 	}
 	if c.Condition != nil {
-		p.decided(2, c.Condition)
+		p.decided(2, reasons(c))
 	}
-	p.statementList("", c.Statements, o)
+	p.statementList(c.Statements, o)
 	if len(c.NeedsLines) > 0 {
 		p.line(2, "Makes mandatory in the declaration: "+strings.Join(terms(m, c.NeedsLines, o), ", ")+".")
 	}
-	if more := untold(m, c); len(more) > 0 {
+	if more := untold(m, c); len(more) > 0 && c.Verdict != check.Refused {
 		p.line(2, "Still to be known: "+needed(more)+".")
 	}
 	if c.Source != "" {
 		p.line(2, "Source ("+grade(c.Force, c.Evidence)+"): "+sentence(c.Source))
 	}
+}
+
+// reasons is the decided condition; what data would settle of a claim that is refused anyway helps nobody.
+func reasons(c *check.Claim) *check.Condition {
+	if c.Verdict != check.Refused {
+		return c.Condition
+	}
+	quiet := withoutNeeds(*c.Condition)
+	return &quiet
+}
+
+func withoutNeeds(c check.Condition) check.Condition {
+	c.Needs = nil
+	for _, list := range []*[]check.Condition{&c.All, &c.Any, &c.Of} {
+		*list = slices.Clone(*list)
+		for i, part := range *list {
+			(*list)[i] = withoutNeeds(part)
+		}
+	}
+	return c
 }
 
 // shared finds claims that got the same answer for the same reason, where the answer is only that. The first stands for the
@@ -138,10 +166,7 @@ func terms(m *check.Market, quantities []string, o Options) []string {
 }
 
 // statementList writes statements with their place and, where the law prescribes more than one language, all of them.
-func (p *page) statementList(title string, list []check.Statement, o Options) {
-	if title != "" && len(list) > 0 {
-		p.heading(title, '-')
-	}
+func (p *page) statementList(list []check.Statement, o Options) {
 	for _, s := range list {
 		shown := in(o.Language, s.Text, s.Texts)
 		p.hang(2, 4, "", "“"+shown+"” ("+presence(s.Presence)+place(s.Place)+")")
@@ -168,7 +193,7 @@ func (p *page) languages(shown string, texts map[string]string) {
 			p.hang(4, 8, lang+": ", "“"+texts[lang]+"”")
 		}
 	}
-	if len(texts) > 2 {
+	if len(texts) > 2 && len(names) > 0 {
 		p.line(4, "The rules also have it in "+strings.Join(names, ", ")+".")
 	}
 }

@@ -12,9 +12,7 @@ import (
 // decided writes a condition and its parts, each behind yes, NO or open.
 func (p *page) decided(indent int, c *check.Condition) {
 	if c.Says == "" && len(c.Any)+len(c.Of) == 0 && c.Not == nil {
-		for i := range c.All {
-			p.decided(indent, &c.All[i])
-		}
+		p.every(indent, c.All)
 		return
 	}
 	label := answer(c.Holds)
@@ -27,13 +25,11 @@ func (p *page) decided(indent int, c *check.Condition) {
 			p.decided(rest, inner)
 			return
 		}
-		p.hang(indent, rest, label, "does not hold: "+inner.Says)
-		p.figures(rest, inner, false)
+		p.hang(indent, rest, label, "does not hold: "+joined(inner.Says)+figuresOf(inner, false))
 	case parts(c) != nil:
 		p.group(indent, rest, label, c)
 	default:
-		p.hang(indent, rest, label, c.Says)
-		p.figures(rest, c, true)
+		p.hang(indent, rest, label, joined(c.Says)+figuresOf(c, true))
 	}
 }
 
@@ -75,9 +71,41 @@ func (p *page) group(indent, rest int, label string, c *check.Condition) {
 		return
 	}
 	p.hang(indent, rest, label, title)
+	if len(c.Any)+len(c.Of) == 0 {
+		p.every(rest, c.All)
+		return
+	}
 	for i := range parts(c) {
 		p.decided(rest, &parts(c)[i])
 	}
+}
+
+// every writes conditions that must all hold; those that differ in their basis only stand on one line.
+func (p *page) every(indent int, list []check.Condition) {
+	for i := 0; i < len(list); i++ {
+		one := list[i]
+		for i+1 < len(list) && sameBut(&list[i], &list[i+1]) {
+			i++
+			_, per, _ := cutLast(list[i].Says, " per ")
+			one.Says += " and per " + per
+		}
+		p.decided(indent, &one)
+	}
+}
+
+// sameBut tells whether two comparisons read the same up to "per".
+func sameBut(a, b *check.Condition) bool {
+	first, _, ok := cutLast(a.Says, " per ")
+	second, _, ok2 := cutLast(b.Says, " per ")
+	return ok && ok2 && first == second && parts(a) == nil && parts(b) == nil && a.Not == nil && b.Not == nil &&
+		answer(a.Holds) == answer(b.Holds) && figuresOf(a, true) == figuresOf(b, true)
+}
+
+func cutLast(s, at string) (before, after string, found bool) {
+	if i := strings.LastIndex(s, at); i >= 0 {
+		return s[:i], s[i+len(at):], true
+	}
+	return s, "", false
 }
 
 func answer(holds *bool) string {
@@ -90,25 +118,27 @@ func answer(holds *bool) string {
 	return "NO    "
 }
 
-// figures writes the numbers of a comparison, and what would settle it.
-func (p *page) figures(indent int, c *check.Condition, headroom bool) {
+// figuresOf writes the numbers of a comparison behind its words, and what would settle it.
+func figuresOf(c *check.Condition, headroom bool) string {
+	var parts []string
 	if c.Threshold != "" {
-		s := comparison(c)
-		if headroom && c.Exact != nil && c.Headroom != "" {
-			s += "; " + room(c)
-		} else if headroom && c.Exact == nil && c.Holds != nil {
-			s += roomOfRange(c)
+		parts = append(parts, comparison(c))
+		if away := distance(c); headroom && away != "" {
+			parts = append(parts, away)
 		}
-		p.line(indent, s)
 	}
 	if len(c.Needs) > 0 {
-		p.line(indent, "would be settled by: "+needed(c.Needs))
+		parts = append(parts, "settled by data on "+needed(c.Needs))
 	}
+	if len(parts) == 0 {
+		return ""
+	}
+	return ": " + strings.Join(parts, "; ")
 }
 
 var relations = map[string]string{"<=": "≤", ">=": "≥", "<": "<", ">": ">"}
 
-// comparison reads "≈0.8784 g ≤ 2 g", with "not" where it fails.
+// comparison reads "≈0.8784 g"; the relation follows only where the words have no threshold: "≈0.8784 g ≤ 2 g".
 func comparison(c *check.Condition) string {
 	relation, ok := relations[c.Relation]
 	if !ok {
@@ -117,16 +147,32 @@ func comparison(c *check.Condition) string {
 	if c.Holds != nil && !*c.Holds {
 		relation = "is not " + relation
 	}
-	value := measured(c)
+	value, threshold := measured(c), withUnit(short(c.Threshold), c.Unit)
 	switch {
+	case c.NoValue != "":
+		return c.NoValue
 	case value == "" && c.Holds == nil:
 		return "the value is not determined"
 	case value == "":
 		return "no single value can be told"
+	case strings.Contains(c.Says, strings.ReplaceAll(threshold, bond, " ")):
+		return value
 	case c.Holds == nil:
-		return value + "; asked for is " + relation + " " + withUnit(short(c.Threshold), c.Unit)
+		return value + ", asked for is " + relation + " " + threshold
 	}
-	return value + " " + relation + " " + withUnit(short(c.Threshold), c.Unit)
+	return value + " " + relation + " " + threshold
+}
+
+// distance is how far a value is from its threshold.
+func distance(c *check.Condition) string {
+	switch {
+	case c.NoValue != "":
+	case c.Exact != nil && c.Headroom != "":
+		return room(c)
+	case c.Exact == nil && c.Holds != nil:
+		return roomOfRange(c)
+	}
+	return ""
 }
 
 // measured is the value of a comparison: a number, a range, or "" where there is none.
@@ -174,5 +220,5 @@ func roomOfRange(c *check.Condition) string {
 	}
 	near := decimal.Min(low.Sub(t).Abs(), high.Sub(t).Abs())
 	word := map[bool]string{true: "inside", false: "outside"}[*c.Holds]
-	return "; " + word + " by " + withUnit(short(near.String()), c.Unit) + " or more"
+	return word + " by " + withUnit(short(near.String()), c.Unit) + " or more"
 }

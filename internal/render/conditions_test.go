@@ -7,6 +7,12 @@ import (
 	"gramlaw/internal/check"
 )
 
+// perBasis is a fulfilled comparison that differs from others in its basis.
+func perBasis(per, value string) check.Condition {
+	holds := true
+	return check.Condition{Says: "fat at most 3 g per " + per, Exact: &value, Relation: "<=", Threshold: "3", Unit: "g", Holds: &holds}
+}
+
 func TestConditions(t *testing.T) {
 	yes, no := new(bool), new(bool)
 	*yes = true
@@ -29,18 +35,27 @@ func TestConditions(t *testing.T) {
 			"yes   not this:\n      yes   a\n      NO    b\n"},
 		{"a group with words of the law", check.Condition{Says: "as sold:", All: []check.Condition{leaf("a", yes), leaf("b", yes)}, Holds: yes},
 			"yes   as sold: all of these:\n      yes   a\n      yes   b\n"},
-		{"inside", fat(check.Condition{Exact: text("2.5"), Headroom: "0.5", Holds: yes}), "yes   fat at most 3 g\n      2.5 g ≤ 3 g; inside by 0.5 g\n"},
-		{"at the threshold", fat(check.Condition{Exact: text("3"), Headroom: "0", Holds: yes}), "yes   fat at most 3 g\n      3 g ≤ 3 g; exactly at the threshold\n"},
+		{"inside", fat(check.Condition{Exact: text("2.5"), Headroom: "0.5", Holds: yes}), "yes   fat at most 3 g: 2.5 g; inside by 0.5 g\n"},
+		{"at the threshold", fat(check.Condition{Exact: text("3"), Headroom: "0", Holds: yes}), "yes   fat at most 3 g: 3 g; exactly at the threshold\n"},
 		{"just outside", fat(check.Condition{Exact: text("3.0000012"), Headroom: "-0.0000012", Holds: no}),
-			"NO    fat at most 3 g\n      ≈3.000001 g is not ≤ 3 g; outside by 0.0000012 g\n"},
-		{"a decided range", fat(check.Condition{Low: "3.5", High: "4", Holds: no}), "NO    fat at most 3 g\n      3.5 to 4 g is not ≤ 3 g; outside by 0.5 g or more\n"},
+			"NO    fat at most 3 g: ≈3.000001 g; outside by 0.0000012 g\n"},
+		{"a decided range", fat(check.Condition{Low: "3.5", High: "4", Holds: no}), "NO    fat at most 3 g: 3.5 to 4 g; outside by 0.5 g or more\n"},
 		{"an open range", fat(check.Condition{Low: "2.5", High: "4", Needs: []string{"oats (FAT)", "oats (FASAT)", "salt"}}),
-			"open  fat at most 3 g\n      2.5 to 4 g; asked for is ≤ 3 g\n      would be settled by: oats (FAT, FASAT), salt\n"},
+			"open  fat at most 3 g: 2.5 to 4 g; settled by data on oats (FAT, FASAT), salt\n"},
 		{"an open range with a typical value", fat(check.Condition{Low: "2.5", High: "4", Exact: text("2.9"), Headroom: "0.1"}),
-			"open  fat at most 3 g\n      typically 2.9 g, possible 2.5 to 4 g; asked for is ≤ 3 g; inside by 0.1 g\n"},
-		{"no upper end", fat(check.Condition{Low: "2.5", High: "0"}), "open  fat at most 3 g\n      2.5 g or more; asked for is ≤ 3 g\n"},
-		{"nothing known", fat(check.Condition{Low: "0", High: "0"}), "open  fat at most 3 g\n      the value is not determined\n"},
-		{"no value", fat(check.Condition{Low: "0", High: "0", Holds: no}), "NO    fat at most 3 g\n      no single value can be told\n"},
+			"open  fat at most 3 g: typically 2.9 g, possible 2.5 to 4 g; inside by 0.1 g\n"},
+		{"no upper end", fat(check.Condition{Low: "2.5", High: "0"}), "open  fat at most 3 g: 2.5 g or more\n"},
+		{"nothing known", fat(check.Condition{Low: "0", High: "0"}), "open  fat at most 3 g: the value is not determined\n"},
+		{"no value", fat(check.Condition{Low: "0", High: "0", Holds: no}), "NO    fat at most 3 g: no single value can be told\n"},
+		{"nothing to be a share of", fat(check.Condition{NoValue: "there is nothing to be a share of", Holds: no}), "NO    fat at most 3 g: there is nothing to be a share of\n"},
+		{"words of the law without the figure", check.Condition{Says: "it is poor in fat", Exact: text("3.5"), Relation: "<=", Threshold: "3", Unit: "g", Headroom: "-0.5", Holds: no},
+			"NO    it is poor in fat: 3.5 g is not ≤ 3 g; outside by 0.5 g\n"},
+		{"words without the figure, open", check.Condition{Says: "it is poor in fat", Low: "2", High: "4", Relation: "<=", Threshold: "3", Unit: "g"},
+			"open  it is poor in fat: 2 to 4 g, asked for is ≤ 3 g\n"},
+		{"the same on two bases", check.Condition{All: []check.Condition{perBasis("serving", "1"), perBasis("reference amount", "1"), perBasis("50 g", "2")}, Holds: yes},
+			"yes   fat at most 3 g per serving and per reference amount: 1 g\nyes   fat at most 3 g per 50 g: 2 g\n"},
+		{"one of two bases is not both", check.Condition{Any: []check.Condition{perBasis("serving", "1"), perBasis("reference amount", "1")}, Holds: yes},
+			"yes   one of these at least:\n      yes   fat at most 3 g per serving: 1 g\n      yes   fat at most 3 g per reference amount: 1 g\n"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			p := &page{}

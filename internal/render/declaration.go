@@ -6,7 +6,7 @@ import (
 	"gramlaw/internal/check"
 )
 
-const mandatory, leftOut, determined = "mandatory", "may be left out", "determined"
+const mandatory, voluntary, leftOut, determined = "mandatory", "optional", "may be left out", "determined"
 
 // declaration writes what the label may state: a table for every basis, then what the table cannot show.
 func (p *page) declaration(m *check.Market, o Options) {
@@ -20,11 +20,19 @@ func (p *page) declaration(m *check.Market, o Options) {
 		p.basis(d, b, o, marks)
 	}
 	p.legend(marks)
+	p.blank()
+	p.servings(d.Servings, o)
 	p.open(d.Lines, o)
+	p.additions(d, o)
+	p.notKnown(d)
 	p.omissions(d.Lines, o)
+	p.simplified(d.Simplified)
 	p.alternatives(d, o)
 	p.grounds(d.Lines, o)
-	p.statementList("Statements with the declaration", d.Statements, o)
+	if len(d.Statements) > 0 {
+		p.line(0, "Statements with the declaration:")
+		p.statementList(d.Statements, o)
+	}
 	p.contributions(d, o)
 }
 
@@ -73,7 +81,7 @@ func (p *page) basis(d *check.Table, b check.Basis, o Options, marks map[string]
 	t.row(cell{}, cell{text: rule}, cell{text: rule}, cell{text: rule}, cell{text: rule})
 	for i := range d.Lines {
 		l := &d.Lines[i]
-		if l.Presence == "optional" && l.Status != determined {
+		if l.Presence == voluntary {
 			continue
 		}
 		mark := markOf(l)
@@ -96,8 +104,6 @@ func markOf(l *check.Line) string {
 		return "?"
 	case l.Presence == leftOut:
 		return "-"
-	case l.Presence == "optional":
-		return "+"
 	}
 	return ""
 }
@@ -109,17 +115,29 @@ func cellsOf(l *check.Line, basis string, o Options) (printed, percent, exact st
 			continue
 		}
 		if r := v.PercentReference; r != nil && r.Text != "" {
-			percent = bound(openEnd(r.Text, v)) + " " + bound("of "+r.Reference)
+			percent = bound(openEnd(r.Text, v)) + " " + bound("of "+asPrinted(r.Reference, v))
 		}
-		return bound(openEnd(in(o.Language, v.Text, v.Texts), v)), percent, exactly(v)
+		return bound(openEnd(in(o.Language, v.Text, v.Texts), v)), percent, asPrinted(exactly(v), v)
 	}
 	return "", "", "not known"
+}
+
+// asPrinted writes the unit of an amount as the label prints it, where the label does not write it as the report does.
+func asPrinted(s string, v *check.Value) string {
+	word := v.Text[strings.LastIndexByte(v.Text, ' ')+1:]
+	if v.Unit == "" || word == v.Unit || word == v.Text || strings.ContainsAny(word, "0123456789") {
+		return s
+	}
+	for _, space := range []string{" ", bond} {
+		s = strings.ReplaceAll(s, space+v.Unit, space+word)
+	}
+	return s
 }
 
 func (p *page) legend(marks map[string]bool) {
 	var parts []string
 	for _, m := range []struct{ mark, means string }{
-		{"+", "optional"}, {"-", "may be left out"}, {"?", "mandatory, and the data leave it open between the two"},
+		{"-", "may be left out"}, {"?", "the data leave it open which of the two is printed"},
 	} {
 		if marks[m.mark] {
 			parts = append(parts, m.mark+" "+m.means)

@@ -15,10 +15,7 @@ const namesMost = 15
 func needed(list []string) string {
 	var by bundles
 	for _, s := range list {
-		name, what := s, ""
-		if i := strings.LastIndex(s, " ("); i > 0 && strings.HasSuffix(s, ")") {
-			name, what = s[:i], s[i+2:len(s)-1]
-		}
+		name, what := ingredientOf(s)
 		by.add(what, name)
 	}
 	var out []string
@@ -33,6 +30,14 @@ func needed(list []string) string {
 		return fmt.Sprintf("%s and %d more", strings.Join(out, ", "), more)
 	}
 	return strings.Join(out, ", ")
+}
+
+// ingredientOf takes "yolk (FASAT)" apart.
+func ingredientOf(need string) (name, what string) {
+	if i := strings.LastIndex(need, " ("); i > 0 && strings.HasSuffix(need, ")") {
+		return need[:i], need[i+2 : len(need)-1]
+	}
+	return need, ""
 }
 
 // untold is what a claim needs and neither its condition nor the declaration has told.

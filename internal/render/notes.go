@@ -33,44 +33,43 @@ func (p *page) findings(list []check.Finding) {
 	}
 }
 
-// presumedBefore remembers in which market a presumption was told first, so that it is told once.
-type presumedBefore map[check.Presumed]string
-
-// presumed lists what practice takes where nobody stated a value: one line for a rule, its components and their foods.
-func (p *page) presumed(m *check.Market, told presumedBefore) {
-	var fresh []check.Presumed
-	var earlier bundles
-	for _, x := range m.Presumed {
-		if where, ok := told[x]; ok {
-			earlier.add("", where)
-			continue
+// presumed lists what practice takes where nobody stated a value, once for all markets: a paragraph for a rule.
+func (p *page) presumed(markets []check.Market) {
+	in := map[check.Presumed][]string{}
+	var order []check.Presumed
+	for i := range markets {
+		for _, x := range markets[i].Presumed {
+			if in[x] == nil {
+				order = append(order, x)
+			}
+			in[x] = append(in[x], markets[i].Name)
 		}
-		told[x] = m.Name
-		fresh = append(fresh, x)
 	}
-	if len(m.Presumed) == 0 {
+	if len(order) == 0 {
 		return
 	}
 	p.heading("Presumed by practice, not stated by anyone", '-')
-	for _, e := range earlier.list {
-		p.item(2, fmt.Sprintf("%d %s as told for %s.", len(e.names), plural(len(e.names), "presumption", "presumptions"), e.key[0]))
-	}
-	for _, b := range presumptions(fresh).list {
-		p.item(2, strings.Join(b.names, ", ")+" taken as "+b.key[1]+": "+b.key[3])
-		p.line(4, "("+sentence(b.key[2])+" Rule "+b.key[0]+".)")
+	for _, b := range presumptions(order, in, len(markets)).list {
+		p.item(2, sentence(b.key[1])+" "+strings.Join(b.names, "; ")+". ["+b.key[0]+"]")
 	}
 }
 
-// presumptions joins the foods of a component under a rule, then components with the same foods. The keys are rule, what is
-// taken, reason and foods.
-func presumptions(list []check.Presumed) bundles {
-	var by bundles
+// presumptions joins the foods of a component under a rule, then components with the same foods. The keys are rule and
+// reason; the names say what is taken, and where if not in all markets.
+func presumptions(list []check.Presumed, in map[check.Presumed][]string, all int) bundles {
+	var foods, components, out bundles
 	for _, x := range list {
-		by.add(x.Ingredient, x.Rule, x.Taken, x.Reason, x.Component)
+		where := ""
+		if len(in[x]) < all {
+			where = " (" + strings.Join(in[x], ", ") + ")"
+		}
+		foods.add(x.Ingredient, x.Rule, x.Reason, x.Taken, where, x.Component)
 	}
-	var out bundles
-	for _, b := range by.list {
-		out.add(b.key[3], b.key[0], b.key[1], b.key[2], strings.Join(b.names, ", "))
+	for _, b := range foods.list {
+		components.add(b.key[4], b.key[0], b.key[1], b.key[2], b.key[3], strings.Join(b.names, ", "))
+	}
+	for _, b := range components.list {
+		out.add(strings.Join(b.names, ", ")+" taken as "+b.key[2]+" in "+b.key[4]+b.key[3], b.key[:2]...)
 	}
 	return out
 }
@@ -83,12 +82,13 @@ func plural(n int, one, more string) string {
 }
 
 func (p *page) assumed(list []check.Assumed) {
-	if len(list) == 0 {
-		return
-	}
-	p.heading("Assumed, because the recipe does not say", '-')
+	var parts []string
 	for _, a := range list {
-		p.item(2, a.Fact+": "+a.Taken+" ("+a.Why+")")
+		parts = append(parts, a.Fact+" “"+a.Taken+"” ("+a.Why+")")
+	}
+	if len(parts) > 0 {
+		p.blank()
+		p.run("Assumed, because the recipe does not say", strings.Join(parts, "; ")+".")
 	}
 }
 
@@ -110,19 +110,20 @@ func (p *page) other(o *check.Other) {
 	p.items(o.Changes)
 }
 
+// gaps counts the known gaps of the rules, or lists them.
 func (p *page) gaps(gaps []string, o Options) {
 	if len(gaps) == 0 {
 		return
 	}
-	if !o.Gaps {
-		s := fmt.Sprintf("These rules have %d known %s", len(gaps), plural(len(gaps), "gap", "gaps"))
-		if o.GapsHint != "" {
-			s += "; " + o.GapsHint
-		}
-		p.blank()
-		p.line(0, s+".")
+	if o.Gaps {
+		p.heading("Known gaps of these rules", '-')
+		p.items(gaps)
 		return
 	}
-	p.heading("Known gaps of these rules", '-')
-	p.items(gaps)
+	s := fmt.Sprintf("These rules have %d known %s", len(gaps), plural(len(gaps), "gap", "gaps"))
+	if o.GapsHint != "" {
+		s += "; " + o.GapsHint
+	}
+	p.blank()
+	p.line(0, s+".")
 }

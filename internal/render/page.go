@@ -8,6 +8,23 @@ const bond = "\u00a0"
 // bound keeps a number and its unit on one line.
 func bound(s string) string { return strings.ReplaceAll(s, " ", bond) }
 
+// joined holds every number and the unit after it together.
+func joined(s string) string {
+	words := strings.Split(s, " ")
+	out := words[0]
+	for i, word := range words[1:] {
+		before := words[i]
+		if before != "" && before[len(before)-1] >= '0' && before[len(before)-1] <= '9' && units[strings.TrimRight(word, ",;:.)")] {
+			out += bond + word
+			continue
+		}
+		out += " " + word
+	}
+	return out
+}
+
+var units = map[string]bool{"%": true, "g": true, "mg": true, "µg": true, "mcg": true, "mL": true, "kcal": true, "kJ": true}
+
 // A page collects lines. Everything that reaches it is cleaned and wrapped.
 type page struct{ strings.Builder }
 
@@ -47,6 +64,9 @@ func (p *page) put(line string) {
 	p.WriteString(strings.TrimRight(strings.ReplaceAll(line, bond, " "), " "))
 	p.WriteByte('\n')
 }
+
+// run writes a paragraph that begins with its title; what wraps stands further in.
+func (p *page) run(title, s string) { p.hang(0, 2, "", title+": "+s) }
 
 // heading writes a title, underlined as long as its longest line.
 func (p *page) heading(s string, under byte) {

@@ -23,10 +23,10 @@ type Options struct {
 func Text(w io.Writer, r *check.Report, o Options) error {
 	p := &page{}
 	p.front(r)
-	told := presumedBefore{}
 	for i := range r.Jurisdictions {
-		p.market(r, &r.Jurisdictions[i], o, told)
+		p.market(r, &r.Jurisdictions[i], o)
 	}
+	p.presumed(r.Jurisdictions)
 	p.heading("Caution", '=')
 	p.line(0, r.Caution)
 	_, err := io.WriteString(w, p.String())
@@ -62,7 +62,7 @@ func digest(s string) string {
 }
 
 // market writes one jurisdiction's part.
-func (p *page) market(r *check.Report, m *check.Market, o Options, told presumedBefore) {
+func (p *page) market(r *check.Report, m *check.Market, o Options) {
 	title := m.Name
 	if m.Edition != "" {
 		title += ", edition " + m.Edition
@@ -78,12 +78,14 @@ func (p *page) market(r *check.Report, m *check.Market, o Options, told presumed
 		p.heading("Findings", '-')
 		p.findings(m.Findings)
 	}
-	p.presumed(m, told)
+	p.naming(m.Naming)
 	p.assumed(m.Assumed)
 	p.other(m.Other)
 	p.gaps(m.Gaps, o)
 	if m.Caution != "" {
-		p.blank()
+		if o.Gaps || len(m.Gaps) == 0 {
+			p.blank()
+		}
 		p.line(0, m.Caution)
 	}
 }
