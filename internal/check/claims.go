@@ -88,7 +88,11 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	r := claim.Evaluate(m.withStated(b, a), *v)
 	c := m.condition(r)
 	out.Condition = &c
-	switch r.Truth {
+	truth := r.Truth
+	if b.BarredIf != nil { // it does not bar: it is open, or does not hold
+		truth = quantity.All(truth, v.truth(b.BarredIf).Not())
+	}
+	switch truth {
 	case quantity.Yes:
 		out.Verdict, out.Printable = Permitted, true
 	case quantity.No:
@@ -96,6 +100,10 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	default:
 		out.Verdict = Undetermined
 		out.Needs = needsOf(c)
+		if r.Truth == quantity.Yes {
+			barred := m.condition(claim.Evaluate(b.BarredIf, *v))
+			out.Why, out.Needs = "not determined whether the claim is barred here: "+barred.Says, needsOf(barred)
+		}
 	}
 	return out, b
 }

@@ -25,10 +25,12 @@ func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []
 		}
 		c := m.condition(r)
 		f := Finding{Kind: kind, Severity: l.Body.Severity, Code: l.Body.Code, Says: l.Body.Says.In("en"), Condition: &c, Rule: l.ID, Source: l.Head.Source.Ref}
-		if r.Truth == quantity.Open || where == quantity.Open {
-			if kind == "serving" {
-				continue // nothing is known of the package: packaging has said so
-			}
+		switch {
+		case where == quantity.Open && kind == "serving":
+			f.Severity, f.Says = "note", "where it applies: "+f.Says
+		case r.Truth == quantity.Open && kind == "serving":
+			continue // nothing is known of the package: packaging has said so
+		case r.Truth == quantity.Open || where == quantity.Open:
 			f.Severity, f.Says = "open", "not determined: "+f.Says
 		}
 		out = append(out, f)

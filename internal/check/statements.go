@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
 	"gramlaw/internal/rulebook"
 )
 
@@ -145,6 +146,10 @@ func (v view) placeholder(name string, c *Claim) string {
 		ok = text != ""
 	case strings.HasSuffix(name, " of reference food") && v.ref != nil:
 		text, ok = v.printed(v.ref, strings.TrimSuffix(name, " of reference food"))
+	case name == "reference amount":
+		var r recipe.ReferenceAmount
+		r, ok = v.referenceAmount()
+		text = r.Amount.String()
 	case strings.HasPrefix(name, "amount of "):
 		text, ok = v.amountOfQuantity(strings.TrimPrefix(name, "amount of "))
 	case strings.HasSuffix(name, " difference") && v.ref != nil:

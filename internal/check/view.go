@@ -140,16 +140,32 @@ func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 }
 
 // ClaimedAbout tells whether a claim that stands is about one of the subjects; where one claim is judged, whether it is.
-func (v view) ClaimedAbout(subjects []string) quantity.Truth {
+func (v view) ClaimedAbout(subjects []string, onLabel bool) quantity.Truth {
 	about := v.about
-	if v.own != nil {
+	if v.own != nil && !onLabel {
 		about = v.own
 	}
 	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return about[s] || s == "any" && len(about) > 0 }))
 }
 
-// Size is the mass in g of the package, of the serving, or of one of the package's units.
+// Named is the active version of a condition that has a rule of its own.
+func (v view) Named(id string) (*rulebook.Condition, bool) {
+	c, ok := v.law.Conditions.Get(rulebook.Name(id))
+	if !ok {
+		return nil, false
+	}
+	return c.Body.Condition, true
+}
+
+// Size is the mass in g of the package, of the serving, or of one of the package's units, or the package's surface in cm².
 func (v view) Size(name string) (quantity.Ratio, bool) {
+	if name == "surface" {
+		p := v.c.recipe.Package
+		if p == nil || !p.Surface.IsPositive() {
+			return quantity.Ratio{}, false
+		}
+		return quantity.FromDecimal(p.Surface), true
+	}
 	if name == "serving" {
 		if _, stated := v.c.recipe.Serving.For(v.j); !stated {
 			return quantity.Ratio{}, false

@@ -30,6 +30,12 @@ func (x evaluator) decide(c *rulebook.Condition) quantity.Truth {
 		return united(c, truths)
 	case rulebook.OpWhen:
 		return x.decideWhen(c)
+	case rulebook.OpHolds:
+		named, ok := x.Named(c.Name)
+		if !ok {
+			return quantity.No
+		}
+		return x.decide(named)
 	}
 	return x.ask(c).Truth
 }

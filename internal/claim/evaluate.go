@@ -3,6 +3,8 @@
 package claim
 
 import (
+	"strings"
+
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
 )
@@ -32,10 +34,11 @@ type Context interface {
 	Fact(name, is string) quantity.Truth
 	Measured(name string) (quantity.Ratio, bool) // a fact that is an amount, in base units
 	ReferenceAmount(atMost []quantity.Amount) quantity.Truth
-	ClaimedAbout(subjects []string) quantity.Truth
+	ClaimedAbout(subjects []string, onLabel bool) quantity.Truth
+	Named(id string) (*rulebook.Condition, bool) // a condition that has a rule of its own
 	NoIngredient(c *rulebook.Condition) quantity.Truth
 	ReferenceKind(kinds []string) quantity.Truth // open without a reference food
-	// Size is the mass in g of the package, the serving or one unit.
+	// Size is the mass in g of the package, the serving or one unit, or the surface in cm².
 	Size(name string) (quantity.Ratio, bool)
 }
 
@@ -75,6 +78,11 @@ func (x evaluator) explain(c *rulebook.Condition) Result {
 		return x.combine(c)
 	case rulebook.OpWhen:
 		return x.when(c)
+	case rulebook.OpHolds:
+		if named, ok := x.Named(c.Name); ok {
+			return taken(x.evaluate(named))
+		}
+		return Result{Truth: quantity.No}
 	}
 	return x.atom(c)
 }
@@ -147,7 +155,7 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 	case rulebook.OpKind:
 		return lacking(x.ReferenceKind(c.Kinds), "the reference food")
 	case rulebook.OpAbout:
-		return Result{Truth: x.ClaimedAbout(c.About)}
+		return Result{Truth: x.ClaimedAbout(c.About, c.Label)}
 	default:
 		return Result{Truth: x.NoIngredient(c)}
 	}
@@ -170,10 +178,13 @@ func (x evaluator) size(c *rulebook.Condition) quantity.Truth {
 	if !ok {
 		return quantity.Open
 	}
+	if c.Name == "surface" {
+		return sign(c.Relation, quantity.Exactly(size.Sub(c.Limit())))
+	}
 	per := rulebook.Per{Amount: c.Threshold}
 	share := quantity.FromInt(1)
-	if c.As != "" {
-		per, share = rulebook.Per{Name: "reference amount"}, quantity.FromDecimal(c.Threshold.Value.Shift(-2))
+	if of, ok := strings.CutPrefix(c.As, "share of "); ok {
+		per, share = rulebook.Per{Name: of}, quantity.FromDecimal(c.Threshold.Value.Shift(-2))
 	}
 	limit, ok := x.Product().Basis(per)
 	if !ok {

@@ -48,9 +48,12 @@ func (w world) Size(name string) (quantity.Ratio, bool) {
 func (w world) EnergyFactor(string) (quantity.Ratio, bool)       { return quantity.FromInt(9), true }
 func (w world) ReferenceValue(string) (quantity.Ratio, bool)     { return quantity.FromInt(20), true }
 func (w world) ReferenceAmount([]quantity.Amount) quantity.Truth { return quantity.Yes }
-func (w world) ClaimedAbout([]string) quantity.Truth             { return quantity.No }
-func (w world) NoIngredient(*rulebook.Condition) quantity.Truth  { return quantity.Yes }
-func (w world) ReferenceKind([]string) quantity.Truth            { return quantity.Open }
+func (w world) ClaimedAbout([]string, bool) quantity.Truth       { return quantity.No }
+func (w world) Named(id string) (*rulebook.Condition, bool) {
+	return &rulebook.Condition{Op: rulebook.OpFact, Name: "state", Is: "solid"}, id == "x/condition/solid"
+}
+func (w world) NoIngredient(*rulebook.Condition) quantity.Truth { return quantity.Yes }
+func (w world) ReferenceKind([]string) quantity.Truth           { return quantity.Open }
 
 func parse(t *testing.T, s string) *rulebook.Condition {
 	t.Helper()
@@ -114,6 +117,9 @@ func TestConditions(t *testing.T) {
 		{"a package of twice the reference amount", `{"size of":"package","as":"share of reference amount","at least":"200 %"}`, world{product: bread}, quantity.Yes},
 		{"a package below twice the reference amount", `{"size of":"package","as":"share of reference amount","below":"200 %"}`, world{product: bread}, quantity.No},
 		{"a package by mass", `{"size of":"package","at most":"60 g"}`, world{product: bread}, quantity.Yes},
+		{"a serving as a share of the package", `{"size of":"package","as":"share of serving","at least":"200 %"}`, world{product: bread}, quantity.Yes},
+		{"a named condition", `{"holds":"x/condition/solid"}`, world{product: bread}, quantity.Yes},
+		{"a named condition that is not in force", `{"holds":"x/condition/other"}`, world{product: bread}, quantity.No},
 		{"a unit nobody weighed", `{"size of":"unit","at most":"60 g"}`, world{product: bread}, quantity.Open},
 		{"one of two", `{"at least":1,"of":[{"fact":"state","is":"solid"},{"fact":"x","is":"y"}]}`, world{product: bread}, quantity.Yes},
 

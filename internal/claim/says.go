@@ -88,8 +88,8 @@ func atomSays(c *rulebook.Condition, x Context) string {
 		return amountSays(c)
 	case rulebook.OpSize:
 		s := "the " + c.Name + " is " + string(c.Relation) + " " + c.Threshold.String()
-		if c.As != "" {
-			s += " of the reference amount"
+		if of, ok := strings.CutPrefix(c.As, "share of "); ok {
+			s += " of the " + of
 		}
 		return s
 	case rulebook.OpKind:

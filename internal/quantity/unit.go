@@ -13,6 +13,7 @@ const (
 	EnergyKcal // kilocalories and kilojoules are two dimensions: a law gives each its own factors
 	EnergyKJ
 	Percent
+	Area
 )
 
 // A Unit is one of the units that documents and rules may state.
@@ -33,6 +34,7 @@ const (
 	Kilocalorie
 	Kilojoule
 	PerCent
+	SquareCentimetre
 )
 
 type unitFacts struct {
@@ -59,9 +61,11 @@ var units = [...]unitFacts{
 	Kilocalorie: {"kcal", EnergyKcal, tenTo(0), false},
 	Kilojoule:   {"kJ", EnergyKJ, tenTo(0), false},
 	PerCent:     {"%", Percent, tenTo(0), false},
+
+	SquareCentimetre: {"cm2", Area, tenTo(0), false},
 }
 
-// ParseUnit knows g, mg, µg (also ug, mcg), kg, mL (also ml), L (also l), tsp, tbsp, cup, kcal, kJ and %.
+// ParseUnit knows g, mg, µg (also ug, mcg), kg, mL (also ml), L (also l), tsp, tbsp, cup, kcal, kJ, % and cm2 (also cm²).
 func ParseUnit(s string) (Unit, bool) {
 	switch s {
 	case "ug", "mcg", "μg": // the last is the Greek letter mu
@@ -70,6 +74,8 @@ func ParseUnit(s string) (Unit, bool) {
 		return Millilitre, true
 	case "l":
 		return Litre, true
+	case "cm²":
+		return SquareCentimetre, true
 	}
 	for u := Gram; int(u) < len(units); u++ {
 		if units[u].name == s {

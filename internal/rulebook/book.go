@@ -46,6 +46,7 @@ type Rules struct {
 	Serving          []Rule[Limit] // what must hold of serving and package
 	HealthClaims     []Rule[Claim]
 	Naming           []Rule[Naming]
+	Conditions       []Rule[Named]
 }
 
 // Jurisdictions lists the markets of the set, sorted.

@@ -28,6 +28,7 @@ const (
 	OpIngredient Op = "no ingredient"
 	OpKind       Op = "reference food is"
 	OpSize       Op = "size of"
+	OpHolds      Op = "holds"
 	OpAll        Op = "all"
 	OpAny        Op = "any"
 	OpNot        Op = "not"
@@ -63,6 +64,7 @@ type Condition struct {
 	// OpAmount: at most one of these, each in its own unit. OpAbout: subjects. OpKind: kinds of reference food.
 	Amounts []quantity.Amount
 	About   []string
+	Label   bool // OpAbout: of all claims on the label, not of the one judged
 	Kinds   []string
 
 	// OpIngredient
@@ -216,6 +218,12 @@ func (c *Condition) readAtom(r *reader) {
 	case r.m["claimed about"] != nil:
 		c.Op = OpAbout
 		r.into(r.take("claimed about"), &c.About)
+	case r.m["claimed on the label about"] != nil:
+		c.Op, c.Label = OpAbout, true
+		r.into(r.take("claimed on the label about"), &c.About)
+	case r.m[string(OpHolds)] != nil:
+		c.Op = OpHolds
+		text(string(OpHolds), &c.Name)
 	case r.m["no ingredient"] != nil:
 		c.readIngredient(r)
 	case r.m[string(OpSize)] != nil:

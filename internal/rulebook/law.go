@@ -54,6 +54,7 @@ type Law struct {
 	Serving          List[Limit]
 	HealthClaims     List[Claim]
 	Naming           List[Naming]
+	Conditions       List[Named]
 
 	roundingOf  map[string]int // quantity -> index in Roundings
 	referenceOf map[string]int
@@ -106,6 +107,7 @@ func (b *Book) At(jurisdiction, date string, t Transition, facts func(*Condition
 	law.Serving = active(s, m.Serving)
 	law.HealthClaims = active(s, m.HealthClaims)
 	law.Naming = active(s, m.Naming)
+	law.Conditions = active(s, m.Conditions)
 	law.index()
 	return law, true
 }

@@ -151,6 +151,7 @@ func each(m *Rules, visit func(kind, id string, h *Head)) {
 	eachOf("serving", m.Serving, visit)
 	eachOf("health_claims", m.HealthClaims, visit)
 	eachOf("naming", m.Naming, visit)
+	eachOf("conditions", m.Conditions, visit)
 }
 
 func eachOf[T any](kind string, rules []Rule[T], visit func(kind, id string, h *Head)) {

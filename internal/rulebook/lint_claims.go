@@ -182,6 +182,12 @@ func (c *checker) limitsOf(kind string, rules []Rule[Limit]) {
 }
 
 func (c *checker) naming() {
+	bodies(c.m.Conditions, func(id, field string, n *Named) {
+		if n.Condition == nil {
+			c.bad("conditions", id, field+"/condition", "is missing")
+		}
+		c.condition("conditions", id, field+"/condition", "condition/"+Name(id), n.Condition)
+	})
 	bodies(c.m.Naming, func(id, field string, n *Naming) {
 		c.words("naming", id, field+"/says", n.Says)
 		if (n.Ingredients == nil) == (n.Condition == nil) {

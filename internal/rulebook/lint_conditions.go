@@ -70,6 +70,11 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 			if p.N < 1 || p.N > len(p.Parts) {
 				bad("%d of %d conditions cannot hold", p.N, len(p.Parts))
 			}
+		case OpHolds:
+			if !slices.ContainsFunc(c.m.Conditions, func(r Rule[Named]) bool { return r.ID == p.Name }) {
+				bad("%q is no condition of this market", p.Name)
+			}
+			c.depend(node, "condition/"+Name(p.Name))
 		case OpSize:
 			c.size(kind, id, field, p)
 		case OpFact:
@@ -99,12 +104,15 @@ func (c *checker) meets(kind, id, field, node string, p *Condition) {
 }
 
 func (c *checker) size(kind, id, field string, p *Condition) {
-	if !slices.Contains([]string{"package", "serving", "unit"}, p.Name) {
-		c.bad(kind, id, field, "%q is none of package, serving, unit", p.Name)
+	if !slices.Contains([]string{"package", "serving", "unit", "surface"}, p.Name) {
+		c.bad(kind, id, field, "%q is none of package, serving, unit, surface", p.Name)
 	}
 	dim := p.Threshold.Unit.Dimension()
 	switch {
-	case p.As == "share of reference amount" && dim == quantity.Percent:
+	case p.Name == "surface" && p.As == "" && dim == quantity.Area:
+	case p.Name == "surface":
+		c.bad(kind, id, field, "a surface is compared with cm2, not with %s", p.Threshold)
+	case (p.As == "share of reference amount" || p.As == "share of package") && dim == quantity.Percent:
 	case p.As == "" && (dim == quantity.Mass || dim == quantity.Volume):
 	default:
 		c.bad(kind, id, field, "compares with %s as %q; a mass, a volume or a share of reference amount is wanted", p.Threshold, p.As)

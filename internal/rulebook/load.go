@@ -180,6 +180,8 @@ func (l *loader) kind(m *Rules, name, dir, kind string, b []byte) {
 		m.Serving = rules[Limit](l, name, dir, "serving", b)
 	case "health_claims":
 		m.HealthClaims = rules[Claim](l, name, dir, "health-claim", b)
+	case "conditions":
+		m.Conditions = rules[Named](l, name, dir, "condition", b)
 	case "naming":
 		m.Naming = rules[Naming](l, name, dir, "naming", b)
 	default:

@@ -334,6 +334,11 @@ type CountBand struct {
 	Nearest decimal.Decimal  `json:"nearest"`
 }
 
+// A Named is a condition that other rules point at.
+type Named struct {
+	Condition *Condition `json:"condition"`
+}
+
 // A Naming says how an ingredient must be named, or which name the product may bear.
 type Naming struct {
 	Ingredients *IngredientTest `json:"ingredients,omitzero"` // the ingredients it is about; nil is the product
