@@ -51,11 +51,11 @@ func runCheck(c *call) (int, error) {
 	if err != nil {
 		return 0, err
 	}
-	switch {
-	case len(args) != 1:
+	if len(args) != 1 {
 		return 0, fmt.Errorf("one recipe is wanted, and %d are given; desk check -h tells more", len(args))
-	case o.format != "text" && o.format != "json":
-		return 0, fmt.Errorf("-format: %q is neither text nor json", o.format)
+	}
+	if err := known(o.format); err != nil {
+		return 0, err
 	}
 	doc, err := c.read(args[0])
 	if err != nil {
@@ -72,10 +72,26 @@ func runCheck(c *call) (int, error) {
 	return report.Outcome(), c.write(report, &o)
 }
 
-func (c *call) check(r *recipe.Recipe, o *checkOptions, name string) (*check.Report, error) {
+// known refuses a format that nobody writes.
+func known(format string) error {
+	if format != "text" && format != "json" {
+		return fmt.Errorf("-format: %q is neither text nor json", format)
+	}
+	return nil
+}
+
+func (c *call) rules() (*rulebook.Book, error) {
 	book, err := c.env.Rules()
 	if err != nil {
 		return nil, fmt.Errorf("the rule set cannot be used:\n%w", err)
+	}
+	return book, nil
+}
+
+func (c *call) check(r *recipe.Recipe, o *checkOptions, name string) (*check.Report, error) {
+	book, err := c.rules()
+	if err != nil {
+		return nil, err
 	}
 	if o.on == "" {
 		o.on = c.env.Now().Format("2006-01-02")

@@ -47,6 +47,7 @@ type verb struct {
 func verbs() []verb {
 	return []verb{
 		{"check", "check recipes against the rules of markets", checkUsage, runCheck, func() *flags { return checkFlags(&checkOptions{}) }},
+		{"coverage", "tell what the rule set covers and what it lacks", coverageUsage, runCoverage, func() *flags { return coverageFlags(&coverageOptions{}) }},
 		{"foods", "search the open food table, or show one food of it", foodsUsage, runFoods, func() *flags { return foodsFlags(&foodsOptions{}) }},
 	}
 }
@@ -124,8 +125,8 @@ func (c *call) fail(who string, err error) int {
 func overview() string {
 	s := "Checks what a food label may say: values, claims and limits, market by market.\n\nUsage: desk VERB [flags] [arguments]\n\n"
 	for _, v := range verbs() {
-		s += fmt.Sprintf("  %-8s %s\n", v.name, v.line)
+		s += fmt.Sprintf("  %-9s %s\n", v.name, v.line)
 	}
-	return s + "  help     this, or help on a verb: desk help check\n\n" +
+	return s + "  help      this, or help on a verb: desk help check\n\n" +
 		"Exit status: 0 all well; 1 a claim or a limit is refused; 2 the call or the\ndocument is wrong; 3 something is not determined and nothing is refused.\n"
 }
