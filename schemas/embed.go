@@ -9,6 +9,9 @@ import "embed"
 //go:embed *.schema.json
 var Files embed.FS
 
+// RulesID is the $id of the schema of rule files; each kind stands under #/$defs/<kind>_file.
+const RulesID = "urn:gramlaw:schema:rules"
+
 // RecipeID is the $id of the recipe schema.
 const RecipeID = "urn:gramlaw:schema:recipe"
 
