@@ -26,6 +26,8 @@ func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []
 		c := m.condition(r)
 		f := Finding{Kind: kind, Severity: l.Body.Severity, Code: l.Body.Code, Says: l.Body.Says.In("en"), Condition: &c, Rule: l.ID, Source: l.Head.Source.Ref}
 		switch {
+		case where == quantity.Open && kind == "serving" && m.c.recipe.Package == nil:
+			continue // packaging has said so
 		case where == quantity.Open && kind == "serving":
 			f.Severity, f.Says = "note", "where it applies: "+f.Says
 		case r.Truth == quantity.Open && kind == "serving":
@@ -41,7 +43,10 @@ func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []
 // packaging finds a package whose net quantity nobody stated.
 func (m *market) packaging() []Finding {
 	p := m.c.recipe.Package
-	if p == nil || p.Net != nil {
+	switch {
+	case p == nil && len(m.law.Serving.All) > 0:
+		return []Finding{{Kind: "serving", Severity: "note", Code: "package-not-described", Says: "no package is described, so what depends on it (servings per package, single servings, formats) is not judged"}}
+	case p == nil || p.Net != nil:
 		return nil
 	}
 	return []Finding{{Kind: "serving", Severity: "warning", Code: "package-without-net-quantity", Pointer: "/package", Says: "the package has no net quantity, so servings per package and single servings cannot be judged"}}
