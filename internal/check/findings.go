@@ -1,6 +1,9 @@
 package check
 
 import (
+	"slices"
+	"strings"
+
 	"gramlaw/internal/claim"
 	"gramlaw/internal/food"
 	"gramlaw/internal/quantity"
@@ -26,7 +29,7 @@ func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []
 		c := m.condition(r)
 		f := Finding{Kind: kind, Severity: l.Body.Severity, Code: l.Body.Code, Says: l.Body.Says.In("en"), Condition: &c, Rule: l.ID, Source: l.Head.Source.Ref}
 		switch {
-		case where == quantity.Open && kind == "serving" && m.c.recipe.Package == nil:
+		case where == quantity.Open && kind == "serving" && v.lacksSizesOnly(l.Body.Where):
 			continue // packaging has said so
 		case where == quantity.Open && kind == "serving":
 			f.Severity, f.Says = "note", "where it applies: "+f.Says
@@ -38,6 +41,12 @@ func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []
 		out = append(out, f)
 	}
 	return out
+}
+
+// lacksSizesOnly tells whether a condition is open for nothing but a size of package, unit, serving or surface.
+func (v view) lacksSizesOnly(c *rulebook.Condition) bool {
+	needs := needsOf(v.condition(claim.Evaluate(c, v)))
+	return len(needs) > 0 && !slices.ContainsFunc(needs, func(n string) bool { return !strings.HasPrefix(n, "the mass of") })
 }
 
 // packaging finds a package whose net quantity nobody stated.

@@ -384,6 +384,7 @@ type findingCases struct {
 		Given                                        given
 		Findings                                     map[string]string // code -> severity; "none" says that it must be absent
 		Naming                                       []string          // parts of what is said of names
+		NotNamed                                     []string          `json:"not_named"` // parts that must not be said
 		Servings                                     string            // servings per package
 		LeaveOut                                     []string          `json:"leave_out"` // terms the simplified format leaves out
 		Simplified                                   *bool             `json:"simplified"`
@@ -410,6 +411,11 @@ func TestFindingCases(t *testing.T) {
 				for _, want := range c.Naming {
 					if !slices.ContainsFunc(m.Naming, func(n check.Naming) bool { return strings.Contains(n.Name+" "+n.Says, want) }) {
 						t.Errorf("nothing named says %q: %v", want, m.Naming)
+					}
+				}
+				for _, not := range c.NotNamed {
+					if slices.ContainsFunc(m.Naming, func(n check.Naming) bool { return strings.Contains(n.Name+" "+n.Says, not) }) {
+						t.Errorf("something named says %q: %v", not, m.Naming)
 					}
 				}
 				shortFormCase(t, m.Declaration, c.Servings, c.LeaveOut, c.Simplified)

@@ -278,12 +278,15 @@ func (p *product) Meets(id string) quantity.Truth {
 	if t, ok := p.meets[id]; ok {
 		return t
 	}
-	t := quantity.No
+	t := quantity.Open // a claim that is undecided or not in force on the date decides nothing
 	c, ok := p.m.law.Claims.Get(rulebook.Name(id))
 	if !ok || c.ID != id {
 		c, ok = p.m.law.HealthClaims.Get(rulebook.Name(id))
 	}
-	if ok && c.Body.Condition != nil {
+	switch {
+	case ok && c.Body.Prohibited:
+		t = quantity.No
+	case ok && c.Body.Condition != nil:
 		t = p.m.as(p).truth(c.Body.Condition)
 	}
 	p.meets[id] = t

@@ -28,7 +28,11 @@ func (v view) servings(s *rulebook.Servings) *Servings {
 		if exact.CmpDecimal(n) != 0 {
 			number = strings.ReplaceAll(s.About.In(lang), "{n}", number)
 		}
-		out.Texts[lang] = strings.ReplaceAll(s.Text.In(lang), "{n}", number)
+		words := s.Text
+		if s.One != nil && n.Equal(decimal.NewFromInt(1)) {
+			words = s.One
+		}
+		out.Texts[lang] = strings.ReplaceAll(words.In(lang), "{n}", number)
 	}
 	out.Text = out.Texts[v.language()]
 	return out

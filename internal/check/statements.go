@@ -20,7 +20,7 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
 	out.NeedsLines = append(out.NeedsLines, b.NeedsLines...)
 	out.NeedsLines = append(out.NeedsLines, v.raisedBy(b.About)...)
 	for _, s := range out.Statements {
-		if s.Presence == "mandatory" {
+		if s.Presence == "mandatory" && out.Verdict == Permitted {
 			out.Verdict = WithStatement
 		}
 	}

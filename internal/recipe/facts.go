@@ -58,7 +58,10 @@ var Facts = []FactRule{
 	{Name: "soy protein per reference amount", Kind: Measure, Unit: "g", Says: "soy protein in a reference amount"},
 	{Name: "plant sterol esters per reference amount", Kind: Measure, Unit: "g", Says: "plant sterol esters in a reference amount"},
 	{Name: "plant stanol esters per reference amount", Kind: Measure, Unit: "g", Says: "plant stanol esters in a reference amount"},
-	{Name: "spreadable fat", Kind: OneOf, Values: []string{"milk fat", "other fat", "blend", "no"}, Says: "the product is a spreadable fat, and of which group of fats"},
+	{Name: "spreadable fat", Kind: OneOf, Values: []string{"milk fat", "other fat", "blend", "other fat with 3 to 10 % of milk fat", "no"}, Says: "the product is a spreadable fat, and of which group of fats"},
+	{Name: "kind of oil", Kind: OneOf, Values: []string{"camelina, mustard or borage oil", "other vegetable oil", "animal fat or oil"}, Says: "which kind of oil, where limits differ"},
+	{Name: "food supplement", Kind: YesNo, Says: "the product is a food supplement"},
+	{Name: "exempt from the nutrition declaration", Kind: YesNo, Says: "the food belongs to those that the law excuses from a nutrition declaration"},
 	{Name: "kind of food", Kind: OneOf, Values: []string{"fat or oil", "fruit or vegetable", "dairy product", "mayonnaise or dressing", "snack bar", "other food"}, Says: "which kind of food, where a rule names kinds"},
 	{Name: "trans origin", Kind: OneOf, Values: []string{"ruminant", "industrial"}, Says: "where all trans fatty acids of the product come from"},
 }

@@ -85,7 +85,7 @@ func (d *decoder) aboveZero(at int32, dims ...quantity.Dimension) quantity.Amoun
 }
 
 func dimension(d quantity.Dimension) string {
-	return [...]string{"nothing", "mass (g, mg, µg, kg)", "volume (mL, L, tsp, tbsp, cup)", "energy in kcal", "energy in kJ", "shares (%)"}[d]
+	return [...]string{"nothing", "mass (g, mg, µg, kg)", "volume (mL, L, tsp, tbsp, cup)", "energy in kcal", "energy in kJ", "shares (%)", "areas (cm2)"}[d]
 }
 
 func dimensions(dims []quantity.Dimension) string {

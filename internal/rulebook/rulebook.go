@@ -323,8 +323,9 @@ type Insignificant struct {
 // Servings is how many servings a package holds, rounded by its own bands of plain numbers.
 type Servings struct {
 	Bands []CountBand `json:"bands"`
-	Text  Words       `json:"text"`  // "{n} servings per container"
-	About Words       `json:"about"` // "about {n}", where the number was rounded
+	Text  Words       `json:"text"`         // "{n} servings per container"
+	One   Words       `json:"one,omitzero"` // for a single serving; Text where absent
+	About Words       `json:"about"`        // "about {n}", where the number was rounded
 }
 
 // A CountBand is a step of a rounded count.
