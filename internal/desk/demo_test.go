@@ -9,6 +9,8 @@ import (
 	"testing"
 
 	"gramlaw/internal/desk"
+	"gramlaw/internal/rulebook"
+	"gramlaw/rules"
 )
 
 var update = flag.Bool("update", false, "write the golden reports anew")
@@ -23,11 +25,15 @@ func TestDemoReports(t *testing.T) {
 	if err != nil || len(recipes) == 0 {
 		t.Fatalf("no demo recipes: %v", err)
 	}
-	t.Setenv("RULES", "")
+	book, err := rulebook.Load(rules.FS)
+	if err != nil {
+		t.Fatal(err)
+	}
+	loaded := desk.Env{Now: today, Rules: func() (*rulebook.Book, error) { return book, nil }}
 	for _, file := range recipes {
 		name := strings.TrimSuffix(filepath.Base(file), ".json")
 		t.Run(name, func(t *testing.T) {
-			code, out, errs := run(t, env(), "check", "-on", "2026-12-01", file)
+			code, out, errs := run(t, loaded, "check", "-on", "2026-12-01", file)
 			if code == desk.BadCall {
 				t.Fatal(errs)
 			}

@@ -1,6 +1,7 @@
 package render
 
 import (
+	"fmt"
 	"slices"
 	"strings"
 	"unicode"
@@ -48,23 +49,44 @@ func (p *page) claims(m *check.Market, o Options) {
 	p.candidates("Health claims it could carry", m.AlsoPermitted, true)
 }
 
-// candidates lists claims nobody asked for.
+// Of more claims than fewCandidates only the shared names are told, and of more than mostCandidates not all; JSON has them.
+const fewCandidates, mostCandidates = 6, 24
+
+// candidates lists claims nobody asked for, those that need no statement first.
 func (p *page) candidates(title string, list []check.Candidate, health bool) {
-	var names []string
-	for _, c := range list {
-		if c.Health != health {
-			continue
+	list = slices.DeleteFunc(slices.Clone(list), func(c check.Candidate) bool { return c.Health != health })
+	var by bundles
+	for _, v := range []string{check.Permitted, check.WithStatement} {
+		for _, c := range list[:min(len(list), mostCandidates)] {
+			if c.Verdict == v {
+				by.add(candidate(c, len(list)), v)
+			}
 		}
-		s := c.Name + " [" + last(c.Claim) + "]"
-		if c.Verdict != check.Permitted {
-			s += " " + strings.ToLower(strings.TrimPrefix(verdicts[c.Verdict], "PERMITTED "))
+	}
+	var parts []string
+	for _, b := range by.list {
+		s := strings.Join(b.names, ", ")
+		if b.key[0] == check.WithStatement {
+			s = "with a statement: " + s
 		}
-		names = append(names, s)
+		parts = append(parts, s)
 	}
-	if len(names) > 0 {
-		p.blank()
-		p.run(title, strings.Join(names, "; ")+".")
+	if len(parts) == 0 {
+		return
 	}
+	s := strings.Join(parts, "; ")
+	if more := len(list) - mostCandidates; more > 0 {
+		s += fmt.Sprintf(" and %d more, which JSON lists", more)
+	}
+	p.blank()
+	p.run(title, s+".")
+}
+
+func candidate(c check.Candidate, of int) string {
+	if of > fewCandidates {
+		return last(c.Claim)
+	}
+	return c.Name + " [" + last(c.Claim) + "]"
 }
 
 // last is the shared name of a claim, the end of its rule's identifier.

@@ -2,6 +2,7 @@ package render
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"github.com/shopspring/decimal"
@@ -11,6 +12,9 @@ import (
 
 // decided writes a condition and its parts, each behind yes, NO or open.
 func (p *page) decided(indent int, c *check.Condition) {
+	if empty(c) {
+		return
+	}
 	if c.Says == "" && len(c.Any)+len(c.Of) == 0 && c.Not == nil {
 		p.every(indent, c.All)
 		return
@@ -31,6 +35,11 @@ func (p *page) decided(indent int, c *check.Condition) {
 	default:
 		p.hang(indent, rest, label, joined(c.Says)+figuresOf(c, true))
 	}
+}
+
+// empty tells whether a condition asked for nothing: one whose "when" did not come about.
+func empty(c *check.Condition) bool {
+	return c.Says == "" && c.Threshold == "" && len(c.Needs) == 0 && !slices.ContainsFunc(parts(c), func(x check.Condition) bool { return !empty(&x) }) && (c.Not == nil || empty(c.Not))
 }
 
 // single looks through groups of one.
@@ -76,12 +85,32 @@ func (p *page) group(indent, rest int, label string, c *check.Condition) {
 		return
 	}
 	for i := range parts(c) {
-		p.decided(rest, &parts(c)[i])
+		p.alternative(rest, &parts(c)[i])
 	}
 }
 
-// every writes conditions that must all hold; those that differ in their basis only stand on one line.
+// alternative writes one of several conditions; one that is itself made of parts that must all hold keeps them together.
+func (p *page) alternative(indent int, c *check.Condition) {
+	c = single(c)
+	if c.Says != "" || len(c.All) == 0 || len(merged(c.All)) == 1 {
+		p.decided(indent, c)
+		return
+	}
+	label := answer(c.Holds)
+	p.hang(indent, indent+len(label), label, "all of these:")
+	p.every(indent+len(label), c.All)
+}
+
+// every writes conditions that must all hold.
 func (p *page) every(indent int, list []check.Condition) {
+	for _, one := range merged(list) {
+		p.decided(indent, &one)
+	}
+}
+
+// merged joins conditions that differ in their basis only, and leaves out those that ask for nothing.
+func merged(list []check.Condition) []check.Condition {
+	var out []check.Condition
 	for i := 0; i < len(list); i++ {
 		one := list[i]
 		for i+1 < len(list) && sameBut(&list[i], &list[i+1]) {
@@ -89,8 +118,11 @@ func (p *page) every(indent int, list []check.Condition) {
 			_, per, _ := cutLast(list[i].Says, " per ")
 			one.Says += " and per " + per
 		}
-		p.decided(indent, &one)
+		if !empty(&one) {
+			out = append(out, one)
+		}
 	}
+	return out
 }
 
 // sameBut tells whether two comparisons read the same up to "per".

@@ -54,6 +54,11 @@ func TestConditions(t *testing.T) {
 			"open  it is poor in fat: 2 to 4 g, asked for is ≤ 3 g\n"},
 		{"the same on two bases", check.Condition{All: []check.Condition{perBasis("serving", "1"), perBasis("reference amount", "1"), perBasis("50 g", "2")}, Holds: yes},
 			"yes   fat at most 3 g per serving and per reference amount: 1 g\nyes   fat at most 3 g per 50 g: 2 g\n"},
+		{"an alternative keeps its parts together", check.Condition{Any: []check.Condition{{All: []check.Condition{leaf("a", yes), leaf("b", no)}, Holds: no}, leaf("c", yes)}, Holds: yes},
+			"yes   one of these at least:\n      NO    all of these:\n            yes   a\n            NO    b\n      yes   c\n"},
+		{"an alternative on two bases is one line", check.Condition{Any: []check.Condition{{All: []check.Condition{perBasis("serving", "1"), perBasis("50 g", "1")}, Holds: yes}, leaf("c", no)}, Holds: yes},
+			"yes   one of these at least:\n      yes   fat at most 3 g per serving and per 50 g: 1 g\n      NO    c\n"},
+		{"what asked for nothing is left out", check.Condition{All: []check.Condition{leaf("a", yes), {Holds: yes}, {Not: &check.Condition{Holds: yes}, Holds: no}}}, "yes   a\n"},
 		{"one of two bases is not both", check.Condition{Any: []check.Condition{perBasis("serving", "1"), perBasis("reference amount", "1")}, Holds: yes},
 			"yes   one of these at least:\n      yes   fat at most 3 g per serving: 1 g\n      yes   fat at most 3 g per reference amount: 1 g\n"},
 	} {

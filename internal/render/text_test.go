@@ -211,3 +211,31 @@ func TestCautionEndsEveryReport(t *testing.T) {
 		}
 	}
 }
+
+func TestManyCandidatesAreToldByName(t *testing.T) {
+	some := func(n int, health bool) []check.Candidate {
+		out := make([]check.Candidate, n)
+		for i := range out {
+			out[i] = check.Candidate{Claim: "aa/claim/c" + string(rune('a'+i)), Name: "words", Verdict: check.Permitted, Health: health}
+		}
+		return out
+	}
+	few := append(some(1, false), check.Candidate{Claim: "aa/claim/z", Name: "zinc", Verdict: check.WithStatement})
+	for _, c := range []struct {
+		name   string
+		list   []check.Candidate
+		health bool
+		want   string
+	}{
+		{"none", some(3, true), false, ""},
+		{"few", few, false, "T: words [ca]; with a statement: zinc [z].\n"},
+		{"more", some(7, false), false, "T: ca, cb, cc, cd, ce, cf, cg.\n"},
+		{"many", some(26, true), true, "T: ca, cb, cc, cd, ce, cf, cg, ch, ci, cj, ck, cl, cm, cn, co, cp, cq, cr, cs,\n  ct, cu, cv, cw, cx and 2 more, which JSON lists.\n"},
+	} {
+		p := &page{}
+		p.candidates("T", c.list, c.health)
+		if got := p.String(); got != c.want {
+			t.Errorf("%s: %q, want %q", c.name, got, c.want)
+		}
+	}
+}
