@@ -167,6 +167,8 @@ type Statement struct {
 	Place    string            `json:"place,omitzero"`
 	Presence string            `json:"presence"` // "mandatory", "optional" or "open"
 	Rule     string            `json:"rule"`
+
+	open bool // an amount in it is not determined
 }
 
 // Verdicts on a claim.

@@ -17,6 +17,11 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
 	}
 	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
 	out.Statements = append(out.Statements, v.disclosures(out)...)
+	for _, s := range out.Statements {
+		if s.Presence == "mandatory" && s.open && out.Verdict != Refused {
+			out.Printable, out.Why = false, "a statement that must stand beside it holds an amount that is not determined"
+		}
+	}
 	out.NeedsLines = append(out.NeedsLines, b.NeedsLines...)
 	out.NeedsLines = append(out.NeedsLines, v.raisedBy(b.About)...)
 	for _, s := range out.Statements {
@@ -65,11 +70,12 @@ func (v view) statements(list []rulebook.Statement, rule string, c *Claim) []Sta
 }
 
 func (v view) statement(words rulebook.Words, place, rule string, c *Claim) Statement {
-	st := Statement{Text: v.fill(words.In(v.language()), c), Place: place, Presence: "mandatory", Rule: rule}
+	text, complete := v.fill(words.In(v.language()), c)
+	st := Statement{Text: text, Place: place, Presence: "mandatory", Rule: rule, open: !complete}
 	if len(words) > 1 {
 		st.Texts = map[string]string{}
 		for _, lang := range sortedKeys(words) {
-			st.Texts[lang] = v.fill(words[lang], c)
+			st.Texts[lang], _ = v.fill(words[lang], c)
 		}
 	}
 	return st
@@ -119,25 +125,29 @@ func joined(names []string) string {
 	return strings.Join(names[:len(names)-1], ", ") + comma + " and " + names[len(names)-1]
 }
 
-// fill replaces placeholders: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and
+// fill replaces placeholders, and tells whether it could replace all: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and
 // {fat difference} by the change against it in per cent, {reference food} by its name.
-func (v view) fill(s string, c *Claim) string {
+func (v view) fill(s string, c *Claim) (text string, complete bool) {
 	var out strings.Builder
+	complete = true
 	for {
 		i := strings.IndexByte(s, '{')
 		j := strings.IndexByte(s, '}')
 		if i < 0 || j < i {
 			out.WriteString(s)
-			return out.String()
+			return out.String(), complete
+		}
+		part, ok := v.placeholder(s[i+1:j], c)
+		if !ok {
+			part, complete = "("+s[i+1:j]+")", false
 		}
 		out.WriteString(s[:i])
-		out.WriteString(v.placeholder(s[i+1:j], c))
+		out.WriteString(part)
 		s = s[j+1:]
 	}
 }
 
-func (v view) placeholder(name string, c *Claim) string {
-	text, ok := "", false
+func (v view) placeholder(name string, c *Claim) (text string, ok bool) {
 	switch {
 	case name == "reference food" && v.ref != nil:
 		text, ok = v.ref.batch.Leaves[0].Name, true
@@ -157,10 +167,7 @@ func (v view) placeholder(name string, c *Claim) string {
 	default:
 		text, ok = v.printed(v.subject, name)
 	}
-	if !ok {
-		return "(" + name + ")"
-	}
-	return text
+	return text, ok
 }
 
 // printed is what a food's quantity prints as on the first column, where that is determined.

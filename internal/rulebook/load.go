@@ -1,6 +1,7 @@
 package rulebook
 
 import (
+	"bytes"
 	"crypto/sha256"
 	"encoding/hex"
 	"errors"
@@ -214,7 +215,8 @@ func rules[T any](l *loader, file, jurisdiction, kind string, b []byte) []Rule[T
 	for i, raw := range doc.Rules {
 		for _, one := range l.expand(file, i, raw) {
 			var r Rule[T]
-			if !l.decode(file, ruleID(one), one, &r) {
+			if err := json.Unmarshal(one, &r, json.RejectUnknownMembers(true)); err != nil {
+				l.problem(file, ruleID(one), "", "%v", err)
 				continue
 			}
 			if seen[r.ID] {
@@ -248,6 +250,9 @@ func ruleID(raw []byte) string {
 
 // expand writes a family out: "{each}" and the other names of a family member are replaced in the rule's text.
 func (l *loader) expand(file string, i int, raw jsontext.Value) []jsontext.Value {
+	if !bytes.Contains(raw, []byte(`"for each"`)) {
+		return []jsontext.Value{raw}
+	}
 	var family struct {
 		ForEach []map[string]string `json:"for each"`
 	}
