@@ -112,11 +112,11 @@ func (m *market) profileAgainstStated() []Finding {
 			if !l.HasProfile() || !l.Knows(c.ID) {
 				continue
 			}
-			profile := acids(byAcids.Class(), false, d.Body.ExpressedAs == "triglyceride", l)
+			profile := acids(byAcids, d.Body, l)
 			stated, _ := components(byStated, l)
 			if apart(profile, stated) {
 				out = append(out, Finding{Kind: "definition", Severity: "warning", Code: "profile-against-stated", Pointer: l.Pointer, Rule: d.ID,
-					Says: l.Path + ": the stated " + c.Tag + " and the fatty-acid profile differ by more than 5 %; the profile was taken"})
+					Says: l.Path + ": the stated " + c.Tag + " and the fatty-acid profile differ by more than 5 %; anything from the one to the other was taken"})
 			}
 		}
 	}

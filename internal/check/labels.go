@@ -16,7 +16,7 @@ import (
 
 // label undoes the rounding of another product's declaration: every value becomes the interval of exact values that print
 // so under that market's rules, per 100 g.
-func (c *checker) label(l *recipe.Label) (map[string]recipe.Value, *rollup.Fault) {
+func (c *checker) label(l *recipe.Label) (map[food.ID]rollup.Range, *rollup.Fault) {
 	law, fault := c.labelLaw(l)
 	if fault != nil {
 		return nil, fault
@@ -24,13 +24,14 @@ func (c *checker) label(l *recipe.Label) (map[string]recipe.Value, *rollup.Fault
 	if l.Serving.Unit.Dimension() != quantity.Mass || !l.Serving.Value.IsPositive() {
 		return nil, &rollup.Fault{Pointer: "/label/serving", Code: "label-serving", Says: "the serving of a label must be a mass above zero"}
 	}
-	out := map[string]recipe.Value{}
+	out := map[food.ID]rollup.Range{}
 	for _, tag := range sortedKeys(l.Declared) {
-		v, fault := invert(law, tag, l.Declared[tag], l.Serving)
+		r, fault := invert(law, tag, l.Declared[tag], l.Serving)
 		if fault != nil {
 			return nil, fault
 		}
-		out[tag] = v
+		c, _ := food.Lookup(tag)
+		out[c.ID] = r
 	}
 	return out, nil
 }
@@ -53,23 +54,38 @@ func (c *checker) labelLaw(l *recipe.Label) (*rulebook.Law, *rollup.Fault) {
 	return law, nil
 }
 
-// invert finds the line of a component and the exact values behind its print.
-func invert(law *rulebook.Law, tag string, v recipe.Value, serving quantity.Amount) (recipe.Value, *rollup.Fault) {
+// invert finds the line of a component and the exact values behind its print, per 100 g. Where rounding is no law, a value that no band
+// prints was rounded in its own last place.
+func invert(law *rulebook.Law, tag string, v recipe.Value, serving quantity.Amount) (rollup.Range, *rollup.Fault) {
 	pointer := "/label/declared/" + tag
 	line, ok := lineOf(law, tag)
 	if !ok {
-		return v, &rollup.Fault{Pointer: pointer, Code: "label-line", Says: fmt.Sprintf("the declaration of %s has no line for %s", law.Market.Name, tag)}
+		return rollup.Range{}, &rollup.Fault{Pointer: pointer, Code: "label-line", Says: fmt.Sprintf("the declaration of %s has no line for %s", law.Market.Name, tag)}
 	}
 	rounding, ok := law.RoundingOf(line.Quantity)
 	if !ok {
-		return v, &rollup.Fault{Pointer: pointer, Code: "label-line", Says: fmt.Sprintf("the rounding of %s for %s is not known", law.Market.Name, tag)}
+		return rollup.Range{}, &rollup.Fault{Pointer: pointer, Code: "label-line", Says: fmt.Sprintf("the rounding of %s for %s is not known", law.Market.Name, tag)}
 	}
 	p := declare.Printed{Value: v.High, LessThan: !v.Low.Equal(v.High)}
 	low, high, ok := declare.Invert(rounding.Body, p, v.Unit)
-	if !ok {
-		return v, &rollup.Fault{Pointer: pointer, Code: "label-value", Says: fmt.Sprintf("no amount prints as %s %s under the rounding of %s", v.High, v.Unit, law.Market.Name)}
+	switch {
+	case ok:
+	case rounding.Head.Source.Force == "law":
+		return rollup.Range{}, &rollup.Fault{Pointer: pointer, Code: "label-value", Says: fmt.Sprintf("no amount prints as %s %s under the rounding of %s; check the value, its unit and the labelling date (\"on\")", v.High, v.Unit, law.Market.Name)}
+	default:
+		low, high = lastPlace(p, v.Unit)
 	}
-	return per100(tag, low, high, serving), nil
+	per := quantity.FromInt(100).Quo(serving.Ratio())
+	return rollup.Range{Low: quantity.FromDecimal(low).Mul(per), High: quantity.FromDecimal(high).Mul(per)}, nil
+}
+
+// lastPlace is half a unit of the last printed place around a value, in base units.
+func lastPlace(p declare.Printed, u quantity.Unit) (low, high decimal.Decimal) {
+	value, half := p.Value.Mul(u.Scale()), decimal.New(5, p.Value.Exponent()-1).Mul(u.Scale())
+	if p.LessThan {
+		return decimal.Zero, value
+	}
+	return decimal.Max(value.Sub(half), decimal.Zero), value.Add(half)
 }
 
 func lineOf(law *rulebook.Law, tag string) (*rulebook.Line, bool) {
@@ -82,22 +98,4 @@ func lineOf(law *rulebook.Law, tag string) (*rulebook.Line, bool) {
 		return nil, false
 	}
 	return &d.Body.Lines[i], true
-}
-
-// per100 brings an interval per serving to 100 g. Ends are cut to decimals outward, so that nothing is lost.
-func per100(tag string, low, high decimal.Decimal, serving quantity.Amount) recipe.Value {
-	g := serving.Ratio()
-	per := func(d decimal.Decimal) quantity.Ratio {
-		return quantity.FromDecimal(d).Mul(quantity.FromInt(100)).Quo(g)
-	}
-	return recipe.Value{Low: per(low).Floor(labelDigits), High: per(high).Ceil(labelDigits), Unit: baseUnit(tag)}
-}
-
-const labelDigits = 15
-
-// baseUnit is the base unit of a component's values.
-func baseUnit(tag string) quantity.Unit {
-	c, _ := food.Lookup(tag)
-	u, _ := quantity.ParseUnit(string(c.Unit))
-	return u.Base()
 }

@@ -3,7 +3,6 @@ package check
 import (
 	"slices"
 
-	"gramlaw/internal/lipid"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
 	"gramlaw/internal/rulebook"
@@ -129,7 +128,11 @@ func (p *product) way(d *rulebook.Definition, w *rulebook.Way, l *rollup.Leaf) (
 		if !l.HasProfile() {
 			return quantity.Linear{}, false, true
 		}
-		return acids(w.Class(), w.Acids.Every, d.ExpressedAs == "triglyceride", l), true, true
+		amount = acids(w, d, l)
+		if !w.Acids.Every {
+			amount = besideStated(d, l, amount)
+		}
+		return amount, true, true
 	case w.Sum != nil:
 		amount, complete = components(w, l)
 		return amount, complete, true
@@ -157,29 +160,53 @@ func components(w *rulebook.Way, l *rollup.Leaf) (sum quantity.Linear, complete 
 	return sum, complete
 }
 
-// acids sums the acids of a class. Of a group that the class leaves open, anything from none to all may count; of what the
-// profile leaves unidentified likewise, with none as the typical value.
-func acids(class *lipid.Class, every, triglyceride bool, l *rollup.Leaf) quantity.Linear {
-	var sum quantity.Linear
-	for _, a := range l.Acids() {
-		amount := a.Acid
-		if triglyceride {
-			amount = a.Triglyceride
+// acids is what a predicate gives over a complete profile.
+func acids(w *rulebook.Way, d *rulebook.Definition, l *rollup.Leaf) quantity.Linear {
+	triglyceride := d.ExpressedAs == "triglyceride"
+	if w.Acids.Every {
+		return l.AllAcids(triglyceride)
+	}
+	return l.Class(w.Class(), triglyceride)
+}
+
+// besideStated holds what a profile gives against a total of the same that somebody stated or practice presumes. A profile that decides by
+// itself stands when both agree within 5 %; one that leaves groups open is narrowed by the total; and where the two contradict each other,
+// anything from the one to the other is possible.
+func besideStated(d *rulebook.Definition, l *rollup.Leaf, profile quantity.Linear) quantity.Linear {
+	total, ok := statedTotal(d, l)
+	if !ok {
+		return profile
+	}
+	low, high := quantity.Max(profile.Low(), total.Low()), quantity.Min(profile.High(), total.High())
+	switch {
+	case !apart(profile, total) && profile.Determined():
+		return profile
+	case low.Cmp(high) <= 0 && !apart(profile, total):
+		if low.Cmp(high) == 0 {
+			return quantity.Exactly(low)
 		}
-		switch {
-		case every:
-			sum = sum.Add(amount)
-		case !a.Identified:
-			v := l.Variable("unidentified fatty acids", quantity.Ratio{}, amount.High(), quantity.Ratio{}, true)
-			sum = sum.Add(quantity.Of(v))
-		case class.Holds(a.Species) == lipid.Yes:
-			sum = sum.Add(amount)
-		case class.Holds(a.Species) == lipid.Open:
-			v := l.Variable(a.Species.String(), quantity.Ratio{}, amount.High(), quantity.Ratio{}, false)
-			sum = sum.Add(quantity.Of(v))
+	default:
+		low, high = quantity.Min(profile.Low(), total.Low()), quantity.Max(profile.High(), total.High())
+	}
+	mid, typical := total.Central()
+	typical = typical && mid.Cmp(low) >= 0 && mid.Cmp(high) <= 0
+	return quantity.Of(l.Variable(d.Name.In("en"), low, high, mid, typical))
+}
+
+// statedTotal is the first way of a definition that takes one component as the quantity, where the component is known.
+func statedTotal(d *rulebook.Definition, l *rollup.Leaf) (quantity.Linear, bool) {
+	for i := range d.Ways {
+		w := &d.Ways[i]
+		if len(w.Parts()) != 1 {
+			continue
+		}
+		part := w.Parts()[0]
+		a := l.Component(part.ID)
+		if l.Knows(part.ID) || a.How == rollup.ByNature || a.How == rollup.ByPractice {
+			return a.Mul(part.Factor), true
 		}
 	}
-	return sum
+	return quantity.Linear{}, false
 }
 
 // From is the part of a quantity that comes from an origin: ruminant fat, or anything else.

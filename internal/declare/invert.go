@@ -7,8 +7,11 @@ import (
 	"gramlaw/internal/rulebook"
 )
 
+// openEnd is how far, in base units, an upper end that the law itself excludes is drawn in: no stated number is that fine.
+var openEnd = decimal.New(1, -15)
+
 // Invert gives the interval of exact values, in base units, that may print as p: the union over all bands whatever their
-// conditions, with closed ends. It reports false when no exact value prints so.
+// conditions. An upper end that prints otherwise is drawn in by openEnd. It reports false when no exact value prints so.
 func Invert(r *rulebook.Rounding, p Printed, unit quantity.Unit) (low, high decimal.Decimal, ok bool) {
 	from := decimal.Zero
 	for i := range r.Bands {
@@ -49,6 +52,10 @@ func edge(b *rulebook.Band) (d decimal.Decimal, open bool) {
 func invertBand(b *rulebook.Band, p Printed, unit quantity.Unit, from, to decimal.Decimal, open bool) (low, high decimal.Decimal, ok bool) {
 	value := p.Value.Mul(unit.Scale())
 	switch {
+	case b.Declare != nil && b.Below != nil:
+		return from, to.Sub(openEnd), !open && !p.LessThan && b.Declare.Base().Equal(value)
+	case b.LessThan != nil && b.Below != nil:
+		return from, to.Sub(openEnd), !open && p.LessThan && b.LessThan.Base().Equal(value)
 	case b.Declare != nil:
 		return from, to, !open && !p.LessThan && b.Declare.Base().Equal(value)
 	case b.LessThan != nil:
@@ -61,7 +68,7 @@ func invertBand(b *rulebook.Band, p Printed, unit quantity.Unit, from, to decima
 		step = b.Nearest.Base()
 	}
 	half := step.Mul(decimal.New(5, -1))
-	low, high = decimal.Max(value.Sub(half), from), value.Add(half)
+	low, high = decimal.Max(value.Sub(half), from), value.Add(half).Sub(openEnd)
 	if !open {
 		high = decimal.Min(high, to)
 	}

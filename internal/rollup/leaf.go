@@ -1,6 +1,8 @@
 package rollup
 
 import (
+	"fmt"
+
 	"github.com/shopspring/decimal"
 
 	"gramlaw/internal/food"
@@ -32,7 +34,9 @@ func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, ke
 			fault.Pointer = in.Pointer + fault.Pointer
 			return nil, fault
 		}
-		l.setValues(values, decimal.New(1, 0))
+		for id, r := range values {
+			l.set(id, stated{ends: &ends{low: r.Low, high: r.High}})
+		}
 	case in.Composition != nil:
 		per, fault := l.per(in)
 		if fault != nil {
@@ -44,8 +48,20 @@ func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, ke
 			return nil, fault
 		}
 	}
-	l.setValues(in.With, decimal.New(1, 0))
-	return l, nil
+	l.setPer(in.With, quantity.FromInt(100))
+	return l, l.tooMuch()
+}
+
+// tooMuch refuses more than 100 g of one component in 100 g; half a gram is left to rounding.
+func (l *Leaf) tooMuch() *Fault {
+	for id, ok := l.known.Next(0); ok; id, ok = l.known.Next(id) {
+		c, _ := food.ByID(id)
+		_, mass := c.Unit.GramExponent()
+		if low := l.entries[l.place[id]-1].low(); mass && low.Cmp(quantity.Scaled(1005, -1)) > 0 {
+			return &Fault{l.Pointer, "over-100", fmt.Sprintf("%s is %s g in 100 g of %s", c.Tag, low.Brief(2), l.Path)}
+		}
+	}
+	return nil
 }
 
 // exponent is the power of ten from a component's unit to the base unit.
@@ -93,14 +109,6 @@ func (l *Leaf) setPer(values map[string]recipe.Value, per quantity.Ratio) {
 	}
 }
 
-func (l *Leaf) setValues(values map[string]recipe.Value, factor decimal.Decimal) {
-	for tag, v := range values {
-		if c, ok := food.Lookup(tag); ok {
-			l.set(c.ID, scaled(v, quantity.FromDecimal(factor)))
-		}
-	}
-}
-
 func scaled(v recipe.Value, factor quantity.Ratio) stated {
 	base := func(d decimal.Decimal) quantity.Ratio { return factor.Times(d.Mul(v.Unit.Scale())) }
 	if v.Low.Equal(v.High) {
@@ -137,6 +145,9 @@ func (l *Leaf) forget() { l.asked, l.answers, l.acids = [food.Count + 1]uint16{}
 
 func (l *Leaf) component(id food.ID) Amount {
 	if a, ok := l.folateEquivalents(id); ok {
+		return a
+	}
+	if a, ok := l.byStructure(id); ok {
 		return a
 	}
 	if l.known.Has(id) {

@@ -15,6 +15,7 @@ func (b *Batch) plausible() {
 	for _, l := range b.Leaves {
 		if l.pure == 0 {
 			b.proximates(l)
+			b.partsAgainstWholes(l)
 			b.acidsAgainstFat(l)
 		}
 	}
@@ -61,5 +62,23 @@ func (b *Batch) acidsAgainstFat(l *Leaf) {
 	most := l.Component(fat.ID).High()
 	if sum.Cmp(most.Mul(quantity.Scaled(105, -2))) > 0 {
 		b.find(l, "acids-over-fat", "the fatty acids, as triglycerides, are more than 5 % above the fat")
+	}
+}
+
+// partsAgainstWholes finds a stated part above its stated whole, by more than 5 % and half a gram: published tables stay within that.
+func (b *Batch) partsAgainstWholes(l *Leaf) {
+	if l.IsFood {
+		return
+	}
+	for id, ok := l.known.Next(0); ok; id, ok = l.known.Next(id) {
+		for _, whole := range id.WithinList() {
+			if !l.known.Has(whole) {
+				continue
+			}
+			part, most := l.entries[l.place[id]-1].low(), l.entries[l.place[whole]-1].high()
+			if part.Cmp(most.Mul(quantity.Scaled(105, -2)).Add(quantity.Scaled(5, -1))) > 0 {
+				b.find(l, "part-over-whole", fmt.Sprintf("%s, %s g, is part of %s, %s g, and more than it", tag(id), part.Brief(2), tag(whole), most.Brief(2)))
+			}
+		}
 	}
 }

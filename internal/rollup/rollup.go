@@ -19,8 +19,8 @@ const MaxBits = 1 << 15
 
 // Options are what a batch needs to know from rules.
 type Options struct {
-	// Label undoes the rounding of another product's label; values are per 100 g.
-	Label func(*recipe.Label) (map[string]recipe.Value, *Fault)
+	// Label undoes the rounding of another product's label; ranges are per 100 g, in base units.
+	Label func(*recipe.Label) (map[food.ID]Range, *Fault)
 	// Presume says what practice takes for a component that nobody stated.
 	Presume func(*Leaf, food.ID) (Presumed, bool)
 	// FirstVariable keeps the variables of several batches apart.
@@ -34,6 +34,9 @@ type Presumed struct {
 	Share quantity.Ratio // of Of; ignored without Of
 	Upto  bool           // anything from zero to the share
 }
+
+// A Range is what a value may be, without a typical one.
+type Range struct{ Low, High quantity.Ratio }
 
 // A Fault is something about a recipe that makes a roll-up impossible.
 type Fault struct {
@@ -105,6 +108,13 @@ type ends struct {
 func (s stated) low() quantity.Ratio {
 	if s.ends != nil {
 		return s.ends.low
+	}
+	return s.value
+}
+
+func (s stated) high() quantity.Ratio {
+	if s.ends != nil {
+		return s.ends.high
 	}
 	return s.value
 }
