@@ -61,7 +61,7 @@ func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Fa
 		Caution: Caution, Jurisdictions: []Market{}, Findings: []Finding{},
 	}
 	for _, f := range c.batch.Findings {
-		out.Findings = append(out.Findings, Finding{Kind: "recipe", Severity: "warning", Code: f.Code, Says: name(f.Ingredient) + f.Says, Pointer: f.Pointer})
+		out.Findings = append(out.Findings, Finding{Kind: "recipe", Severity: "open", Code: f.Code, Says: name(f.Ingredient) + f.Says, Pointer: f.Pointer})
 	}
 	tags := map[string]bool{}
 	var markets []*market
@@ -112,12 +112,39 @@ func (c *checker) accept() recipe.Faults {
 			bad(at, "unknown-market", "%q is no market of this rule set; known are %s", j, strings.Join(known, ", "))
 		}
 	}
+	for i, cl := range c.recipe.Claims {
+		for _, j := range cl.In {
+			if !slices.Contains(known, j) {
+				bad(fmt.Sprintf("/claims/%d/in", i), "unknown-market", "%q is no market of this rule set; known are %s", j, strings.Join(known, ", "))
+			}
+		}
+		if cl.Text != "" && cl.Claim != "" {
+			bad(fmt.Sprintf("/claims/%d", i), "claim-twice", "a claim is asked for by its words or by its name, not by both")
+		}
+	}
+	for member, keys := range c.perMarket() {
+		for _, j := range keys {
+			if j != "default" && !slices.Contains(known, j) {
+				bad("/"+member+"/"+j, "unknown-market", "%q is no market of this rule set; known are %s, and default", j, strings.Join(known, ", "))
+			}
+		}
+	}
+	slices.SortStableFunc(faults, func(a, b recipe.Fault) int { return strings.Compare(a.Pointer, b.Pointer) })
 	for _, id := range c.request.Without {
 		if id != "all" && !slices.ContainsFunc(c.book.Presumptions, func(r rulebook.Rule[rulebook.Presumption]) bool { return r.ID == id }) {
 			bad("without", "unknown-presumption", "%q is no presumption of this rule set", id)
 		}
 	}
 	return faults
+}
+
+// perMarket lists the markets that the recipe's members name.
+func (c *checker) perMarket() map[string][]string {
+	r := c.recipe
+	return map[string][]string{
+		"serving": sortedKeys(r.Serving), "category": sortedKeys(r.Category), "reference_amount": sortedKeys(r.ReferenceAmount),
+		"state": sortedKeys(r.State), "density": sortedKeys(r.Density),
+	}
 }
 
 // roll computes the product and its reference foods once for all markets.

@@ -59,6 +59,10 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	if a.Text != "" {
 		out.Asked = a.Text
 	}
+	if !m.covered() {
+		out.Verdict, out.Why = Undetermined, "the rule set does not cover this market on "+m.law.Date
+		return out, nil
+	}
 	rule, ok := m.find(a)
 	if !ok {
 		m.unlisted(&out, a)
@@ -143,6 +147,9 @@ func (m *market) unlisted(out *Claim, a recipe.Claim) {
 		out.Source, out.Force, out.Evidence = u.Source.Ref, u.Source.Force, u.Source.Evidence
 	default:
 		out.Verdict, out.Why = NotListed, "no market of this rule set lists a claim of this name"
+		if near := suggest(a.Claim, m.c.book.ClaimNames()); near != "" {
+			out.Why += "; did you mean “" + near + "”?"
+		}
 	}
 }
 

@@ -138,13 +138,11 @@ func (c *checker) contents(tags map[string]bool) Contents {
 	per := quantity.FromInt(100).Quo(c.batch.Mass)
 	for tag := range tags {
 		f, ok := food.Lookup(tag)
-		if !ok {
-			continue
+		e, mass := f.Unit.GramExponent()
+		if !ok || !mass {
+			continue // energy is each law's own
 		}
-		scale := per
-		if e, ok := f.Unit.GramExponent(); ok {
-			scale = per.Mul(quantity.Scaled(1, -int32(e)))
-		}
+		scale := per.Mul(quantity.Scaled(1, -int32(e)))
 		total := c.batch.Total(f.ID).Mul(scale)
 		one := Component{Low: exactText(quantity.Max(total.Low(), quantity.Ratio{})), High: exactText(total.High()), Unit: string(f.Unit),
 			Coverage: c.batch.Coverage(f.ID).Brief(4)}

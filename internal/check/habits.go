@@ -43,6 +43,9 @@ func newHabits(b *rulebook.Book, without []string) *habits {
 
 // selects tells whether a selection takes a leaf's food.
 func (h *habits) selects(s *rulebook.Selection, l *rollup.Leaf) bool {
+	if len(s.Processes) > 0 {
+		return l.Ingredient != nil && l.Ingredient.Composition != nil && slices.Contains(s.Processes, l.Ingredient.Process)
+	}
 	if !l.IsFood {
 		return false
 	}

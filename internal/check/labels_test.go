@@ -61,7 +61,7 @@ func TestRequestsAreAccepted(t *testing.T) {
 	for _, f := range faults {
 		got = append(got, f.Pointer)
 	}
-	if strings.Join(got, " ") != "on transition detail in without" {
+	if strings.Join(got, " ") != "detail in on transition without" {
 		t.Errorf("faults at %v", got)
 	}
 }

@@ -55,7 +55,8 @@ func (c *checker) open(j string, t rulebook.Transition) *market {
 func (m *market) judge() Market {
 	law := m.law
 	out := Market{Jurisdiction: m.j, Name: law.Market.Name, Edition: law.Edition, Claims: []Claim{}, AlsoPermitted: []Candidate{},
-		FrontOfPack: []string{}, Naming: []Naming{}, Findings: []Finding{}, Presumed: []Presumed{}, Assumed: []Assumed{}, Gaps: law.Market.Gaps, Caution: law.Market.Caution}
+		FrontOfPack: []string{}, Naming: []Naming{}, Findings: []Finding{}, Presumed: []Presumed{}, Assumed: []Assumed{}, Gaps: law.Market.Gaps, NotJudged: law.Market.NotJudged, Caution: law.Market.Caution}
+	out.Findings = append(out.Findings, m.coverage()...)
 	m.openColumns(&out)
 	m.openLines()
 	out.Claims = m.claims()
@@ -96,6 +97,60 @@ func (m *market) presumed() []Presumed {
 	return out
 }
 
+// covered tells whether the set holds the market's declaration on the date.
+func (m *market) covered() bool {
+	_, ok := m.law.Declaration()
+	return ok
+}
+
+// coverage finds a date the set does not cover, and a category it does not know.
+func (m *market) coverage() []Finding {
+	var out []Finding
+	if !m.covered() {
+		rules, _ := m.c.book.Rules(m.j)
+		says := "the rule set holds no declaration of this market on " + m.law.Date
+		if first := rules.First(); first != "" {
+			says += "; it begins on " + first
+		}
+		out = append(out, Finding{Kind: "coverage", Severity: "open", Code: "date-not-covered", Says: says})
+	}
+	category, stated := m.c.recipe.Category.For(m.j)
+	if _, ok := m.category(category); stated && !ok && len(m.law.ReferenceAmounts.All) > 0 {
+		says := "“" + category + "” is no category of this market"
+		if near := suggest(category, m.categories()); near != "" {
+			says += "; did you mean “" + near + "”?"
+		}
+		out = append(out, Finding{Kind: "coverage", Severity: "open", Code: "unknown-category", Pointer: "/category", Says: says})
+	}
+	return out
+}
+
+func (m *market) categories() []string {
+	var out []string
+	for _, r := range m.law.ReferenceAmounts.All {
+		out = append(out, r.Name())
+		for _, names := range r.Body.Names {
+			out = append(out, names...)
+		}
+	}
+	return out
+}
+
+// category finds a reference amount by the last segment of its rule or by one of the law's names, whatever the case.
+func (m *market) category(name string) (rulebook.Active[rulebook.ReferenceAmount], bool) {
+	if r, ok := m.law.ReferenceAmounts.Get(name); ok {
+		return r, true
+	}
+	for _, r := range m.law.ReferenceAmounts.All {
+		for _, names := range r.Body.Names {
+			if slices.ContainsFunc(names, func(n string) bool { return strings.EqualFold(n, name) }) {
+				return r, true
+			}
+		}
+	}
+	return rulebook.Active[rulebook.ReferenceAmount]{}, false
+}
+
 // grams is the mass of an amount: as it is, by its stated grams, or by the food's density.
 func (m *market) grams(a quantity.Amount, stated *quantity.Amount) (quantity.Ratio, bool) {
 	switch {
@@ -122,7 +177,7 @@ func (m *market) referenceAmount() (recipe.ReferenceAmount, bool) {
 	if !ok {
 		return recipe.ReferenceAmount{}, false
 	}
-	r, ok := m.law.ReferenceAmounts.Get(category)
+	r, ok := m.category(category)
 	if !ok {
 		return recipe.ReferenceAmount{}, false
 	}

@@ -55,13 +55,14 @@ type Market struct {
 	Declaration   Table       `json:"declaration"`
 	Claims        []Claim     `json:"claims"`
 	AlsoPermitted []Candidate `json:"also_permitted"`
-	FrontOfPack   []string    `json:"front_of_pack"`
+	FrontOfPack   []string    `json:"front_of_pack"` // see not_judged for what the set leaves out
 	Naming        []Naming    `json:"naming"`
 	Findings      []Finding   `json:"findings"`
 	Presumed      []Presumed  `json:"presumed"`
 	Assumed       []Assumed   `json:"assumed"`
 	Other         *Other      `json:"other_edition,omitzero"`
 	Gaps          []string    `json:"gaps"`
+	NotJudged     []string    `json:"not_judged,omitzero"` // what a label needs besides and this rule set does not judge
 	Caution       string      `json:"caution"`
 }
 
@@ -277,6 +278,9 @@ type Other struct {
 // undetermined and nothing refused.
 func (r *Report) Outcome() int {
 	open := false
+	for _, f := range r.Findings {
+		open = open || f.Severity == "open"
+	}
 	for i := range r.Jurisdictions {
 		m := &r.Jurisdictions[i]
 		for _, c := range m.Claims {
@@ -286,7 +290,7 @@ func (r *Report) Outcome() int {
 			case Undetermined, Unread:
 				open = true
 			}
-			open = open || !c.Printable && c.Verdict != NotListed
+			open = open || !c.Printable
 		}
 		for _, f := range m.Findings {
 			if f.Severity == "refused" {

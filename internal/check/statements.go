@@ -61,7 +61,7 @@ func (v view) statements(list []rulebook.Statement, rule string, c *Claim) []Sta
 		if s.Presence != "" {
 			st.Presence = s.Presence
 		}
-		if t == quantity.Open {
+		if t == quantity.Open && s.Presence != "optional" {
 			st.Presence = "open"
 		}
 		out = append(out, st)

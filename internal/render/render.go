@@ -37,7 +37,7 @@ func Text(w io.Writer, r *check.Report, o Options) error {
 func (p *page) front(r *check.Report) {
 	p.heading(r.Recipe.Name, '=')
 	p.line(0, fmt.Sprintf("Recipe %s (%s), %s of finished food.", r.Recipe.ID, digest(r.Recipe.Digest), spaced(r.Composition.Mass)))
-	p.line(0, fmt.Sprintf("Labelling date %s (of two editions in force, the %s one).", r.Date, r.Transition))
+	p.line(0, fmt.Sprintf("Labelling date %s; of two editions in force at once, the %s one.", r.Date, r.Transition))
 	p.line(0, fmt.Sprintf("Rule set %s (%s).", r.Rules.Version, digest(r.Rules.Digest)))
 	t := table{gap: 2}
 	for i := range r.Jurisdictions {
@@ -73,6 +73,10 @@ func (p *page) market(r *check.Report, m *check.Market, o Options) {
 	if len(m.FrontOfPack) > 0 {
 		p.heading("Front of pack", '-')
 		p.items(m.FrontOfPack)
+	}
+	if len(m.NotJudged) > 0 {
+		p.heading("Not judged here, and needed", '-')
+		p.items(m.NotJudged)
 	}
 	if len(m.Findings) > 0 {
 		p.heading("Findings", '-')

@@ -81,3 +81,31 @@ func (b *Book) ListsClaim(name string) bool {
 	}
 	return false
 }
+
+// ClaimNames lists the shared names of all claims of all markets, sorted.
+func (b *Book) ClaimNames() []string {
+	var out []string
+	for _, m := range b.markets {
+		for _, c := range slices.Concat(m.Claims, m.HealthClaims) {
+			out = append(out, Name(c.ID))
+			for _, v := range c.Versions {
+				out = append(out, v.Body.AlsoNamed...)
+			}
+		}
+	}
+	slices.Sort(out)
+	return slices.Compact(out)
+}
+
+// First is the day on which the market's declaration begins; empty where it has none.
+func (r *Rules) First() string {
+	first := ""
+	for _, d := range r.Declarations {
+		for _, v := range d.Versions {
+			if first == "" || v.From < first {
+				first = v.From
+			}
+		}
+	}
+	return first
+}

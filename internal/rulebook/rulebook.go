@@ -78,7 +78,8 @@ type Market struct {
 	Editions     []Edition   `json:"editions"`
 	Assumed      []Assumed   `json:"assumed"`
 	Unlisted     *Unlisted   `json:"unlisted_claims"`
-	Gaps         []string    `json:"gaps"` // what the rule set is known to lack
+	Gaps         []string    `json:"gaps"`                // what the rule set is known to lack
+	NotJudged    []string    `json:"not judged,omitzero"` // what a label needs besides and this rule set does not judge
 	Caution      string      `json:"caution"`
 	DefaultBases []BasisRule `json:"bases"`
 }
@@ -467,6 +468,8 @@ type Selection struct {
 	Foods   []string `json:"foods,omitzero"`   // "sr:19335"; when set, only these
 	Words   []string `json:"words,omitzero"`   // one of these must occur in the name
 	Without []string `json:"without,omitzero"` // none of these may occur
+	// Processes picks ingredients with a specification instead of foods of the table, by how they were processed.
+	Processes []string `json:"processes,omitzero"`
 }
 
 // An Origin says where the trans fatty acids of some foods come from, and how their fat was processed.
