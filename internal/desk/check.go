@@ -2,6 +2,7 @@ package desk
 
 import (
 	"bytes"
+	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -16,11 +17,13 @@ import (
 const checkUsage = `Checks a recipe and writes the label values that the law of each market
 prescribes, with every claim judged.
 
-Usage: desk check [flags] RECIPE.json
+Usage: desk check [flags] RECIPE.json ...
 
 RECIPE.json is a recipe document (schemas/recipe.schema.json); - is standard
 input. Exit status: 0 all well; 1 a claim or a limit is refused; 2 the call or
 the document is wrong; 3 something is not determined and nothing is refused.
+Of several recipes each is answered by itself, in JSON on a line of its own; a
+wrong one is told on standard error, the others go on, and the status is 2.
 `
 
 // checkOptions are the flags of check.
@@ -44,32 +47,63 @@ func checkFlags(o *checkOptions) *flags {
 	return f
 }
 
-// runCheck reads, checks and writes one recipe.
+// runCheck reads, checks and writes recipes.
 func runCheck(c *call) (int, error) {
 	var o checkOptions
 	args, err := checkFlags(&o).parse(c.args)
 	if err != nil {
 		return 0, err
 	}
-	if len(args) != 1 {
-		return 0, fmt.Errorf("one recipe is wanted, and %d are given; desk check -h tells more", len(args))
+	if len(args) == 0 {
+		return 0, fmt.Errorf("a recipe is wanted, and none is given; desk check -h tells more")
 	}
 	if err := known(o.format); err != nil {
 		return 0, err
 	}
-	doc, err := c.read(args[0])
+	if len(args) == 1 {
+		return c.checkOne(args[0], &o)
+	}
+	return c.checkMany(args, &o)
+}
+
+func (c *call) checkOne(name string, o *checkOptions) (int, error) {
+	doc, err := c.read(name)
 	if err != nil {
 		return 0, err
 	}
 	r, faults := recipe.Decode(doc)
 	if len(faults) > 0 {
-		return 0, told(shown(args[0]), faults)
+		return 0, told(shown(name), faults)
 	}
-	report, err := c.check(r, &o, shown(args[0]))
+	report, err := c.check(r, o, shown(name))
 	if err != nil {
 		return 0, err
 	}
-	return report.Outcome(), c.write(report, &o)
+	return report.Outcome(), c.write(report, o)
+}
+
+// checkMany answers every recipe by itself; the worst status is the call's. What is wrong with the call ends it.
+func (c *call) checkMany(names []string, o *checkOptions) (int, error) {
+	o.compact = true
+	seen := map[int]bool{}
+	for _, name := range names {
+		status, err := c.checkOne(name, o)
+		var ofCall *callError
+		if errors.As(err, &ofCall) {
+			return 0, err
+		}
+		if err != nil {
+			fmt.Fprintf(c.stderr, "desk check: %v\n", err)
+			status = BadCall
+		}
+		seen[status] = true
+	}
+	for _, worst := range []int{BadCall, Refused, Undecided} {
+		if seen[worst] {
+			return worst, nil
+		}
+	}
+	return AllWell, nil
 }
 
 // known refuses a format that nobody writes.
@@ -80,11 +114,16 @@ func known(format string) error {
 	return nil
 }
 
+// rules loads the rule set once a call.
 func (c *call) rules() (*rulebook.Book, error) {
+	if c.book != nil {
+		return c.book, nil
+	}
 	book, err := c.env.Rules()
 	if err != nil {
-		return nil, fmt.Errorf("the rule set cannot be used:\n%w", err)
+		return nil, &callError{fmt.Errorf("the rule set cannot be used:\n%w", err)}
 	}
+	c.book = book
 	return book, nil
 }
 
@@ -141,8 +180,9 @@ func shown(name string) string {
 
 // told lists every fault on its own line. Members of the request become flags.
 func told(name string, faults recipe.Faults) error {
+	ofCall := false
 	if at := faults[0].Pointer; at != "" && at[0] != '/' {
-		name = "the call"
+		name, ofCall = "the call", true
 	}
 	var b strings.Builder
 	fmt.Fprintf(&b, "%s: %d ", name, len(faults))
@@ -157,7 +197,15 @@ func told(name string, faults recipe.Faults) error {
 		}
 		fmt.Fprintf(&b, "\n%s: %s (%s)", oneLine(at), oneLine(f.Says), f.Code)
 	}
-	return fmt.Errorf("%s", b.String())
+	if ofCall {
+		return &callError{errors.New(b.String())}
+	}
+	return errors.New(b.String())
 }
+
+// A callError is wrong for every recipe of the call.
+type callError struct{ error }
+
+func (e *callError) Unwrap() error { return e.error }
 
 func oneLine(s string) string { return strings.ReplaceAll(s, "\n", " ") }

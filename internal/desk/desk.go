@@ -17,7 +17,7 @@ import (
 const (
 	AllWell   = 0
 	Refused   = 1 // a claim or a limit is refused
-	BadCall   = 2 // the call or the document is wrong; nothing stands on standard output
+	BadCall   = 2 // the call or a document is wrong; nothing of it stands on standard output
 	Undecided = 3 // something is undetermined and nothing refused
 )
 
@@ -33,6 +33,7 @@ type call struct {
 	stdin          io.Reader
 	stdout, stderr io.Writer
 	env            Env
+	book           *rulebook.Book // once loaded
 }
 
 // A verb is what the command can do. Its run returns the exit status, or an error for status 2.
