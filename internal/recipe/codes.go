@@ -37,6 +37,7 @@ const (
 	SameAcid       = "same-acid-twice"
 	GroupAndMember = "group-beside-member"
 	OverWhole      = "profile-over-100"
+	AllZero        = "profile-all-zero"
 	BadSettlement  = "bad-settlement"
 	NoComposition  = "empty-composition"
 	SharesNot100   = "shares-not-100"
@@ -93,6 +94,7 @@ var Codes = []CodeRule{
 	{UnknownAcid, "the notation of a fatty acid cannot be read"},
 	{SameAcid, "a profile gives the same fatty acid twice, perhaps in two notations"},
 	{GroupAndMember, "a profile gives a group of fatty acids and a member of it"},
+	{AllZero, "a complete fatty-acid profile in per cent has no value above zero"},
 	{OverWhole, "the shares of a profile sum to more than 102"},
 	{BadSettlement, "a group is settled that is not in the profile, or as something that is not a part of it"},
 	{NoComposition, "a composition states neither components nor fatty acids"},

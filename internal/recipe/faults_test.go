@@ -131,6 +131,7 @@ var faultCases = []struct {
 	{"group and member", profiled(`"18:1":"40","18:1 t":"1"`, ""), []string{atProfile + "/18:1 group-beside-member"}},
 	{"more than all", profiled(`"16:0":"60","18:0":"42.1"`, ""), []string{atProfile + " profile-over-100"}},
 	{"more than all with the rest", profiled(`"16:0":"60","18:0":"40","unidentified":"2.1"`, ""), []string{atProfile + " profile-over-100"}},
+	{"nothing at all", profiled(`"16:0":"0","unidentified":"0"`, `,"complete":true`), []string{atProfile + " profile-all-zero"}},
 	{"settled what is not there", profiled(`"18:1":"40"`, `,"settle":[{"group":"18:2","as":"18:2 9c,12c","reason":"x"}]`), []string{atSettle + "/group bad-settlement"}},
 	{"settled as another", profiled(`"18:1":"40"`, `,"settle":[{"group":"18:1","as":"18:2 9c,12c","reason":"x"}]`), []string{atSettle + "/as bad-settlement"}},
 	{"settled twice", profiled(`"18:1":"40"`, `,"settle":[{"group":"18:1","as":"18:1 c","reason":"x"},{"group":"18:1","as":"18:1 t","reason":"x"}]`),

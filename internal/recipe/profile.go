@@ -143,6 +143,9 @@ func (d *decoder) sum(p *Profile, at int32) {
 		d.fault(values, OverWhole, "the values sum to "+least.String()+"; together they cannot be more than 100")
 	}
 	if d.member(at, "complete") != 0 {
+		if p.Complete && len(p.Acids) > 0 && p.Basis.unit() == quantity.PerCent && !p.most().IsPositive() {
+			d.fault(values, AllZero, "every value is 0, and a profile that is complete shares out all of the fat")
+		}
 		return
 	}
 	whole := central.GreaterThanOrEqual(leastWhole) && central.LessThanOrEqual(mostWhole)
@@ -155,6 +158,15 @@ func (d *decoder) sum(p *Profile, at int32) {
 }
 
 var hundredPercent = decimal.New(100, 0)
+
+// most is the sum of all upper ends.
+func (p *Profile) most() decimal.Decimal {
+	sum := p.Unidentified.High
+	for _, a := range p.Acids {
+		sum = sum.Add(a.Value.High)
+	}
+	return sum
+}
 
 // middle is the typical value, else the low end.
 func (v Value) middle() decimal.Decimal {

@@ -11,8 +11,8 @@ import (
 )
 
 // leaf opens one ingredient's source.
-func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, kept []*recipe.Retention) (*Leaf, *Fault) {
-	l := &Leaf{Path: path, Pointer: in.Pointer, Name: in.Name, Ingredient: in, Mass: mass, batch: b, retentions: kept}
+func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string) (*Leaf, *Fault) {
+	l := &Leaf{Path: path, Pointer: in.Pointer, Name: in.Name, Ingredient: in, Mass: mass, batch: b}
 	switch {
 	case in.Food != "":
 		f, err := food.Find(in.Food)
@@ -38,17 +38,18 @@ func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string, ke
 			l.set(id, stated{ends: &ends{low: r.Low, high: r.High}})
 		}
 	case in.Composition != nil:
-		per, fault := l.per(in)
+		per, fault := l.statedPer(in)
 		if fault != nil {
 			return nil, fault
 		}
-		l.setPer(in.Composition.Components, per)
+		l.per = quantity.FromInt(100).Quo(per).Reduced()
+		l.setPer(in.Composition.Components, l.per)
 		fault = l.weigh()
 		if fault != nil {
 			return nil, fault
 		}
 	}
-	l.setPer(in.With, quantity.FromInt(100))
+	l.setPer(in.With, quantity.FromInt(1))
 	return l, l.tooMuch()
 }
 
@@ -86,8 +87,8 @@ func (l *Leaf) set(id food.ID, s stated) {
 	l.known.Add(id)
 }
 
-// per is the mass in grams that a specification's values are per.
-func (l *Leaf) per(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
+// statedPer is the mass in grams that a specification's values are per.
+func (l *Leaf) statedPer(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
 	if in.Composition.Per.IsZero() {
 		return quantity.FromInt(100), nil
 	}
@@ -98,8 +99,8 @@ func (l *Leaf) per(in *recipe.Ingredient) (quantity.Ratio, *Fault) {
 	return g, fault
 }
 
-func (l *Leaf) setPer(values map[string]recipe.Value, per quantity.Ratio) {
-	factor := quantity.FromInt(100).Quo(per).Reduced()
+// setPer sets values that make so many times themselves in 100 g.
+func (l *Leaf) setPer(values map[string]recipe.Value, factor quantity.Ratio) {
 	for tag, v := range values {
 		c, ok := food.Lookup(tag)
 		if !ok {

@@ -8,6 +8,13 @@ import (
 	"gramlaw/internal/recipe"
 )
 
+// keep adds what one more step of cooking keeps.
+func (l *Leaf) keep(r *recipe.Retention) {
+	if r != nil {
+		l.retentions = append(l.retentions, r)
+	}
+}
+
 // kept applies what cooking keeps of a component, and what fat was lost.
 func (l *Leaf) kept(id food.ID, a quantity.Linear) quantity.Linear {
 	for _, r := range l.retentions {
@@ -44,9 +51,13 @@ func isLipid(id food.ID) bool {
 
 // folateEquivalents is dietary folate equivalents under a retention code of the USDA table, which has no column for them:
 // 1 µg DFE = 1 µg food folate = 0.6 µg folic acid (1 / 1.7 in the table's rounding).
+// What the recipe states of them itself stands.
 // Reference: USDA Table of Nutrient Retention Factors, Release 6, and the survey database built on it.
 func (l *Leaf) folateEquivalents(id food.ID) (Amount, bool) {
 	if c, _ := food.ByID(id); c.Tag != "FOLDFE" || !l.coded() {
+		return Amount{}, false
+	}
+	if _, stated := l.Ingredient.With["FOLDFE"]; stated {
 		return Amount{}, false
 	}
 	natural, _ := food.Lookup("FOLFD")

@@ -16,7 +16,7 @@ var hundred = decimal.New(100, 0)
 // Roll computes a part: a recipe, a recipe inside one, or a single ingredient of 100 g.
 func Roll(p recipe.Part, o Options) (*Batch, *Fault) {
 	b := &Batch{options: o}
-	part, fault := b.part(p, "", nil)
+	part, fault := b.part(p, "", "")
 	if fault != nil {
 		return nil, fault
 	}
@@ -40,7 +40,8 @@ type rolled struct {
 	input, mass quantity.Ratio
 }
 
-func (b *Batch) part(p recipe.Part, path string, kept []*recipe.Retention) (rolled, *Fault) {
+// part rolls a recipe. Path and pointer are those of the ingredient it stands for.
+func (b *Batch) part(p recipe.Part, path, pointer string) (rolled, *Fault) {
 	var out rolled
 	for i := range p.Ingredients {
 		in := &p.Ingredients[i]
@@ -48,7 +49,7 @@ func (b *Batch) part(p recipe.Part, path string, kept []*recipe.Retention) (roll
 		if fault != nil {
 			return out, fault
 		}
-		leaves, fault := b.ingredient(in, mass, path, kept)
+		leaves, fault := b.ingredient(in, mass, path)
 		if fault != nil {
 			return out, fault
 		}
@@ -56,7 +57,7 @@ func (b *Batch) part(p recipe.Part, path string, kept []*recipe.Retention) (roll
 		out.input = out.input.Add(mass)
 	}
 	out.mass = out.input
-	return out, b.yield(&out, p.Yield, path)
+	return out, b.yield(&out, p.Yield, path, pointer+"/yield")
 }
 
 // grams is an ingredient's mass; a volume needs a density.
@@ -79,16 +80,16 @@ func join(path, id string) string {
 	return path + "/" + id
 }
 
-func (b *Batch) ingredient(in *recipe.Ingredient, mass quantity.Ratio, path string, kept []*recipe.Retention) ([]*Leaf, *Fault) {
-	if in.Retention != nil {
-		kept = append(kept[:len(kept):len(kept)], in.Retention)
-	}
+func (b *Batch) ingredient(in *recipe.Ingredient, mass quantity.Ratio, path string) ([]*Leaf, *Fault) {
 	path = join(path, in.ID)
 	if in.Recipe == nil {
-		l, fault := b.leaf(in, mass, path, kept)
+		l, fault := b.leaf(in, mass, path)
+		if fault == nil {
+			l.keep(in.Retention)
+		}
 		return []*Leaf{l}, fault
 	}
-	sub, fault := b.part(*in.Recipe, path, kept)
+	sub, fault := b.part(*in.Recipe, path, in.Pointer+"/recipe")
 	if fault != nil {
 		return nil, fault
 	}
@@ -98,12 +99,14 @@ func (b *Batch) ingredient(in *recipe.Ingredient, mass quantity.Ratio, path stri
 	share := mass.Quo(sub.mass)
 	for _, l := range sub.leaves {
 		l.Mass = l.Mass.Mul(share)
+		l.keep(in.Retention) // of all that the part has become, oil taken up included
+		l.forget()
 	}
 	return sub.leaves, nil
 }
 
 // yield settles what water and fat did in cooking.
-func (b *Batch) yield(r *rolled, y *recipe.Yield, path string) *Fault {
+func (b *Batch) yield(r *rolled, y *recipe.Yield, path, pointer string) *Fault {
 	if y == nil {
 		return nil
 	}
@@ -116,7 +119,7 @@ func (b *Batch) yield(r *rolled, y *recipe.Yield, path string) *Fault {
 		r.water(b, signed(y.Water, r.input), path)
 	}
 	if y.Fat != nil {
-		return r.fat(b, y.Fat, path)
+		return r.fat(b, y.Fat, path, pointer)
 	}
 	return nil
 }
@@ -151,11 +154,14 @@ func (r *rolled) water(b *Batch, mass quantity.Ratio, path string) {
 }
 
 // fat lets oil in, or takes the same share of every lipid out.
-func (r *rolled) fat(b *Batch, c *recipe.Change, path string) *Fault {
+func (r *rolled) fat(b *Batch, c *recipe.Change, path, pointer string) *Fault {
 	mass := changed(c, r.input)
+	if mass.IsZero() {
+		return nil
+	}
 	if c.Gain {
-		in := &recipe.Ingredient{Pointer: "/yield/fat/oil", ID: "(oil taken up)", Name: "oil taken up", Source: *c.Oil}
-		l, fault := b.leaf(in, mass, join(path, in.ID), nil)
+		in := &recipe.Ingredient{Pointer: pointer + "/fat/oil", ID: "(oil taken up)", Name: "oil taken up", Source: *c.Oil}
+		l, fault := b.leaf(in, mass, join(path, in.ID))
 		if fault != nil {
 			return fault
 		}
@@ -172,9 +178,9 @@ func (r *rolled) fat(b *Batch, c *recipe.Change, path string) *Fault {
 		total = total.Add(a.Known)
 	}
 	if total.Cmp(mass) < 0 {
-		return &Fault{"/yield/fat", "fat-loss-too-large", "more fat is lost than there is"}
+		return &Fault{pointer + "/fat", "fat-loss-too-large", "more fat is lost than there is"}
 	}
-	kept := total.Sub(mass).Quo(total)
+	kept := total.Sub(mass).Quo(total).Reduced()
 	for _, l := range r.leaves {
 		l.keepLipids(kept)
 	}
@@ -185,7 +191,7 @@ func (r *rolled) fat(b *Batch, c *recipe.Change, path string) *Fault {
 func (l *Leaf) keepLipids(kept quantity.Ratio) {
 	l.forget()
 	if l.lipidsKept != nil {
-		kept = kept.Mul(*l.lipidsKept)
+		kept = kept.Mul(*l.lipidsKept).Reduced()
 	}
 	l.lipidsKept = &kept
 }
@@ -193,7 +199,7 @@ func (l *Leaf) keepLipids(kept quantity.Ratio) {
 // commonDenominator writes all masses over one denominator, and prepares a multiple of it that profiles divide too. Only
 // fatty acids need the second, so that all else stays small.
 func (b *Batch) commonDenominator() *Fault {
-	plain, fine := big.NewInt(1), big.NewInt(1)
+	plain, fine, beside := big.NewInt(1), big.NewInt(1), big.NewInt(1)
 	parts := make([]quantity.Ratio, len(b.Leaves))
 	for i, l := range b.Leaves {
 		parts[i] = l.Mass.Reduced()
@@ -201,8 +207,12 @@ func (b *Batch) commonDenominator() *Fault {
 		if p := l.profileDenominator(); p != nil {
 			fine = lcm(fine, p)
 		}
-		if plain.BitLen()+fine.BitLen() > MaxBits {
-			return &Fault{l.Pointer, "too-fine", "the recipe has too many fatty-acid profiles in per cent to be computed exactly; state some in g per 100 g fat"}
+		beside = lcm(beside, l.per.Denominator())
+		if l.lipidsKept != nil {
+			beside = lcm(beside, l.lipidsKept.Denominator())
+		}
+		if plain.BitLen()+fine.BitLen() > MaxBits || beside.BitLen() > MaxBitsBeside {
+			return &Fault{l.Pointer, "too-fine", "up to here the recipe has too many different divisors to be computed exactly: fatty-acid profiles in per cent, yields inside one another, or long figures that specifications are per; state some profiles in g per 100 g fat, or values per 100 g"}
 		}
 	}
 	b.den = plain

@@ -256,3 +256,62 @@ func TestTooManyProfilesAreRefused(t *testing.T) {
 		t.Errorf("fault %v, want too-fine", fault)
 	}
 }
+
+// What cooking keeps of a part applies to all that the part has become.
+func TestRetentionOfParts(t *testing.T) {
+	fatty := stated("fatty", "100 g", `"FAT":"50 g","WATER":"50 g","VITD":"0 ug","CHOLE":"0 mg"`, "")
+	part := func(yield, more string) string {
+		return `"ingredients":[{"id":"part","name":"part","amount":"90 g","recipe":{"ingredients":[` + fatty + `],"yield":{"fat":` + yield + `}}` + more + `}]`
+	}
+	oil := `{"composition":{"components":{"FAT":"100 g","VITD":"10 ug"}}}`
+	for _, c := range []struct{ name, body, tag, want string }{
+		// 40 of 50 g of fat are left in 90 g; half of them stay.
+		{"fat lost inside, retention outside", part(`{"loss":"10 g"}`, `,"retention":{"FAT":"0.5"}`), "FAT", "22.222222"},
+		{"no fat lost", part(`{"loss":"0 g"}`, ""), "FAT", "50"},
+		{"stated equivalents stand", `"ingredients":[{"id":"rice","amount":"100 g","food":"sr:20081","with":{"FOLDFE":"500 ug"},"retention":"usda-r6:0352"}]`, "FOLDFE", "0.0005"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			if got := per100g(t, roll(t, c.body), c.tag); got != c.want {
+				t.Errorf("%s is %s, want %s", c.tag, got, c.want)
+			}
+		})
+	}
+	// 1 µg in 110 g, 90 g of it used, half of it kept.
+	b := roll(t, part(`{"gain":"10 g","oil":`+oil+`}`, `,"retention":{"VITD":"0.5"}`))
+	if got, want := b.Total(component(t, "VITD")).Known, quantity.Scaled(45, -8).Mul(quantity.FromInt(100)).Quo(quantity.FromInt(110)); got.Cmp(want) != 0 {
+		t.Errorf("vitamin D of the part is %s g, want %s", got.Brief(12), want.Brief(12))
+	}
+	if got := b.Leaves[1].Pointer; got != "/ingredients/0/recipe/yield/fat/oil" {
+		t.Errorf("the oil stands at %s", got)
+	}
+}
+
+// Cholesterol is not lost with no fat.
+func TestNothingIsLostWithNoFat(t *testing.T) {
+	b := roll(t, `"ingredients":[`+stated("lean", "100 g", `"FAT":"0 g","CHOLE":"5 mg"`, "")+`],"yield":{"fat":{"loss":"0 g"}}`)
+	if got := per100g(t, b, "CHOLE"); got != "0.005" {
+		t.Errorf("cholesterol is %s g, want 0.005", got)
+	}
+}
+
+// Ends at which a profile holds nothing are no reason to stop, and ranges enclose what they cut.
+func TestRangedProfiles(t *testing.T) {
+	b := roll(t, `"ingredients":[{"id":"fat","name":"fat","amount":"100 g","composition":{"components":{"FAT":"100 g"},"fatty_acids":{"basis":"percent of FAME","complete":true,"profile":{"16:0":{"low":"0","high":"30"},"18:0":"0","18:1 9c":{"low":"0","high":"60"}}}}}]`)
+	for _, a := range b.Leaves[0].Acids() {
+		if low, high := a.Triglyceride.Low(), a.Triglyceride.High(); low.Sign() != 0 || high.Cmp(quantity.FromInt(100)) > 0 {
+			t.Errorf("%s: %s..%s g of 100 g", a.Species, low.Brief(6), high.Brief(6))
+		}
+	}
+}
+
+// However many divisors a recipe brings, it is computed or refused in little time.
+func TestManyDivisors(t *testing.T) {
+	var in []string
+	for i := range 800 {
+		in = append(in, fmt.Sprintf(`{"id":"i%d","name":"x","amount":"10 g","composition":{"per":"%d g","components":{"FAT":"1 g"}}}`, i, 123456789012345+2*i))
+	}
+	_, fault := tryRoll(t, `"ingredients":[`+strings.Join(in, ",")+`]`)
+	if fault == nil || fault.Code != "too-fine" {
+		t.Errorf("got %v, want too-fine", fault)
+	}
+}

@@ -14,8 +14,12 @@ import (
 	"gramlaw/internal/recipe"
 )
 
-// MaxBits caps the common denominator of a batch. Profiles in per cent are what makes it grow.
-const MaxBits = 1 << 15
+// MaxBits caps the common denominator of a batch: profiles in per cent are what makes it grow, and yields inside one another.
+// MaxBitsBeside caps what single leaves are divided by beside it: what their specifications are per, and fat lost.
+const (
+	MaxBits       = 1 << 15
+	MaxBitsBeside = 1 << 12
+)
 
 // Options are what a batch needs to know from rules.
 type Options struct {
@@ -88,6 +92,7 @@ type Leaf struct {
 	asked      [food.Count + 1]uint16 // of a component in answers, counted from one
 	answers    []Amount
 	acids      *acids
+	per        quantity.Ratio // 100 g over what the specification is per; zero without one
 	retentions []*recipe.Retention
 	lipidsKept *quantity.Ratio // set where fat was lost
 	weights    []weight

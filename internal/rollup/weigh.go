@@ -172,8 +172,25 @@ func (s *profileSums) weight(p *recipe.Profile, j int, exact bool) weight {
 			continue
 		}
 		w.acid[end], w.tag[end], w.den[end] = s.share(p, j, end)
+		if !exact {
+			w.cut(end)
+		}
 	}
 	return w
+}
+
+// cut writes one end of a range over 10^18, the low one no higher and the high one no lower than it was, so that ranges of many
+// profiles keep one denominator.
+func (w *weight) cut(end int) {
+	over := quantity.Pow10(18)
+	cut := func(n *big.Int) *big.Int {
+		q, rest := new(big.Int).QuoRem(new(big.Int).Mul(n, over), w.den[end], new(big.Int))
+		if end == 2 && rest.Sign() > 0 {
+			q.Add(q, big.NewInt(1))
+		}
+		return q
+	}
+	w.acid[end], w.tag[end], w.den[end] = cut(w.acid[end]), cut(w.tag[end]), over
 }
 
 func (s *profileSums) share(p *recipe.Profile, j, end int) (acid, tag, den *big.Int) {
@@ -194,6 +211,9 @@ func (s *profileSums) share(p *recipe.Profile, j, end int) (acid, tag, den *big.
 			}
 		}
 		return sum
+	}
+	if all(s.a).Sign() == 0 { // nothing is in the profile at this end
+		return new(big.Int), new(big.Int), big.NewInt(1)
 	}
 	if p.ShareOfFat.IsPositive() {
 		x := p.ShareOfFat

@@ -129,16 +129,22 @@ func (l *Law) index() {
 			l.roundingOf[q] = i
 		}
 	}
-	for i, c := range l.Claims.All {
-		for _, name := range c.Body.AlsoNamed {
-			if _, taken := l.Claims.byName[name]; !taken {
-				l.Claims.byName[name] = i
-			}
-		}
-	}
+	alsoNamed(&l.Claims)
+	alsoNamed(&l.HealthClaims)
 	l.referenceOf = map[string]int{}
 	for i, r := range l.References.All {
 		l.referenceOf[r.Body.Quantity] = i
+	}
+}
+
+// alsoNamed lets a claim be found by the names that other markets have for it.
+func alsoNamed(l *List[Claim]) {
+	for i, c := range l.All {
+		for _, name := range c.Body.AlsoNamed {
+			if _, taken := l.byName[name]; !taken {
+				l.byName[name] = i
+			}
+		}
 	}
 }
 
