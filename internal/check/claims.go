@@ -199,7 +199,7 @@ func (m *market) candidates(list []rulebook.Active[rulebook.Claim], asked []Clai
 		}
 		one := Claim{Verdict: Permitted, Rule: c.ID}
 		m.accompany(&one, c.Body, v)
-		if one.Verdict != Refused {
+		if one.Verdict == Permitted || one.Verdict == WithStatement {
 			out = append(out, Candidate{Claim: c.ID, Name: c.Body.Name.In("en"), Verdict: one.Verdict, Health: health})
 		}
 	}

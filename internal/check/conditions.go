@@ -41,11 +41,17 @@ func (m *market) comparison(out *Condition, c *claim.Comparison, t quantity.Trut
 		out.NoValue = "there is nothing to be a share of"
 		return
 	}
+	if c.Relation.Relative() {
+		out.least = exactText(c.Low)
+	}
 	if c.Known {
 		out.Exact, out.Headroom = text(c.Exact), exactText(c.Headroom)
 	}
 	if t == quantity.Open || !c.Known {
-		out.Low, out.High = exactText(c.Low), exactText(c.High)
+		out.Low = exactText(c.Low)
+		if !c.Endless {
+			out.High = exactText(c.High)
+		}
 	}
 	if t == quantity.Open {
 		out.Needs = append(out.Needs, m.needs(c.Variables)...)
@@ -92,8 +98,8 @@ func needsOf(c Condition) []string {
 
 // differenceIn finds the per cent by which the product differs from its reference food, cut to a whole number.
 func differenceIn(c *Condition) string {
-	if c.Unit == "%" && c.Exact != nil && c.Relation == ">=" {
-		whole := *c.Exact
+	if c.Unit == "%" && c.Relation == ">=" && c.least != "" && c.least != "0" {
+		whole := c.least
 		for i := range whole {
 			if whole[i] == '.' {
 				whole = whole[:i]

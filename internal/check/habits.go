@@ -43,6 +43,9 @@ func newHabits(b *rulebook.Book, without []string) *habits {
 
 // selects tells whether a selection takes a leaf's food.
 func (h *habits) selects(s *rulebook.Selection, l *rollup.Leaf) bool {
+	if s.Stated {
+		return l.Ingredient != nil && (l.Ingredient.Composition != nil || l.Ingredient.Label != nil)
+	}
 	if len(s.Processes) > 0 {
 		return l.Ingredient != nil && l.Ingredient.Composition != nil && slices.Contains(s.Processes, l.Ingredient.Process)
 	}
@@ -95,20 +98,48 @@ func (h *habits) note(l *rollup.Leaf, id food.ID, rule string, p *rulebook.Presu
 	if p.Of != "" {
 		taken += " " + p.Of
 	}
-	n := Presumed{Component: c.Tag, Ingredient: l.Path, Taken: taken, Reason: p.Reason, Rule: rule}
+	h.use(Presumed{Component: c.Tag, Ingredient: l.Path, Taken: taken, Reason: p.Reason, Rule: rule})
+}
+
+func (h *habits) use(n Presumed) {
 	if !h.seen[n] {
 		h.seen[n] = true
 		h.used = append(h.used, n)
 	}
 }
 
-// origin is what practice knows of a leaf's trans fatty acids and fat; the zero value is nothing.
-func (h *habits) origin(l *rollup.Leaf) rulebook.Origin {
+// origin is where practice takes a leaf's trans fatty acids to come from; empty where it takes nothing.
+func (h *habits) origin(l *rollup.Leaf) string {
 	for i := range h.origins {
 		o := &h.origins[i].Versions[len(h.origins[i].Versions)-1].Body
-		if h.selects(&o.Foods, l) {
-			return *o
+		if o.Origin != "" && h.selects(&o.Foods, l) && littleTrans(o.TransAtMost, l) {
+			return o.Origin
 		}
 	}
-	return rulebook.Origin{}
+	return ""
+}
+
+// process is how practice takes a leaf's fat to have been processed, which is noted; empty where it takes nothing.
+func (h *habits) process(l *rollup.Leaf) string {
+	for i := range h.origins {
+		r := &h.origins[i]
+		o := &r.Versions[len(r.Versions)-1].Body
+		if o.Process != "" && h.selects(&o.Foods, l) && littleTrans(o.TransAtMost, l) {
+			h.use(Presumed{Component: Process, Ingredient: l.Path, Taken: o.Process, Reason: o.Reason, Rule: r.ID})
+			return o.Process
+		}
+	}
+	return ""
+}
+
+// littleTrans tells whether a leaf has trans fatty acids, and surely no more than a share of its fat.
+func littleTrans(limit *quantity.Amount, l *rollup.Leaf) bool {
+	if limit == nil {
+		return true
+	}
+	trans, _ := food.Lookup("FATRN")
+	fat, _ := food.Lookup("FAT")
+	most := l.Component(fat.ID).Low().Times(limit.Value.Shift(-2))
+	held := l.Component(trans.ID).High()
+	return held.Sign() > 0 && held.Cmp(most) <= 0
 }

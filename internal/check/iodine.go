@@ -18,9 +18,9 @@ func iodineValue(l *rollup.Leaf) (low, high quantity.Ratio, ok bool) {
 	if !l.HasProfile() {
 		return low, high, false
 	}
-	var iodine, most, fat quantity.Ratio
+	var iodine, most, leastFat, mostFat quantity.Ratio
 	for _, a := range l.Acids() {
-		fat = fat.Add(a.Triglyceride.Low())
+		leastFat, mostFat = leastFat.Add(a.Triglyceride.Low()), mostFat.Add(a.Triglyceride.High())
 		num, den, ok := a.Species.IodineFactor(lipid.Triglyceride)
 		if !a.Identified {
 			num, den, ok = 47, 10, true // six double bonds on 22 carbons: 4.6
@@ -33,9 +33,9 @@ func iodineValue(l *rollup.Leaf) (low, high quantity.Ratio, ok bool) {
 		iodine = iodine.Add(a.Triglyceride.Low().MulFraction(big.NewInt(num), big.NewInt(den)))
 		most = most.Add(a.Triglyceride.High().MulFraction(big.NewInt(num), big.NewInt(den)))
 	}
-	if fat.Sign() <= 0 {
+	if leastFat.Sign() <= 0 {
 		return low, high, false
 	}
 	per := quantity.FromInt(100)
-	return iodine.Mul(per).Quo(fat), most.Mul(per).Quo(fat), true
+	return iodine.Mul(per).Quo(mostFat), most.Mul(per).Quo(leastFat), true
 }

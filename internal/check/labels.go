@@ -66,14 +66,24 @@ func invert(law *rulebook.Law, tag string, v recipe.Value, serving quantity.Amou
 	if !ok {
 		return rollup.Range{}, &rollup.Fault{Pointer: pointer, Code: "label-line", Says: fmt.Sprintf("the rounding of %s for %s is not known", law.Market.Name, tag)}
 	}
-	p := declare.Printed{Value: v.High, LessThan: !v.Low.Equal(v.High)}
-	low, high, ok := declare.Invert(rounding.Body, p, v.Unit)
-	switch {
-	case ok:
-	case rounding.Head.Source.Force == "law":
-		return rollup.Range{}, &rollup.Fault{Pointer: pointer, Code: "label-value", Says: fmt.Sprintf("no amount prints as %s %s under the rounding of %s; check the value, its unit and the labelling date (\"on\")", v.High, v.Unit, law.Market.Name)}
-	default:
-		low, high = lastPlace(p, v.Unit)
+	prints := []declare.Printed{{Value: v.High, LessThan: !v.Low.Equal(v.High)}}
+	if prints[0].LessThan && v.Low.IsPositive() { // a range of printed values, as of several lots
+		prints = []declare.Printed{{Value: v.Low}, {Value: v.High}}
+	}
+	var low, high decimal.Decimal
+	for i, p := range prints {
+		l, h, ok := declare.Invert(rounding.Body, p, v.Unit)
+		switch {
+		case ok:
+		case rounding.Head.Source.Force == "law":
+			return rollup.Range{}, &rollup.Fault{Pointer: pointer, Code: "label-value", Says: fmt.Sprintf("no amount prints as %s %s under the rounding of %s; check the value, its unit and the labelling date (\"on\")", p.Value, v.Unit, law.Market.Name)}
+		default:
+			l, h = lastPlace(p, v.Unit)
+		}
+		if i == 0 {
+			low = l
+		}
+		high = h
 	}
 	per := quantity.FromInt(100).Quo(serving.Ratio())
 	return rollup.Range{Low: quantity.FromDecimal(low).Mul(per), High: quantity.FromDecimal(high).Mul(per)}, nil

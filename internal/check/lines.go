@@ -3,7 +3,6 @@ package check
 import (
 	"slices"
 
-	"gramlaw/internal/claim"
 	"gramlaw/internal/declare"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
@@ -74,7 +73,7 @@ func missingBasis(per string) string {
 func (m *market) amountOf(p rulebook.Per) string {
 	switch p.Name {
 	case "serving":
-		s, ok := m.serving()
+		s, _, ok := m.serving()
 		if !ok {
 			return ""
 		}
@@ -267,7 +266,7 @@ func (v view) bandNeeds(q string) []string {
 		if c == nil || v.truth(c) != quantity.Open {
 			continue
 		}
-		for _, n := range needsOf(v.condition(claim.Evaluate(v.unfolded(c), v))) {
+		for _, n := range v.needsFor(v.unfolded(c)) {
 			if !slices.Contains(out, n) {
 				out = append(out, n)
 			}

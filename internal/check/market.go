@@ -87,7 +87,7 @@ func (m *market) presumed() []Presumed {
 	}
 	out := []Presumed{}
 	for _, p := range m.c.habits.used {
-		if spoken[p.Component] {
+		if spoken[p.Component] || p.Component == Process {
 			out = append(out, p)
 		}
 	}
@@ -185,12 +185,12 @@ func (m *market) referenceAmount() (recipe.ReferenceAmount, bool) {
 }
 
 // serving is the recipe's serving; without one the reference amount stands in.
-func (m *market) serving() (recipe.Serving, bool) {
+func (m *market) serving() (s recipe.Serving, grams *quantity.Amount, ok bool) {
 	if s, ok := m.c.recipe.Serving.For(m.j); ok {
-		return s, true
+		return s, nil, true
 	}
 	r, ok := m.referenceAmount()
-	return recipe.Serving{Amount: r.Amount}, ok
+	return recipe.Serving{Amount: r.Amount}, r.Grams, ok
 }
 
 func (m *market) liquid() bool {

@@ -264,7 +264,7 @@ func (p *product) ruminant(l *rollup.Leaf) (quantity.Ratio, bool) {
 	if f, ok := p.m.c.recipe.Facts["trans origin"]; ok {
 		return quantity.FromInt(map[bool]int64{true: 1}[f.Text == "ruminant"]), true
 	}
-	switch p.m.c.habits.origin(l).Origin {
+	switch p.m.c.habits.origin(l) {
 	case "ruminant":
 		return quantity.FromInt(1), true
 	case "industrial":
@@ -280,11 +280,11 @@ func (p *product) ruminant(l *rollup.Leaf) (quantity.Ratio, bool) {
 func (p *product) Basis(per rulebook.Per) (quantity.Ratio, bool) {
 	switch per.Name {
 	case "serving":
-		s, ok := p.m.serving()
+		s, grams, ok := p.m.serving()
 		if !ok {
 			return quantity.Ratio{}, false
 		}
-		return p.m.grams(s.Amount, nil)
+		return p.m.grams(s.Amount, grams)
 	case "reference amount":
 		r, ok := p.m.referenceAmount()
 		if !ok {

@@ -169,7 +169,8 @@ type Statement struct {
 	Presence string            `json:"presence"` // "mandatory", "optional" or "open"
 	Rule     string            `json:"rule"`
 
-	open bool // an amount in it is not determined
+	open  bool     // an amount in it is not determined
+	needs []string // what would settle whether it must stand
 }
 
 // Verdicts on a claim.
@@ -212,13 +213,15 @@ type Condition struct {
 	Exact     *string     `json:"exact,omitzero"`
 	NoValue   string      `json:"no_value,omitzero"` // why there is none: the denominator is zero
 	Low       string      `json:"low,omitzero"`
-	High      string      `json:"high,omitzero"`
+	High      string      `json:"high,omitzero"` // none where there may be nothing to be a share of
 	Relation  string      `json:"relation,omitzero"`
 	Threshold string      `json:"threshold,omitzero"`
 	Unit      string      `json:"unit,omitzero"`
 	Holds     *bool       `json:"holds"` // null is open
 	Headroom  string      `json:"headroom,omitzero"`
 	Needs     []string    `json:"needs,omitzero"`
+
+	least string // of a change against a reference food: the smallest that is possible
 }
 
 // A Candidate is a listed claim nobody asked for that the product may carry.
@@ -251,9 +254,12 @@ type Naming struct {
 	Source     string `json:"source"`
 }
 
-// A Presumed is a value nobody stated and practice takes.
+// Process stands for the component of a Presumed that tells how an ingredient's fat was processed.
+const Process = "process"
+
+// A Presumed is a value, or how an ingredient's fat was processed, that nobody stated and practice takes.
 type Presumed struct {
-	Component  string `json:"component"`
+	Component  string `json:"component"` // a tagname, or Process
 	Ingredient string `json:"ingredient"`
 	Taken      string `json:"taken"`
 	Reason     string `json:"reason"`

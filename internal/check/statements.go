@@ -4,6 +4,7 @@ import (
 	"slices"
 	"strings"
 
+	"gramlaw/internal/claim"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/recipe"
 	"gramlaw/internal/rulebook"
@@ -18,7 +19,12 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
 	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
 	out.Statements = append(out.Statements, v.disclosures(out)...)
 	for _, s := range out.Statements {
-		if s.Presence == "mandatory" && s.open && out.Verdict != Refused {
+		switch {
+		case out.Verdict != Permitted:
+		case s.Presence == "open":
+			out.Printable, out.Why = false, "it is not determined whether a statement must stand beside it"
+			out.Needs = union(out.Needs, s.needs)
+		case s.Presence == "mandatory" && s.open:
 			out.Printable, out.Why = false, "a statement that must stand beside it holds an amount that is not determined"
 		}
 	}
@@ -62,7 +68,7 @@ func (v view) statements(list []rulebook.Statement, rule string, c *Claim) []Sta
 			st.Presence = s.Presence
 		}
 		if t == quantity.Open && s.Presence != "optional" {
-			st.Presence = "open"
+			st.Presence, st.needs = "open", v.needsFor(s.If)
 		}
 		out = append(out, st)
 	}
@@ -86,32 +92,72 @@ func (v view) disclosures(out *Claim) []Statement {
 	type group struct {
 		d     *rulebook.Disclosure
 		id    string
+		truth quantity.Truth
 		names []string
+		needs []string // what would settle it
 	}
 	var groups []*group
 	for _, d := range v.law.Disclosures.All {
-		if d.Body.When != nil && v.truth(d.Body.When) != quantity.Yes || v.truth(d.Body.Condition) != quantity.Yes {
+		t := v.truth(d.Body.When)
+		if t != quantity.No {
+			t = quantity.All(t, v.truth(d.Body.Condition))
+		}
+		if t == quantity.No {
 			continue
 		}
 		if d.Body.Effect == "bars" {
-			out.Verdict, out.Printable, out.Why = Refused, false, "barred by the level of "+d.Body.Named.In("en")+" ("+d.Head.Source.Ref+")"
+			v.bar(out, d, t)
 			continue
 		}
-		i := slices.IndexFunc(groups, func(g *group) bool { return g.d.Statement.In("en") == d.Body.Statement.In("en") })
+		i := slices.IndexFunc(groups, func(g *group) bool { return g.truth == t && g.d.Statement.In("en") == d.Body.Statement.In("en") })
 		if i < 0 {
-			groups, i = append(groups, &group{d: d.Body, id: d.ID}), len(groups)
+			groups, i = append(groups, &group{d: d.Body, id: d.ID, truth: t}), len(groups)
 		}
 		groups[i].names = append(groups[i].names, d.Body.Named.In("en"))
+		if t == quantity.Open {
+			groups[i].needs = union(groups[i].needs, v.needsFor(d.Body.When), v.needsFor(d.Body.Condition))
+		}
 	}
-	var st []Statement
+	var list []Statement
 	for _, g := range groups {
 		words := rulebook.Words{}
 		for lang, s := range g.d.Statement {
 			words[lang] = strings.ReplaceAll(s, "{names}", joined(g.names))
 		}
-		st = append(st, v.statement(words, g.d.Place, g.id, out))
+		st := v.statement(words, g.d.Place, g.id, out)
+		if g.truth == quantity.Open {
+			st.Presence, st.needs = "open", g.needs
+		}
+		list = append(list, st)
 	}
-	return st
+	return list
+}
+
+// bar refuses a claim by a level, or leaves it open where the level is.
+func (v view) bar(out *Claim, d rulebook.Active[rulebook.Disclosure], t quantity.Truth) {
+	by := d.Body.Named.In("en") + " (" + d.Head.Source.Ref + ")"
+	switch {
+	case t == quantity.Yes:
+		out.Verdict, out.Printable, out.Why = Refused, false, "barred by the level of "+by
+	case out.Verdict != Refused:
+		out.Verdict, out.Printable, out.Why = Undetermined, false, "not determined whether the claim is barred by the level of "+by
+		out.Needs = union(out.Needs, v.needsFor(d.Body.When), v.needsFor(d.Body.Condition))
+	}
+}
+
+// needsFor is what would have to be known to decide a condition.
+func (v view) needsFor(c *rulebook.Condition) []string {
+	return needsOf(v.condition(claim.Evaluate(c, v)))
+}
+
+// union appends what is not in the list yet.
+func union(list []string, more ...[]string) []string {
+	for _, n := range slices.Concat(more...) {
+		if !slices.Contains(list, n) {
+			list = append(list, n)
+		}
+	}
+	return list
 }
 
 func joined(names []string) string {

@@ -7,6 +7,7 @@ import (
 	"github.com/shopspring/decimal"
 
 	"gramlaw/internal/claim"
+	"gramlaw/internal/food"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
 	"gramlaw/internal/rulebook"
@@ -107,22 +108,34 @@ func (v view) Fact(name, is string) quantity.Truth {
 	} else if t := v.stated(name, is); t != quantity.Open {
 		return t
 	}
-	for _, a := range v.law.Market.Assumed {
-		if a.Fact == name {
-			v.assumed[name] = Assumed{a.Fact, a.Is, a.Why}
-			return quantity.TruthOf(a.Is == is)
-		}
+	if a, ok := v.assume(name); ok {
+		return quantity.TruthOf(a == is)
 	}
 	return quantity.Open
 }
 
-// Measured is a fact that is an amount.
+// Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted.
 func (v view) Measured(name string) (quantity.Ratio, bool) {
-	f, ok := v.c.recipe.Facts[name]
-	if !ok || f.Number == nil {
+	if f, ok := v.c.recipe.Facts[name]; ok && f.Number != nil {
+		return f.Number.Ratio(), true
+	}
+	a, ok := v.assume(name)
+	if !ok {
 		return quantity.Ratio{}, false
 	}
-	return f.Number.Ratio(), true
+	amount, err := quantity.ParseAmount(a)
+	return amount.Ratio(), err == nil
+}
+
+// assume is what the market's rules take for a fact nobody stated.
+func (v view) assume(name string) (is string, ok bool) {
+	for _, a := range v.law.Market.Assumed {
+		if a.Fact == name {
+			v.assumed[name] = Assumed{a.Fact, a.Is, a.Why}
+			return a.Is, true
+		}
+	}
+	return "", false
 }
 
 // ReferenceAmount tells whether the reference amount is at most one of the amounts in its own kind of unit.
@@ -191,33 +204,63 @@ func (v view) ReferenceKind(kinds []string) quantity.Truth {
 	return quantity.TruthOf(slices.Contains(kinds, v.c.recipe.References[v.against].Kind))
 }
 
-// NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit.
-func (v view) NoIngredient(c *rulebook.Condition) quantity.Truth {
+// NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit. What is missing is the
+// process or the iodine value of the ingredients that leave it open.
+func (v view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing string) {
 	found := quantity.No
+	var open []string
 	for _, l := range v.subject.batch.Leaves {
-		if l.Ingredient != nil {
-			found = quantity.Any(found, v.processed(c, l))
+		if l.Ingredient == nil {
+			continue
 		}
+		one := v.processed(c, l)
+		if one == quantity.Open {
+			open = append(open, l.Path)
+		}
+		found = quantity.Any(found, one)
 	}
-	return found.Not()
+	if found == quantity.Open {
+		what := "the process of "
+		if c.IodineAbove != nil {
+			what = "the process or the iodine value of "
+		}
+		missing = what + joined(open)
+	}
+	return found.Not(), missing
 }
 
+// processed is open for an ingredient whose process nobody knows and that may hold industrial trans fatty acids.
 func (v view) processed(c *rulebook.Condition, l *rollup.Leaf) quantity.Truth {
+	if v.process(l) == "" && v.mayBeHydrogenated(l) {
+		if c.IodineAbove != nil && iodineAbove(l, *c.IodineAbove) == quantity.No {
+			return quantity.No
+		}
+		return quantity.Open
+	}
 	return v.matches(&rulebook.IngredientTest{Process: c.Process, IodineAbove: c.IodineAbove}, l)
+}
+
+// process is what was done to an ingredient's fat: stated, or what practice knows; empty where neither is.
+func (m *market) process(l *rollup.Leaf) string {
+	if l.Ingredient.Process != "" {
+		return l.Ingredient.Process
+	}
+	return m.c.habits.process(l)
+}
+
+func (m *market) mayBeHydrogenated(l *rollup.Leaf) bool {
+	trans, _ := food.Lookup("FATRN")
+	return m.product.originShare(l.Component(trans.ID).Linear, l, "industrial").High().Sign() > 0
 }
 
 // matches tells whether an ingredient has one of the processes and an iodine value on the side asked for.
 func (m *market) matches(t *rulebook.IngredientTest, l *rollup.Leaf) quantity.Truth {
-	process := l.Ingredient.Process
-	if process == "" {
-		process = m.c.habits.origin(l).Process
-	}
-	if !slices.Contains(t.Process, process) {
+	if !slices.Contains(t.Process, m.process(l)) {
 		return quantity.No
 	}
 	out := quantity.Yes
 	if t.IodineAbove != nil {
-		out = iodineAbove(l, *t.IodineAbove)
+		out = quantity.All(out, iodineAbove(l, *t.IodineAbove))
 	}
 	if t.IodineUpTo != nil {
 		out = quantity.All(out, iodineAbove(l, *t.IodineUpTo).Not())

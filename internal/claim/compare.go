@@ -15,6 +15,7 @@ type Comparison struct {
 	Exact     quantity.Ratio
 	Known     bool // Exact is set: the value is determined, or all uncertain parts have a typical value
 	Null      bool // no value: the denominator is zero
+	Endless   bool // no upper end: the denominator may be zero
 	Headroom  quantity.Ratio
 	Variables []*quantity.Variable // what it still depends on
 }
@@ -164,7 +165,7 @@ func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, str
 
 // decideSides decides num relation T·den, and fills the comparison's numbers.
 func decideSides(rel rulebook.Relation, s side, t quantity.Ratio, cmp *Comparison) quantity.Truth {
-	zero := s.den.High().Sign() == 0
+	zero := s.den.High().Sign() <= 0
 	if cmp != nil {
 		cmp.Variables, cmp.Null = quantity.Merge(s.num.Variables(), s.den.Variables()), zero
 		cmp.numbers(s)
@@ -176,8 +177,18 @@ func decideSides(rel rulebook.Relation, s side, t quantity.Ratio, cmp *Compariso
 		return quantity.No
 	}
 	truth := s.against(rel, t)
-	if s.den.Low().Sign() == 0 && (rel == rulebook.AtLeast || rel == rulebook.Above) && truth == quantity.Yes {
-		return quantity.Open
+	if s.den.Low().Sign() > 0 {
+		return truth
+	}
+	switch rel { // with nothing to be a share of, it may be the other way round
+	case rulebook.AtLeast, rulebook.Above:
+		if truth == quantity.Yes {
+			return quantity.Open
+		}
+	case rulebook.Below:
+		if truth == quantity.No && s.against(rulebook.AtMost, t) != quantity.No {
+			return quantity.Open
+		}
 	}
 	return truth
 }
@@ -233,7 +244,7 @@ func (c *Comparison) numbers(s side) {
 	if low := s.den.Low(); low.Sign() > 0 {
 		c.High = quo(s.num.High(), low)
 	} else {
-		c.High = quantity.Ratio{}
+		c.Endless = true
 	}
 	num, ok1 := s.num.Central()
 	den, ok2 := s.den.Central()

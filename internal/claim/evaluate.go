@@ -36,7 +36,7 @@ type Context interface {
 	ReferenceAmount(atMost []quantity.Amount) quantity.Truth
 	ClaimedAbout(subjects []string, onLabel bool) quantity.Truth
 	Named(id string) (*rulebook.Condition, bool) // a condition that has a rule of its own
-	NoIngredient(c *rulebook.Condition) quantity.Truth
+	NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing string)
 	ReferenceKind(kinds []string) quantity.Truth // open without a reference food
 	// Size is the mass in g of the package, the serving or one unit, or the surface in cm².
 	Size(name string) (quantity.Ratio, bool)
@@ -157,7 +157,8 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 	case rulebook.OpAbout:
 		return Result{Truth: x.ClaimedAbout(c.About, c.Label)}
 	default:
-		return Result{Truth: x.NoIngredient(c)}
+		t, missing := x.NoIngredient(c)
+		return Result{Truth: t, Missing: missing}
 	}
 }
 

@@ -52,8 +52,8 @@ func (w world) ClaimedAbout([]string, bool) quantity.Truth       { return quanti
 func (w world) Named(id string) (*rulebook.Condition, bool) {
 	return &rulebook.Condition{Op: rulebook.OpFact, Name: "state", Is: "solid"}, id == "x/condition/solid"
 }
-func (w world) NoIngredient(*rulebook.Condition) quantity.Truth { return quantity.Yes }
-func (w world) ReferenceKind([]string) quantity.Truth           { return quantity.Open }
+func (w world) NoIngredient(*rulebook.Condition) (quantity.Truth, string) { return quantity.Yes, "" }
+func (w world) ReferenceKind([]string) quantity.Truth                     { return quantity.Open }
 
 func parse(t *testing.T, s string) *rulebook.Condition {
 	t.Helper()

@@ -38,7 +38,7 @@ func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *
 	switch c.Relation {
 	case rulebook.ReducedBy, rulebook.IncreasedBy:
 		cmp.change(c.Relation, product, other)
-		if other.High().Sign() == 0 {
+		if other.High().Sign() <= 0 {
 			return quantity.No
 		}
 		f := change.Add(other.Mul(percent)) // product - other·(1-t)
@@ -48,12 +48,12 @@ func decideRelative(c *rulebook.Condition, product, other quantity.Linear, cmp *
 		}
 		cmp.dependsOn(f)
 		truth := sign(rel, f)
-		if truth == quantity.Yes && other.Low().Sign() == 0 {
+		if truth == quantity.Yes && other.Low().Sign() <= 0 {
 			return quantity.Open
 		}
 		return truth
 	case rulebook.NotMore:
-		cmp.absolute(product, other)
+		cmp.absolute(first(c), product, other)
 		cmp.dependsOn(change)
 		return sign(rulebook.AtMost, change)
 	}
@@ -78,7 +78,7 @@ func (c *Comparison) change(rel rulebook.Relation, product, other quantity.Linea
 	if c == nil {
 		return
 	}
-	if c.Null = other.High().Sign() == 0; c.Null {
+	if c.Null = other.High().Sign() <= 0; c.Null {
 		return
 	}
 	c.Low, c.High = change(rel, product.High(), other.Low()), change(rel, product.Low(), other.High())
@@ -105,17 +105,24 @@ func change(rel rulebook.Relation, product, other quantity.Ratio) quantity.Ratio
 	return diff.Mul(quantity.FromInt(100)).Quo(other)
 }
 
-func (c *Comparison) absolute(product, other quantity.Linear) {
+// absolute fills the comparison with both foods' amounts; the other food's is the threshold.
+func (c *Comparison) absolute(name string, product, other quantity.Linear) {
 	if c == nil {
 		return
 	}
 	c.Unit = quantity.Gram
+	switch name {
+	case "energy":
+		c.Unit = quantity.Kilocalorie
+	case "energy-kj":
+		c.Unit = quantity.Kilojoule
+	}
+	c.Low, c.High = product.Low(), product.High()
 	p, ok1 := product.Central()
 	o, ok2 := other.Central()
+	c.Threshold = o
 	if c.Known = ok1 && ok2; c.Known {
-		c.Exact, c.Threshold = p, o
-		c.Low, c.High = product.Low(), product.High()
-		c.Headroom = o.Sub(p)
+		c.Exact, c.Headroom = p, o.Sub(p)
 	}
 }
 

@@ -219,9 +219,24 @@ func (l *Leaf) bound(id food.ID) quantity.Ratio {
 		}
 	}
 	if !any {
-		best = l.remainder(id, 0, l.Mass)
+		best = l.remainder(id, 0, l.Mass.Mul(quantity.FromInt(mostPerGram(id))))
 	}
 	return best
+}
+
+// mostPerGram is the most that 1 g can hold, in the component's base unit: fat yields the most energy of all food, and
+// 1 IU of vitamin D, the smallest, is 0.025 µg.
+func mostPerGram(id food.ID) int64 {
+	c, _ := food.ByID(id)
+	switch c.Unit {
+	case food.Kilocalorie:
+		return 10
+	case food.Kilojoule:
+		return 40
+	case food.InternationalUnit:
+		return 40_000_000
+	}
+	return 1
 }
 
 func (l *Leaf) remainder(id, whole food.ID, most quantity.Ratio) quantity.Ratio {

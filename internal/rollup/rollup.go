@@ -171,14 +171,18 @@ func (b *Batch) Total(id food.ID) quantity.Linear {
 
 // Coverage is the share of the ingoing mass whose content of a component somebody stated or practice presumes.
 func (b *Batch) Coverage(id food.ID) quantity.Ratio {
-	var with quantity.Ratio
+	var with, all quantity.Ratio
 	for _, l := range b.Leaves {
-		if l.Ingredient != nil && (l.Component(id).How != Bounded || l.Component(id).Determined()) {
+		if l.Ingredient == nil {
+			continue
+		}
+		all = all.Add(l.Mass)
+		if a := l.Component(id); a.How != Bounded || a.Determined() {
 			with = with.Add(l.Mass)
 		}
 	}
-	if b.Input.IsZero() {
+	if all.IsZero() {
 		return quantity.Ratio{}
 	}
-	return with.Quo(b.Input)
+	return with.Quo(all)
 }

@@ -470,12 +470,15 @@ type Selection struct {
 	Without []string `json:"without,omitzero"` // none of these may occur
 	// Processes picks ingredients with a specification instead of foods of the table, by how they were processed.
 	Processes []string `json:"processes,omitzero"`
+	// Stated picks every ingredient with a specification or a label instead.
+	Stated bool `json:"stated,omitzero"`
 }
 
-// An Origin says where the trans fatty acids of some foods come from, and how their fat was processed.
+// An Origin says where the trans fatty acids of some foods come from, or how their fat was processed, or both.
 type Origin struct {
-	Foods   Selection `json:"foods"`
-	Origin  string    `json:"origin"`           // "ruminant" or "industrial"
-	Process string    `json:"process,omitzero"` // as a recipe states it
-	Reason  string    `json:"reason"`
+	Foods       Selection        `json:"foods"`
+	TransAtMost *quantity.Amount `json:"trans at most,omitzero"` // only foods with no more trans fatty acids than that, in % of the fat
+	Origin      string           `json:"origin,omitzero"`        // "ruminant" or "industrial"
+	Process     string           `json:"process,omitzero"`       // as a recipe states it
+	Reason      string           `json:"reason"`
 }
