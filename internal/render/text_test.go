@@ -138,7 +138,9 @@ func fill(v reflect.Value, text string) {
 		}
 	case reflect.Struct:
 		for i := range v.NumField() {
-			fill(v.Field(i), text)
+			if v.Type().Field(i).IsExported() {
+				fill(v.Field(i), text)
+			}
 		}
 	case reflect.Slice:
 		for i := range v.Len() {
