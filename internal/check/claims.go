@@ -194,7 +194,7 @@ func (m *market) candidates(list []rulebook.Active[rulebook.Claim], asked []Clai
 		if c.Body.Condition == nil || c.Body.Against || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
 			continue
 		}
-		if m.product.Meets(c.ID) != quantity.Yes || c.Body.BarredIf != nil && v.truth(c.Body.BarredIf) != quantity.No {
+		if c.Body.Prohibited || !m.product.surelyMeets(c, v) || c.Body.BarredIf != nil && v.truth(c.Body.BarredIf) != quantity.No {
 			continue
 		}
 		one := Claim{Verdict: Permitted, Rule: c.ID}

@@ -3,6 +3,7 @@ package check
 import (
 	"slices"
 
+	"gramlaw/internal/claim"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
 	"gramlaw/internal/rulebook"
@@ -318,6 +319,14 @@ func (p *product) Meets(id string) quantity.Truth {
 	}
 	p.meets[id] = t
 	return t
+}
+
+// surelyMeets tells whether Meets would answer yes. Of most claims nobody asks more.
+func (p *product) surelyMeets(c rulebook.Active[rulebook.Claim], v view) bool {
+	if t, ok := p.meets[c.ID]; ok {
+		return t == quantity.Yes
+	}
+	return claim.Surely(c.Body.Condition, v)
 }
 
 // reference builds the subject of a reference food; false when there is none of that name.

@@ -9,6 +9,43 @@ import (
 // nobody reads why.
 func Decide(c *rulebook.Condition, x Context) quantity.Truth { return evaluator{x}.decide(c) }
 
+// Surely tells whether Decide would find that a condition holds, and finds out sooner when it does not: of parts that must all hold,
+// what needs no numbers comes first, and the first that does not hold ends it.
+func Surely(c *rulebook.Condition, x Context) bool { return evaluator{x}.surely(c) }
+
+func (x evaluator) surely(c *rulebook.Condition) bool {
+	if c == nil {
+		return true
+	}
+	switch c.Op {
+	case rulebook.OpAll:
+		for _, numbers := range []bool{false, true} {
+			for _, p := range c.Parts {
+				if asksNumbers(p) == numbers && !x.surely(p) {
+					return false
+				}
+			}
+		}
+		return true
+	case rulebook.OpAny:
+		for _, p := range c.Parts {
+			if x.surely(p) {
+				return true
+			}
+		}
+		return false
+	}
+	return x.decide(c) == quantity.Yes
+}
+
+func asksNumbers(c *rulebook.Condition) bool {
+	switch c.Op {
+	case rulebook.OpFact, rulebook.OpAbout:
+		return false
+	}
+	return true
+}
+
 func (x evaluator) decide(c *rulebook.Condition) quantity.Truth {
 	if c == nil {
 		return quantity.Yes
