@@ -320,6 +320,7 @@ type labelCases struct {
 		Name, Source, Evidence, On, Transition, Basis, Note string
 		Given                                               given
 		Declared                                            map[string]struct{ Text, Percent, Presence string }
+		Absent                                              []string // quantities that no line may declare
 	} `json:"cases"`
 }
 
@@ -349,6 +350,11 @@ func TestLabelCases(t *testing.T) {
 					}
 					if want.Presence != "" && line.Presence != want.Presence {
 						t.Errorf("%s is %s, want %s", q, line.Presence, want.Presence)
+					}
+				}
+				for _, q := range c.Absent {
+					if line, _, err := printedLine(m, q, ""); err == nil {
+						t.Errorf("%s stands in the declaration, %s", q, line.Presence)
 					}
 				}
 			})
