@@ -202,7 +202,7 @@ func (m *market) table() Table {
 	if d, ok := m.law.Declaration(); ok {
 		t.Title, t.Rule = d.Body.Title.In(m.language()), d.ID
 		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
-		t.Servings, t.Simplified = v.servings(d.Body.Servings), v.simplified(d.Body.Simplified)
+		t.Servings, t.Simplified = v.servings(d.Body), v.simplified(d.Body.Simplified)
 	}
 	return t
 }

@@ -90,6 +90,8 @@ type Simplified struct {
 	Name     string   `json:"name"`
 	LeaveOut []string `json:"leave_out"` // terms
 	Says     string   `json:"says,omitzero"`
+	// Texts is what must be said in each of the market's languages, where it has several.
+	Texts map[string]string `json:"texts,omitzero"`
 }
 
 // An OpenLine is an optional line that cannot be printed because data are missing.

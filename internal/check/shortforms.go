@@ -11,7 +11,8 @@ import (
 )
 
 // servings is how many servings the package holds, by the declaration's bands.
-func (v view) servings(s *rulebook.Servings) *Servings {
+func (v view) servings(d *rulebook.Declaration) *Servings {
+	s := d.Servings
 	if s == nil {
 		return nil
 	}
@@ -24,7 +25,7 @@ func (v view) servings(s *rulebook.Servings) *Servings {
 	n := count(s.Bands, exact)
 	out := &Servings{Exact: exactText(exact), Texts: map[string]string{}}
 	for _, lang := range v.law.Market.Languages {
-		number := n.String()
+		number := strings.ReplaceAll(n.String(), ".", d.Number[lang].Decimal)
 		if exact.CmpDecimal(n) != 0 {
 			number = strings.ReplaceAll(s.About.In(lang), "{n}", number)
 		}
@@ -55,17 +56,35 @@ func (v view) simplified(f *rulebook.Simplified) *Simplified {
 	}
 	truths := make([]quantity.Truth, len(f.Of))
 	out := &Simplified{Name: f.Name.In(v.language()), LeaveOut: []string{}}
+	var left []*rulebook.Line
 	for i, one := range f.Of {
 		truths[i] = v.truth(one.If)
 		if truths[i] == quantity.Yes && !slices.Contains(f.Keeps, one.Quantity) && !v.lines[one.Quantity].needed {
-			out.LeaveOut = append(out.LeaveOut, v.lines[one.Quantity].line.Terms[v.language()][0])
+			left = append(left, v.lines[one.Quantity].line)
 		}
 	}
-	if quantity.AtLeast(f.Needed, truths...) != quantity.Yes || len(out.LeaveOut) == 0 {
+	if quantity.AtLeast(f.Needed, truths...) != quantity.Yes || len(left) == 0 {
 		return nil
 	}
-	if says := f.Says.In(v.language()); says != "" {
-		out.Says = strings.ReplaceAll(says, "{names}", joined(out.LeaveOut))
+	out.LeaveOut = termsOf(left, v.language())
+	texts := map[string]string{}
+	for _, lang := range v.law.Market.Languages {
+		if says, ok := f.Says[lang]; ok {
+			texts[lang] = strings.ReplaceAll(says, "{names}", joined(termsOf(left, lang), lang))
+		}
+	}
+	out.Says = texts[v.language()]
+	if len(texts) > 1 {
+		out.Texts = texts
+	}
+	return out
+}
+
+// termsOf are the first terms of lines in a language.
+func termsOf(lines []*rulebook.Line, lang string) []string {
+	out := make([]string, len(lines))
+	for i, l := range lines {
+		out[i] = l.Terms[lang][0]
 	}
 	return out
 }

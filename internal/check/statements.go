@@ -1,6 +1,7 @@
 package check
 
 import (
+	"cmp"
 	"slices"
 	"strings"
 
@@ -122,7 +123,7 @@ func (v view) disclosures(out *Claim) []Statement {
 	for _, g := range groups {
 		words := rulebook.Words{}
 		for lang, s := range g.d.Statement {
-			words[lang] = strings.ReplaceAll(s, "{names}", joined(g.names))
+			words[lang] = strings.ReplaceAll(s, "{names}", joined(g.names, lang))
 		}
 		st := v.statement(words, g.d.Place, g.id, out)
 		if g.truth == quantity.Open {
@@ -160,15 +161,20 @@ func union(list []string, more ...[]string) []string {
 	return list
 }
 
-func joined(names []string) string {
+// and is the word before the last of several names, by language. From memory.
+var and = map[string]string{"en": "and", "fr": "et", "de": "und", "es": "y", "it": "e", "pt": "e", "nl": "en", "pl": "i"}
+
+// joined lists names in words; only English has a comma before the last of three.
+func joined(names []string, lang string) string {
 	if len(names) < 2 {
 		return strings.Join(names, "")
 	}
 	comma := ""
-	if len(names) > 2 {
+	if len(names) > 2 && lang == "en" {
 		comma = ","
 	}
-	return strings.Join(names[:len(names)-1], ", ") + comma + " and " + names[len(names)-1]
+	last := len(names) - 1
+	return strings.Join(names[:last], ", ") + comma + " " + cmp.Or(and[lang], ",") + " " + names[last]
 }
 
 // fill replaces placeholders, and tells whether it could replace all: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and

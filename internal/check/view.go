@@ -224,7 +224,7 @@ func (v view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing str
 		if c.IodineAbove != nil {
 			what = "the process or the iodine value of "
 		}
-		missing = what + joined(open)
+		missing = what + joined(open, "en")
 	}
 	return found.Not(), missing
 }

@@ -87,6 +87,7 @@ func (p *page) simplified(s *check.Simplified) {
 		text += "; the label then states “" + strings.TrimSuffix(listless(s.Says, s.LeaveOut), ".") + "”"
 	}
 	p.run("A shorter format is allowed", strings.TrimSuffix(text, ".")+".")
+	p.languages(s.Says, s.Texts)
 }
 
 // listless puts "…" for the list of names in a statement.
