@@ -22,7 +22,7 @@ type Request struct {
 	In         []string // markets; none takes the recipe's, and without those all of the set
 	Transition rulebook.Transition
 	Detail     string   // "" or "contributions"
-	Without    []string // presumption rules to leave out; "all" leaves all out
+	Without    []string // rules of practice to leave out; "all" leaves all out
 }
 
 // Caution stands in every report.
@@ -131,7 +131,9 @@ func (c *checker) accept() recipe.Faults {
 	}
 	slices.SortStableFunc(faults, func(a, b recipe.Fault) int { return strings.Compare(a.Pointer, b.Pointer) })
 	for _, id := range c.request.Without {
-		if id != "all" && !slices.ContainsFunc(c.book.Presumptions, func(r rulebook.Rule[rulebook.Presumption]) bool { return r.ID == id }) {
+		presumed := slices.ContainsFunc(c.book.Presumptions, func(r rulebook.Rule[rulebook.Presumption]) bool { return r.ID == id })
+		origin := slices.ContainsFunc(c.book.Origins, func(r rulebook.Rule[rulebook.Origin]) bool { return r.ID == id })
+		if id != "all" && !presumed && !origin {
 			bad("without", "unknown-presumption", "%q is no presumption of this rule set", id)
 		}
 	}

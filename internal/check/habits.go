@@ -24,9 +24,14 @@ type habits struct {
 }
 
 func newHabits(b *rulebook.Book, without []string) *habits {
-	h := &habits{by: map[food.ID][]*rulebook.Rule[rulebook.Presumption]{}, origins: b.Origins, names: map[*rollup.Leaf]string{}, seen: map[Presumed]bool{}}
+	h := &habits{by: map[food.ID][]*rulebook.Rule[rulebook.Presumption]{}, names: map[*rollup.Leaf]string{}, seen: map[Presumed]bool{}}
 	if slices.Contains(without, "all") {
 		return h
+	}
+	for _, r := range b.Origins {
+		if !slices.Contains(without, r.ID) {
+			h.origins = append(h.origins, r)
+		}
 	}
 	for i := range b.Presumptions {
 		r := &b.Presumptions[i]

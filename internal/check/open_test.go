@@ -5,6 +5,7 @@ import (
 	"testing"
 
 	"gramlaw/internal/check"
+	"gramlaw/internal/recipe"
 )
 
 // What is open is neither yes nor no: each pair differs only in how much is known.
@@ -79,6 +80,31 @@ func TestOpenHydrogenation(t *testing.T) {
 					t.Errorf("the limit is %q, want %q", severity, c.severity)
 				}
 			})
+		}
+	}
+}
+
+// What practice takes of a process can be left out like any presumption.
+func TestProcessIsNotPresumedWithout(t *testing.T) {
+	doc := []byte(`{"id":"r","name":"r","ingredients":[{"id":"a","name":"a","amount":"100 g","composition":{"components":{"FAT":"100 g","FATRN":"1 g"}}}]}`)
+	r, faults := recipe.Decode(doc)
+	if len(faults) > 0 {
+		t.Fatal(faults)
+	}
+	for _, c := range []struct {
+		without []string
+		open    bool
+	}{{nil, false}, {[]string{"all"}, true}, {[]string{"practice/origin/little-trans-in-specifications"}, true}} {
+		report, faults := check.Check(r, book(t), check.Request{On: "2026-12-01", In: []string{"us"}, Without: c.without})
+		if len(faults) > 0 {
+			t.Fatal(faults)
+		}
+		open := false
+		for _, f := range report.Jurisdictions[0].Findings {
+			open = open || strings.Contains(f.Rule, "/limit/") && f.Severity == "open"
+		}
+		if open != c.open {
+			t.Errorf("without %v the limit is open: %v, want %v", c.without, open, c.open)
 		}
 	}
 }
