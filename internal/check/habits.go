@@ -113,11 +113,13 @@ func (h *habits) use(n Presumed) {
 	}
 }
 
-// origin is where practice takes a leaf's trans fatty acids to come from; empty where it takes nothing.
+// origin is where practice takes a leaf's trans fatty acids to come from, which is noted; empty where it takes nothing.
 func (h *habits) origin(l *rollup.Leaf) string {
 	for i := range h.origins {
-		o := &h.origins[i].Versions[len(h.origins[i].Versions)-1].Body
+		r := &h.origins[i]
+		o := &r.Versions[len(r.Versions)-1].Body
 		if o.Origin != "" && h.selects(&o.Foods, l) && littleTrans(o.TransAtMost, l) {
+			h.use(Presumed{Component: TransOrigin, Ingredient: l.Path, Taken: o.Origin, Reason: o.Reason, Rule: r.ID})
 			return o.Origin
 		}
 	}

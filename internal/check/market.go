@@ -87,7 +87,7 @@ func (m *market) presumed() []Presumed {
 	}
 	out := []Presumed{}
 	for _, p := range m.c.habits.used {
-		if spoken[p.Component] || p.Component == Process {
+		if spoken[p.Component] || p.Component == Process || p.Component == TransOrigin {
 			out = append(out, p)
 		}
 	}

@@ -232,6 +232,9 @@ func (p *product) From(name, origin string) (quantity.Linear, bool) {
 }
 
 func (p *product) originShare(amount quantity.Linear, l *rollup.Leaf, origin string) quantity.Linear {
+	if amount.High().Sign() <= 0 {
+		return quantity.Linear{}
+	}
 	ruminant, known := p.ruminant(l)
 	share := ruminant
 	if origin != "ruminant" {
@@ -240,10 +243,7 @@ func (p *product) originShare(amount quantity.Linear, l *rollup.Leaf, origin str
 	if known {
 		return amount.Mul(share)
 	}
-	if high := amount.High(); high.Sign() > 0 {
-		return quantity.Of(l.Variable("origin of trans fatty acids", quantity.Ratio{}, high, quantity.Ratio{}, false))
-	}
-	return quantity.Linear{}
+	return quantity.Of(l.Variable("origin of trans fatty acids", quantity.Ratio{}, amount.High(), quantity.Ratio{}, false))
 }
 
 var industrialProcesses = []string{"refined", "partially hydrogenated", "fully hydrogenated", "hydrogenated"}

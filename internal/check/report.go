@@ -256,12 +256,16 @@ type Naming struct {
 	Source     string `json:"source"`
 }
 
-// Process stands for the component of a Presumed that tells how an ingredient's fat was processed.
-const Process = "process"
+// Process and TransOrigin stand for the component of a Presumed that tells how an ingredient's fat was processed, or where its trans fatty
+// acids come from.
+const (
+	Process     = "process"
+	TransOrigin = "origin of trans fatty acids"
+)
 
-// A Presumed is a value, or how an ingredient's fat was processed, that nobody stated and practice takes.
+// A Presumed is a value, or how a fat was processed or where its trans fatty acids come from, that nobody stated and practice takes.
 type Presumed struct {
-	Component  string `json:"component"` // a tagname, or Process
+	Component  string `json:"component"` // a tagname, Process or TransOrigin
 	Ingredient string `json:"ingredient"`
 	Taken      string `json:"taken"`
 	Reason     string `json:"reason"`
