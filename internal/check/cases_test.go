@@ -57,7 +57,7 @@ func casesOf(t *testing.T, b *rulebook.Book, j string) coverage {
 	t.Helper()
 	c := coverage{}
 	for _, kind := range []string{"claims", "health_claims"} {
-		var claims claimCases
+		var claims casesIn[claimCase]
 		caseFile(t, j, kind, &claims)
 		for _, one := range claims.Cases {
 			c.claim(lawOn(b, j, one.On, one.Transition, one.Given.Facts), one.Claim, one.Text)
@@ -73,7 +73,7 @@ func casesOf(t *testing.T, b *rulebook.Book, j string) coverage {
 			}
 		}
 	}
-	var findings findingCases
+	var findings casesIn[findingCase]
 	caseFile(t, j, "findings", &findings)
 	for _, one := range findings.Cases {
 		law := lawOn(b, j, one.On, one.Transition, one.Given.Facts)

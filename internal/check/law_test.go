@@ -262,104 +262,126 @@ func run(t *testing.T, b *rulebook.Book, j, on, transition string, doc []byte) c
 	return report.Jurisdictions[0]
 }
 
-type claimCases struct {
-	Jurisdiction string `json:"jurisdiction"`
-	Cases        []struct {
-		Name, Source, Evidence, On, Transition, Note string
-		Given                                        given
-		Claim, Text, Against, Stated, Verdict        string
-		Statements                                   []string
-		Printable                                    *bool
-	} `json:"cases"`
+// A caseHead is what cases of every kind say of themselves, and the food they give.
+type caseHead struct {
+	Name, Source, Evidence, On, Transition, Note string
+	Given                                        given
 }
 
-// Every claim just under, at and just over its thresholds, written from the dossiers; sources stand in the files.
-func TestClaimCases(t *testing.T) { claimFiles(t, "claims") }
+func (h caseHead) head() caseHead { return h }
 
-func TestHealthClaimCases(t *testing.T) { claimFiles(t, "health_claims") }
+// report checks the case's food with the claims asked for.
+func (h caseHead) report(t *testing.T, b *rulebook.Book, j string, claims ...map[string]any) check.Market {
+	t.Helper()
+	return run(t, b, j, h.On, h.Transition, h.Given.document(claims...))
+}
 
-func claimFiles(t *testing.T, kind string) {
+// casesIn is a file of cases.
+type casesIn[C any] struct {
+	Jurisdiction string `json:"jurisdiction"`
+	Cases        []C    `json:"cases"`
+}
+
+// eachCase runs every case of a kind in every market.
+func eachCase[C interface{ head() caseHead }](t *testing.T, kind string, visit func(t *testing.T, b *rulebook.Book, j string, c C)) {
 	t.Helper()
 	b := book(t)
 	caseFiles(t, b, kind, func(t *testing.T, j string, doc []byte) {
-		var cases claimCases
-		decodeCases(t, doc, &cases)
-		if len(cases.Cases) == 0 {
+		var file casesIn[C]
+		decodeCases(t, doc, &file)
+		if len(file.Cases) == 0 {
 			t.Error("no case")
 		}
-		for _, c := range cases.Cases {
-			t.Run(c.Name, func(t *testing.T) {
-				asked := map[string]any{}
-				for k, v := range map[string]string{"claim": c.Claim, "text": c.Text, "against": c.Against, "stated": c.Stated} {
-					if v != "" {
-						asked[k] = v
-					}
-				}
-				m := run(t, b, j, c.On, c.Transition, c.Given.document(asked))
-				got := m.Claims[0]
-				if got.Verdict != c.Verdict {
-					why, _ := json.MarshalIndent(got, "", " ")
-					t.Errorf("verdict %s, want %s\n%s", got.Verdict, c.Verdict, why)
-				}
-				for _, want := range c.Statements {
-					if !slices.ContainsFunc(got.Statements, func(s check.Statement) bool { return strings.Contains(s.Text, want) }) {
-						t.Errorf("statement %q is missing from %v", want, got.Statements)
-					}
-				}
-				if c.Printable != nil && got.Printable != *c.Printable {
-					t.Errorf("printable is %v", got.Printable)
-				}
-			})
+		for _, c := range file.Cases {
+			t.Run(c.head().Name, func(t *testing.T) { visit(t, b, j, c) })
 		}
 	})
 }
 
-type labelCases struct {
-	Jurisdiction string `json:"jurisdiction"`
-	Cases        []struct {
-		Name, Source, Evidence, On, Transition, Basis, Note string
-		Given                                               given
-		Declared                                            map[string]struct{ Text, Percent, Presence string }
-		Absent                                              []string // quantities that no line may declare
-	} `json:"cases"`
+type claimCase struct {
+	caseHead
+	Claim, Text, Against, Stated, Verdict string
+	Statements                            []string
+	NotStatements                         []string `json:"not_statements"` // parts that no statement may hold
+	Printable                             *bool
+}
+
+// Every claim just under, at and just over its thresholds, written from the dossiers; sources stand in the files.
+func TestClaimCases(t *testing.T) { eachCase(t, "claims", judgeClaim) }
+
+func TestHealthClaimCases(t *testing.T) { eachCase(t, "health_claims", judgeClaim) }
+
+func judgeClaim(t *testing.T, b *rulebook.Book, j string, c claimCase) {
+	asked := map[string]any{}
+	for k, v := range map[string]string{"claim": c.Claim, "text": c.Text, "against": c.Against, "stated": c.Stated} {
+		if v != "" {
+			asked[k] = v
+		}
+	}
+	got := c.report(t, b, j, asked).Claims[0]
+	if got.Verdict != c.Verdict {
+		why, _ := json.MarshalIndent(got, "", " ")
+		t.Errorf("verdict %s, want %s\n%s", got.Verdict, c.Verdict, why)
+	}
+	stated := func(part string) bool {
+		return slices.ContainsFunc(got.Statements, func(s check.Statement) bool { return strings.Contains(s.Text, part) })
+	}
+	for _, want := range c.Statements {
+		if !stated(want) {
+			t.Errorf("statement %q is missing from %v", want, got.Statements)
+		}
+	}
+	for _, not := range c.NotStatements {
+		if stated(not) {
+			t.Errorf("a statement holds %q: %v", not, got.Statements)
+		}
+	}
+	if c.Printable != nil && got.Printable != *c.Printable {
+		t.Errorf("printable is %v", got.Printable)
+	}
+}
+
+type labelCase struct {
+	caseHead
+	Basis    string
+	Declared map[string]struct{ Text, Percent, Presence string }
+	Absent   []string // quantities that no line may declare
 }
 
 // The dossiers' published sample labels and worked examples, from values to print.
 func TestLabelCases(t *testing.T) {
-	b := book(t)
-	caseFiles(t, b, "labels", func(t *testing.T, j string, doc []byte) {
-		var cases labelCases
-		decodeCases(t, doc, &cases)
-		if len(cases.Cases) == 0 {
-			t.Error("no case")
+	eachCase(t, "labels", func(t *testing.T, b *rulebook.Book, j string, c labelCase) {
+		m := c.report(t, b, j)
+		for q, want := range c.Declared {
+			line, value, err := printedLine(m, q, c.Basis)
+			if err != nil {
+				t.Error(err)
+				continue
+			}
+			if want.Text != "" && value.Text != want.Text {
+				t.Errorf("%s prints %q, want %q (exact %v)", q, value.Text, want.Text, deref(value.Exact))
+			}
+			if got := percentOf(value); want.Percent != "" && got != want.Percent {
+				t.Errorf("%s has per cent %q, want %q", q, got, want.Percent)
+			}
+			if want.Presence != "" && line.Presence != want.Presence {
+				t.Errorf("%s is %s, want %s", q, line.Presence, want.Presence)
+			}
 		}
-		for _, c := range cases.Cases {
-			t.Run(c.Name, func(t *testing.T) {
-				m := run(t, b, j, c.On, c.Transition, c.Given.document())
-				for q, want := range c.Declared {
-					line, value, err := printedLine(m, q, c.Basis)
-					if err != nil {
-						t.Error(err)
-						continue
-					}
-					if want.Text != "" && value.Text != want.Text {
-						t.Errorf("%s prints %q, want %q (exact %v)", q, value.Text, want.Text, deref(value.Exact))
-					}
-					if want.Percent != "" && (value.PercentReference == nil || value.PercentReference.Text != want.Percent) {
-						t.Errorf("%s has per cent %+v, want %q", q, value.PercentReference, want.Percent)
-					}
-					if want.Presence != "" && line.Presence != want.Presence {
-						t.Errorf("%s is %s, want %s", q, line.Presence, want.Presence)
-					}
-				}
-				for _, q := range c.Absent {
-					if line, _, err := printedLine(m, q, ""); err == nil {
-						t.Errorf("%s stands in the declaration, %s", q, line.Presence)
-					}
-				}
-			})
+		for _, q := range c.Absent {
+			if line, _, err := printedLine(m, q, ""); err == nil {
+				t.Errorf("%s stands in the declaration, %s", q, line.Presence)
+			}
 		}
 	})
+}
+
+// percentOf is the per cent beside a value, "none" where there is none.
+func percentOf(v check.Value) string {
+	if v.PercentReference == nil {
+		return "none"
+	}
+	return v.PercentReference.Text
 }
 
 func deref(s *string) string {
@@ -383,50 +405,39 @@ func printedLine(m check.Market, q, basis string) (check.Line, check.Value, erro
 	return check.Line{}, check.Value{}, fmt.Errorf("the declaration has no line for %s", q)
 }
 
-type findingCases struct {
-	Jurisdiction string `json:"jurisdiction"`
-	Cases        []struct {
-		Name, Source, Evidence, On, Transition, Note string
-		Given                                        given
-		Findings                                     map[string]string // code -> severity; "none" says that it must be absent
-		Naming                                       []string          // parts of what is said of names
-		NotNamed                                     []string          `json:"not_named"` // parts that must not be said
-		Servings                                     string            // servings per package
-		LeaveOut                                     []string          `json:"leave_out"` // terms the simplified format leaves out
-		Simplified                                   *bool             `json:"simplified"`
-	} `json:"cases"`
+type findingCase struct {
+	caseHead
+	Findings   map[string]string // code -> severity; "none" says that it must be absent
+	Naming     []string          // parts of what is said of names
+	NotNamed   []string          `json:"not_named"` // parts that must not be said
+	Servings   string            // servings per package
+	LeaveOut   []string          `json:"leave_out"` // terms the simplified format leaves out
+	Simplified *bool             `json:"simplified"`
 }
 
 // Limits, servings, packages, names and simplified formats, written from the dossiers; sources stand in the files.
 func TestFindingCases(t *testing.T) {
-	b := book(t)
-	caseFiles(t, b, "findings", func(t *testing.T, j string, doc []byte) {
-		var cases findingCases
-		decodeCases(t, doc, &cases)
-		if len(cases.Cases) == 0 {
-			t.Error("no case")
+	eachCase(t, "findings", func(t *testing.T, b *rulebook.Book, j string, c findingCase) {
+		m := c.report(t, b, j)
+		for code, want := range c.Findings {
+			if got := severityOf(m, code); got != want {
+				t.Errorf("%s is %s, want %s", code, got, want)
+			}
 		}
-		for _, c := range cases.Cases {
-			t.Run(c.Name, func(t *testing.T) {
-				m := run(t, b, j, c.On, c.Transition, c.Given.document())
-				for code, want := range c.Findings {
-					if got := severityOf(m, code); got != want {
-						t.Errorf("%s is %s, want %s", code, got, want)
-					}
-				}
-				for _, want := range c.Naming {
-					if !slices.ContainsFunc(m.Naming, func(n check.Naming) bool { return strings.Contains(n.Name+" "+n.Says, want) }) {
-						t.Errorf("nothing named says %q: %v", want, m.Naming)
-					}
-				}
-				for _, not := range c.NotNamed {
-					if slices.ContainsFunc(m.Naming, func(n check.Naming) bool { return strings.Contains(n.Name+" "+n.Says, not) }) {
-						t.Errorf("something named says %q: %v", not, m.Naming)
-					}
-				}
-				shortFormCase(t, m.Declaration, c.Servings, c.LeaveOut, c.Simplified)
-			})
+		named := func(part string) bool {
+			return slices.ContainsFunc(m.Naming, func(n check.Naming) bool { return strings.Contains(n.Name+" "+n.Says, part) })
 		}
+		for _, want := range c.Naming {
+			if !named(want) {
+				t.Errorf("nothing named says %q: %v", want, m.Naming)
+			}
+		}
+		for _, not := range c.NotNamed {
+			if named(not) {
+				t.Errorf("something named says %q: %v", not, m.Naming)
+			}
+		}
+		shortFormCase(t, m.Declaration, c.Servings, c.LeaveOut, c.Simplified)
 	})
 }
 
