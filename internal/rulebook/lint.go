@@ -3,6 +3,7 @@ package rulebook
 import (
 	"fmt"
 	"slices"
+	"strconv"
 	"strings"
 	"time"
 
@@ -20,7 +21,7 @@ func (l *loader) common(file, id, prefix string, heads []*Head) {
 	}
 	last := ""
 	for i, h := range heads {
-		v := fmt.Sprintf("versions/%d", i)
+		v := "versions/" + strconv.Itoa(i)
 		l.head(file, id, v, h)
 		if h.From < last {
 			bad(v, "begins before the version above it; the oldest stands first")
@@ -139,26 +140,8 @@ func (c *checker) editions() {
 
 // each visits the head of every version of a market's rules.
 func each(m *Rules, visit func(kind, id string, h *Head)) {
-	eachOf("definitions", m.Definitions, visit)
-	eachOf("energy", m.Energy, visit)
-	eachOf("reference_values", m.References, visit)
-	eachOf("rounding", m.Roundings, visit)
-	eachOf("declaration", m.Declarations, visit)
-	eachOf("reference_amounts", m.ReferenceAmounts, visit)
-	eachOf("claims", m.Claims, visit)
-	eachOf("disclosure", m.Disclosures, visit)
-	eachOf("limits", m.Limits, visit)
-	eachOf("serving", m.Serving, visit)
-	eachOf("health_claims", m.HealthClaims, visit)
-	eachOf("naming", m.Naming, visit)
-	eachOf("conditions", m.Conditions, visit)
-}
-
-func eachOf[T any](kind string, rules []Rule[T], visit func(kind, id string, h *Head)) {
-	for i := range rules {
-		for j := range rules[i].Versions {
-			visit(kind, rules[i].ID, &rules[i].Versions[j].Head)
-		}
+	for _, t := range m.tables() {
+		t.heads(visit)
 	}
 }
 
@@ -166,7 +149,7 @@ func eachOf[T any](kind string, rules []Rule[T], visit func(kind, id string, h *
 func bodies[T any](rules []Rule[T], visit func(id, field string, b *T)) {
 	for i := range rules {
 		for j := range rules[i].Versions {
-			visit(rules[i].ID, fmt.Sprintf("versions/%d", j), &rules[i].Versions[j].Body)
+			visit(rules[i].ID, "versions/"+strconv.Itoa(j), &rules[i].Versions[j].Body)
 		}
 	}
 }

@@ -1,8 +1,8 @@
 package rulebook
 
 import (
-	"fmt"
 	"slices"
+	"strconv"
 	"strings"
 
 	"gramlaw/internal/food"
@@ -19,7 +19,7 @@ func (c *checker) declarations() {
 		}
 		seen := map[string]bool{}
 		for i := range d.Lines {
-			line, at := &d.Lines[i], fmt.Sprintf("/lines/%d", i)
+			line, at := &d.Lines[i], "/lines/"+strconv.Itoa(i)
 			if seen[line.Quantity] {
 				bad(at, "the quantity %s has a line already", line.Quantity)
 			}
@@ -35,7 +35,7 @@ func (c *checker) declarations() {
 			}
 		}
 		for i, s := range d.Statements {
-			c.statement("declaration", id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
+			c.statement("declaration", id, field+"/statements/"+strconv.Itoa(i), "statement/"+Name(id), s)
 		}
 	})
 }
@@ -130,7 +130,7 @@ func (c *checker) claimsOf(kind string, rules []Rule[Claim]) {
 		}
 		c.condition(kind, id, field+"/condition", node, cl.Condition)
 		for i, s := range cl.Statements {
-			c.statement(kind, id, fmt.Sprintf("%s/statements/%d", field, i), "statement/"+Name(id), s)
+			c.statement(kind, id, field+"/statements/"+strconv.Itoa(i), "statement/"+Name(id), s)
 		}
 		for _, q := range cl.NeedsLines {
 			c.quantity(kind, id, field+"/mandatory lines", q, quantity.NoDimension)

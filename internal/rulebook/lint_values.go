@@ -3,6 +3,7 @@ package rulebook
 import (
 	"fmt"
 	"slices"
+	"strconv"
 	"strings"
 
 	"github.com/shopspring/decimal"
@@ -58,7 +59,7 @@ func (c *checker) definition(id, field string, d *Definition) {
 		c.quantity("definitions", id, field+"/energy as", d.EnergyAs, quantity.Mass)
 	}
 	for i := range d.Ways {
-		c.way(id, fmt.Sprintf("%s/ways/%d", field, i), &d.Ways[i])
+		c.way(id, field+"/ways/"+strconv.Itoa(i), &d.Ways[i])
 	}
 	d.key = d.makeKey()
 }
@@ -165,7 +166,7 @@ func (c *checker) roundings() {
 		if len(r.Quantities) == 0 || len(r.Bands) == 0 && r.Percent == nil {
 			c.bad("rounding", id, field, "rounds nothing")
 		}
-		c.bands(id, field+"/bands", r.Bands, dim)
+		c.bands(id, field+"/bands", r.Quantities, r.Bands, dim)
 		if p := r.Percent; p != nil {
 			c.percent(id, field+"/percent", r, p)
 		}
@@ -179,7 +180,7 @@ func (c *checker) percent(id, field string, r *Rounding, p *Percent) {
 	if len(p.Bands) == 0 {
 		c.bad("rounding", id, field+"/bands", "is empty")
 	}
-	c.bands(id, field+"/bands", p.Bands, quantity.Percent)
+	c.bands(id, field+"/bands", r.Quantities, p.Bands, quantity.Percent)
 	if p.Source != nil {
 		c.source(c.j+"/rounding.json", id, field+"/source", *p.Source)
 	}
@@ -187,11 +188,11 @@ func (c *checker) percent(id, field string, r *Rounding, p *Percent) {
 }
 
 // bands checks that edges rise, that only the last band has none, and that each does one thing.
-func (c *checker) bands(id, field string, bands []Band, dim quantity.Dimension) {
+func (c *checker) bands(id, field string, quantities []string, bands []Band, dim quantity.Dimension) {
 	last := decimal.NewFromInt(-1)
 	for i := range bands {
 		b := &bands[i]
-		at := fmt.Sprintf("%s/%d", field, i)
+		at := field + "/" + strconv.Itoa(i)
 		edge := b.limit()
 		switch {
 		case edge == nil && i < len(bands)-1:
@@ -206,20 +207,10 @@ func (c *checker) bands(id, field string, bands []Band, dim quantity.Dimension) 
 			last = edge.Base()
 		}
 		c.band(id, at, b, dim)
-		for _, q := range c.roundingQuantities(id) {
+		for _, q := range quantities {
 			c.condition("rounding", id, at+"/if", "declared/"+q, b.If)
 		}
 	}
-}
-
-func (c *checker) roundingQuantities(id string) []string {
-	var out []string
-	bodies(c.m.Roundings, func(other, _ string, r *Rounding) {
-		if other == id {
-			out = append(out, r.Quantities...)
-		}
-	})
-	return out
 }
 
 func (c *checker) band(id, at string, b *Band, dim quantity.Dimension) {

@@ -1,7 +1,6 @@
 package rulebook
 
 import (
-	"bytes"
 	"crypto/sha256"
 	"encoding/hex"
 	"errors"
@@ -10,9 +9,9 @@ import (
 	"path"
 	"slices"
 	"strings"
+	"sync"
 
 	"github.com/go-json-experiment/json"
-	"github.com/go-json-experiment/json/jsontext"
 )
 
 // MaxFile and MaxSet bound a rule set, in bytes.
@@ -52,41 +51,68 @@ func Load(fsys fs.FS) (*Book, error) {
 // Lint reads a rule set and lists every problem. The book is usable only when there is none.
 func Lint(fsys fs.FS) (*Book, []Problem) {
 	l := &loader{book: &Book{markets: map[string]*Rules{}}}
-	files, err := ruleFiles(fsys)
+	files, err := readFiles(fsys)
 	if err != nil {
 		return nil, []Problem{{Says: err.Error()}}
 	}
-	l.digest(fsys, files)
-	for _, f := range files {
-		l.file(fsys, f)
-	}
+	l.book.Digest = digest(files)
+	l.decodeAll(files)
 	if len(l.problems) == 0 {
 		l.check()
 	}
 	return l.book, l.problems
 }
 
-func ruleFiles(fsys fs.FS) ([]string, error) {
-	var files []string
-	total := int64(0)
+// A ruleFile is one file of a set.
+type ruleFile struct {
+	name string
+	data []byte
+}
+
+// readFiles reads the files that belong to a set, in the order of their names.
+func readFiles(fsys fs.FS) ([]ruleFile, error) {
+	var files []ruleFile
+	total := 0
 	err := fs.WalkDir(fsys, ".", func(p string, d fs.DirEntry, err error) error {
 		if err != nil || d.IsDir() || path.Ext(p) != ".json" || strings.HasPrefix(p, "words/") {
 			return err
 		}
 		info, err := d.Info()
+		switch {
+		case err != nil:
+			return err
+		case info.Size() > MaxFile:
+			return tooLarge(p)
+		}
+		b, err := fs.ReadFile(fsys, p)
 		if err != nil {
 			return err
 		}
-		if total += info.Size(); info.Size() > MaxFile || total > MaxSet {
-			return fmt.Errorf("%s: the rule set is larger than %d bytes a file or %d in all", p, MaxFile, MaxSet)
+		if total += len(b); len(b) > MaxFile || total > MaxSet {
+			return tooLarge(p)
 		}
-		files = append(files, p)
+		files = append(files, ruleFile{p, b})
 		return nil
 	})
-	slices.Sort(files)
+	slices.SortFunc(files, func(a, b ruleFile) int { return strings.Compare(a.name, b.name) })
 	return files, err
 }
 
+func tooLarge(name string) error {
+	return fmt.Errorf("%s: the rule set is larger than %d bytes a file or %d in all", name, MaxFile, MaxSet)
+}
+
+// digest is that of all files with their names.
+func digest(files []ruleFile) string {
+	h := sha256.New()
+	for _, f := range files {
+		fmt.Fprintf(h, "%s\x00%d\x00", f.name, len(f.data))
+		h.Write(f.data)
+	}
+	return "sha256:" + hex.EncodeToString(h.Sum(nil))
+}
+
+// A loader gathers a book, and what is wrong with it.
 type loader struct {
 	book     *Book
 	problems []Problem
@@ -96,180 +122,77 @@ func (l *loader) problem(file, rule, field, format string, args ...any) {
 	l.problems = append(l.problems, Problem{file, rule, field, fmt.Sprintf(format, args...)})
 }
 
-func (l *loader) digest(fsys fs.FS, files []string) {
-	h := sha256.New()
-	for _, f := range files {
-		b, err := fs.ReadFile(fsys, f)
-		if err != nil {
-			l.problem(f, "", "", "cannot be read: %v", err)
-			continue
+// decodeAll decodes the files side by side. Each writes to a place of its own; problems come in the order of the files.
+func (l *loader) decodeAll(files []ruleFile) {
+	own := make([]loader, len(files))
+	var wait sync.WaitGroup
+	for i, f := range files {
+		if read := l.reader(f); read != nil {
+			wait.Go(func() { read(&own[i]) })
 		}
-		fmt.Fprintf(h, "%s\x00%d\x00", f, len(b))
-		h.Write(b)
 	}
-	l.book.Digest = "sha256:" + hex.EncodeToString(h.Sum(nil))
+	wait.Wait()
+	for i := range own {
+		l.problems = append(l.problems, own[i].problems...)
+	}
 }
 
-// file reads one file by its place: set.json, <market>/jurisdiction.json or <market>/<kind>.json.
-func (l *loader) file(fsys fs.FS, name string) {
-	b, err := fs.ReadFile(fsys, name)
-	if err != nil {
-		return // digest has said so
-	}
-	if name == "set.json" {
-		var set struct {
-			Version string `json:"version"`
-		}
-		l.decode(name, "", b, &set)
-		l.book.Version = set.Version
-		return
-	}
-	dir, kind := path.Dir(name), strings.TrimSuffix(path.Base(name), ".json")
-	if strings.Contains(dir, "/") || dir == "." {
-		l.problem(name, "", "", "is not at <jurisdiction>/<kind>.json")
-		return
-	}
-	if dir == "practice" {
-		l.practice(name, kind, b)
-		return
+// reader finds what reads a file by its place: set.json, practice/<kind>.json, <market>/jurisdiction.json or
+// <market>/<kind>.json. It is nil, and the problem told, for a file that has no place.
+func (l *loader) reader(f ruleFile) func(*loader) {
+	dir, kind := path.Dir(f.name), strings.TrimSuffix(path.Base(f.name), ".json")
+	switch {
+	case f.name == "set.json":
+		return l.book.readSet(f)
+	case strings.Contains(dir, "/") || dir == ".":
+		l.problem(f.name, "", "", "is not at <jurisdiction>/<kind>.json")
+		return nil
+	case dir == practice:
+		return l.kind(f, kind, dir, l.book.tables())
 	}
 	m := l.book.markets[dir]
 	if m == nil {
 		m = &Rules{}
 		l.book.markets[dir] = m
 	}
-	l.kind(m, name, dir, kind, b)
-}
-
-func (l *loader) practice(name, kind string, b []byte) {
-	switch kind {
-	case "presumptions":
-		l.book.Presumptions = rules[Presumption](l, name, "practice", "presumption", b)
-	case "origins":
-		l.book.Origins = rules[Origin](l, name, "practice", "origin", b)
-	default:
-		l.problem(name, "", "", "is no kind of practice; known are presumptions and origins")
+	if kind == "jurisdiction" {
+		return m.readMarket(f, dir)
 	}
+	return l.kind(f, kind, dir, m.tables())
 }
 
-func (l *loader) kind(m *Rules, name, dir, kind string, b []byte) {
-	switch kind {
-	case "jurisdiction":
-		l.decode(name, "", b, &m.Market)
-		if m.Market.Jurisdiction != dir {
-			l.problem(name, "", "jurisdiction", "is %q in the folder %q", m.Market.Jurisdiction, dir)
+func (l *loader) kind(f ruleFile, kind, dir string, tables []table) func(*loader) {
+	i := slices.IndexFunc(tables, func(t table) bool { return t.kind() == kind })
+	if i < 0 {
+		l.problem(f.name, "", "", "is of no known kind")
+		return nil
+	}
+	return func(own *loader) { tables[i].decode(own, f, dir) }
+}
+
+func (b *Book) readSet(f ruleFile) func(*loader) {
+	return func(own *loader) {
+		var set struct {
+			Version string `json:"version"`
 		}
-	case "definitions":
-		m.Definitions = rules[Definition](l, name, dir, "quantity", b)
-	case "energy":
-		m.Energy = rules[Energy](l, name, dir, "energy", b)
-	case "reference_values":
-		m.References = rules[Reference](l, name, dir, "reference", b)
-	case "rounding":
-		m.Roundings = rules[Rounding](l, name, dir, "rounding", b)
-	case "declaration":
-		m.Declarations = rules[Declaration](l, name, dir, "declaration", b)
-	case "reference_amounts":
-		m.ReferenceAmounts = rules[ReferenceAmount](l, name, dir, "reference-amount", b)
-	case "claims":
-		m.Claims = rules[Claim](l, name, dir, "claim", b)
-	case "disclosure":
-		m.Disclosures = rules[Disclosure](l, name, dir, "disclosure", b)
-	case "limits":
-		m.Limits = rules[Limit](l, name, dir, "limit", b)
-	case "serving":
-		m.Serving = rules[Limit](l, name, dir, "serving", b)
-	case "health_claims":
-		m.HealthClaims = rules[Claim](l, name, dir, "health-claim", b)
-	case "conditions":
-		m.Conditions = rules[Named](l, name, dir, "condition", b)
-	case "naming":
-		m.Naming = rules[Naming](l, name, dir, "naming", b)
-	default:
-		l.problem(name, "", "", "is of no known kind")
+		own.decode(f.name, f.data, &set)
+		b.Version = set.Version
 	}
 }
 
-func (l *loader) decode(file, rule string, b []byte, to any) bool {
+func (m *Rules) readMarket(f ruleFile, dir string) func(*loader) {
+	return func(own *loader) {
+		own.decode(f.name, f.data, &m.Market)
+		if m.Market.Jurisdiction != dir {
+			own.problem(f.name, "", "jurisdiction", "is %q in the folder %q", m.Market.Jurisdiction, dir)
+		}
+	}
+}
+
+func (l *loader) decode(file string, b []byte, to any) bool {
 	if err := json.Unmarshal(b, to, json.RejectUnknownMembers(true)); err != nil {
-		l.problem(file, rule, "", "%v", err)
+		l.problem(file, "", "", "%v", err)
 		return false
 	}
 	return true
-}
-
-// rules decodes a file of one kind, expanding families, and checks what is common to all kinds.
-func rules[T any](l *loader, file, jurisdiction, kind string, b []byte) []Rule[T] {
-	var doc struct {
-		Jurisdiction string           `json:"jurisdiction"`
-		Rules        []jsontext.Value `json:"rules"`
-	}
-	if !l.decode(file, "", b, &doc) {
-		return nil
-	}
-	if doc.Jurisdiction != jurisdiction {
-		l.problem(file, "", "jurisdiction", "is %q in the folder %q", doc.Jurisdiction, jurisdiction)
-	}
-	var out []Rule[T]
-	seen := map[string]bool{}
-	for i, raw := range doc.Rules {
-		for _, one := range l.expand(file, i, raw) {
-			var r Rule[T]
-			if err := json.Unmarshal(one, &r, json.RejectUnknownMembers(true)); err != nil {
-				l.problem(file, ruleID(one), "", "%v", err)
-				continue
-			}
-			if seen[r.ID] {
-				l.problem(file, r.ID, "id", "stands twice")
-			}
-			seen[r.ID] = true
-			l.common(file, r.ID, jurisdiction+"/"+kind+"/", heads(r))
-			out = append(out, r)
-		}
-	}
-	return out
-}
-
-func heads[T any](r Rule[T]) []*Head {
-	out := make([]*Head, len(r.Versions))
-	for i := range r.Versions {
-		out[i] = &r.Versions[i].Head
-	}
-	return out
-}
-
-func ruleID(raw []byte) string {
-	var r struct {
-		ID string `json:"id"`
-	}
-	if json.Unmarshal(raw, &r) != nil {
-		return ""
-	}
-	return r.ID
-}
-
-// expand writes a family out: "{each}" and the other names of a family member are replaced in the rule's text.
-func (l *loader) expand(file string, i int, raw jsontext.Value) []jsontext.Value {
-	if !bytes.Contains(raw, []byte(`"for each"`)) {
-		return []jsontext.Value{raw}
-	}
-	var family struct {
-		ForEach []map[string]string `json:"for each"`
-	}
-	if err := json.Unmarshal(raw, &family); err != nil {
-		l.problem(file, fmt.Sprintf("rule %d", i), "for each", "%v", err)
-		return nil
-	}
-	if family.ForEach == nil {
-		return []jsontext.Value{raw}
-	}
-	var out []jsontext.Value
-	for _, member := range family.ForEach {
-		var pairs []string
-		for k, v := range member {
-			pairs = append(pairs, "{"+k+"}", v)
-		}
-		out = append(out, jsontext.Value(strings.NewReplacer(pairs...).Replace(string(raw))))
-	}
-	return out
 }

@@ -1,0 +1,244 @@
+package rulebook
+
+import (
+	"errors"
+	"fmt"
+	"slices"
+	"strings"
+
+	"github.com/go-json-experiment/json"
+	"github.com/go-json-experiment/json/jsontext"
+	"github.com/shopspring/decimal"
+
+	"gramlaw/internal/quantity"
+)
+
+// A form is one shape of condition: the member that tells it from others, and those that may stand beside that.
+type form struct {
+	key      string
+	op       Op
+	beside   []string
+	relation bool // a relation with its threshold may stand there too
+}
+
+// forms are looked for in this order. A list under "of" makes a count of a comparison.
+var forms = []form{
+	{"of", OpCompare, []string{"per", "as", "subject", "from", "against"}, true},
+	{"all", OpAll, nil, false},
+	{"any", OpAny, nil, false},
+	{"not", OpNot, nil, false},
+	{"when", OpWhen, []string{"then", "else"}, false},
+	{"declared", OpDeclared, []string{"is"}, false},
+	{"meets", OpMeets, []string{"subject"}, false},
+	{"fact", OpFact, []string{"is"}, true},
+	{"reference amount", OpAmount, nil, false},
+	{"claimed about", OpAbout, nil, false},
+	{"claimed on the label about", OpAbout, nil, false},
+	{"holds", OpHolds, nil, false},
+	{"no ingredient", OpIngredient, nil, false},
+	{"size of", OpSize, []string{"as"}, true},
+	{"reference food is", OpKind, nil, false},
+}
+
+var countForm = form{"of", OpCount, []string{string(AtLeast)}, false}
+
+// A conditionReader holds what was read of one condition.
+type conditionReader struct {
+	*Condition
+	dec      *jsontext.Decoder
+	members  []string
+	list     bool // "of" was a list
+	number   bool // "at least" was a number
+	parts    [3]*Condition
+	compared string // what "against" and "not more than" name
+	from     struct {
+		Origin string `json:"trans origin"`
+	}
+	amount struct {
+		AtMost []quantity.Amount `json:"at most"`
+	}
+	ingredient struct {
+		Process     []string         `json:"process"`
+		IodineAbove *decimal.Decimal `json:"iodine value above,omitzero"`
+	}
+}
+
+// UnmarshalJSONFrom reads the forms of rules/README.md.
+func (c *Condition) UnmarshalJSONFrom(dec *jsontext.Decoder) error {
+	*c = Condition{}
+	if dec.PeekKind() != jsontext.KindBeginObject {
+		if err := dec.SkipValue(); err != nil {
+			return err
+		}
+		return errors.New("a condition is an object")
+	}
+	if _, err := dec.ReadToken(); err != nil {
+		return err
+	}
+	r := &conditionReader{Condition: c, dec: dec}
+	for dec.PeekKind() != jsontext.KindEndObject {
+		if err := r.member(); err != nil {
+			return err
+		}
+	}
+	if _, err := dec.ReadToken(); err != nil {
+		return err
+	}
+	return r.finish()
+}
+
+func (r *conditionReader) member() error {
+	token, err := r.dec.ReadToken()
+	if err != nil {
+		return err
+	}
+	name := token.String()
+	r.members = append(r.members, name)
+	to := r.place(name)
+	if to == nil {
+		return fmt.Errorf("condition has the unknown member %q", name)
+	}
+	if err := json.UnmarshalDecode(r.dec, to, json.RejectUnknownMembers(true)); err != nil {
+		return err
+	}
+	if r.compared != "" && r.compared != "reference food" {
+		return fmt.Errorf(`%q compares with the "reference food", not with %q`, name, r.compared)
+	}
+	return nil
+}
+
+// place says where the value of a member goes; nil where no condition has such a member.
+func (r *conditionReader) place(name string) any {
+	switch name {
+	case "says":
+		return &r.Says
+	case "of":
+		if r.list = r.dec.PeekKind() == jsontext.KindBeginArray; r.list {
+			return &r.Parts
+		}
+		return &r.Of
+	case "all", "any":
+		return &r.Parts
+	case "not", "when":
+		return &r.parts[0]
+	case "then":
+		return &r.parts[1]
+	case "else":
+		return &r.parts[2]
+	case "declared", "meets", "fact", "holds", "size of":
+		return &r.Name
+	case "is":
+		return &r.Is
+	case "claimed about", "claimed on the label about":
+		r.Label = name == "claimed on the label about"
+		return &r.About
+	case "reference amount":
+		return &r.amount
+	case "no ingredient":
+		return &r.ingredient
+	case "reference food is":
+		return &r.Kinds
+	}
+	return r.placeCompared(name)
+}
+
+// placeCompared is place for the members of comparisons.
+func (r *conditionReader) placeCompared(name string) any {
+	switch name {
+	case "per":
+		if r.dec.PeekKind() == jsontext.KindString {
+			r.Per = []string{""}
+			return &r.Per[0]
+		}
+		return &r.Per
+	case "as":
+		return &r.As
+	case "subject":
+		return &r.Subject
+	case "from":
+		return &r.from
+	case "against", string(NotMore):
+		return &r.compared
+	case string(AtLeast):
+		if r.number = r.dec.PeekKind() == jsontext.KindNumber; r.number {
+			return &r.N
+		}
+	}
+	if slices.Contains(relations, Relation(name)) {
+		return &r.Threshold
+	}
+	return nil
+}
+
+// finish finds the form of what was read and refuses what does not belong to it.
+func (r *conditionReader) finish() error {
+	f, ok := r.form()
+	if !ok {
+		return fmt.Errorf("condition %s is of no known kind", strings.Join(r.members, ", "))
+	}
+	r.Op = f.op
+	for _, name := range r.members {
+		related := f.relation && (slices.Contains(relations, Relation(name)) || name == string(NotMore))
+		switch {
+		case related && r.Relation != "":
+			return fmt.Errorf("condition has both %q and %q", r.Relation, name)
+		case related:
+			r.Relation = Relation(name)
+		case name != f.key && name != "says" && !slices.Contains(f.beside, name):
+			return fmt.Errorf("condition has the unknown member %q", name)
+		}
+	}
+	r.Process, r.IodineAbove = r.ingredient.Process, r.ingredient.IodineAbove
+	r.Origin = r.from.Origin
+	if r.Op == OpAmount {
+		r.Amounts = r.amount.AtMost
+	}
+	return errors.Join(r.compare(f), r.combine())
+}
+
+func (r *conditionReader) form() (form, bool) {
+	if r.list {
+		return countForm, true
+	}
+	i := slices.IndexFunc(forms, func(f form) bool { return slices.Contains(r.members, f.key) })
+	if i < 0 {
+		return form{}, false
+	}
+	return forms[i], true
+}
+
+// compare readies a comparison. A fact has a value or is compared, not both.
+func (r *conditionReader) compare(f form) error {
+	valued := r.Op == OpFact && r.Is != ""
+	switch {
+	case r.number != (r.Op == OpCount):
+		return errors.New(`"at least" is a number before a list of conditions, and an amount elsewhere`)
+	case valued && r.Relation != "":
+		return fmt.Errorf(`condition has both "is" and %q`, r.Relation)
+	case f.relation && !valued && r.Relation == "":
+		return errors.New(`comparison has no relation such as "at most"`)
+	case f.relation && !valued:
+		r.Prepare()
+	}
+	return nil
+}
+
+// combine gathers the parts of a combination.
+func (r *conditionReader) combine() error {
+	switch r.Op {
+	case OpNot:
+		r.Parts = []*Condition{r.parts[0]}
+	case OpWhen:
+		if r.parts[1] == nil {
+			return errors.New(`condition has "when" without "then"`)
+		}
+		if r.parts[2] == nil {
+			r.parts[2] = &Condition{Op: OpAll}
+		}
+		r.Parts = slices.Clone(r.parts[:])
+	}
+	if slices.Contains(r.Parts, nil) {
+		return errors.New("a condition is an object")
+	}
+	return nil
+}
