@@ -114,6 +114,23 @@ func (v view) Fact(name, is string) quantity.Truth {
 	return quantity.Open
 }
 
+// Has asks what a list holds: as stated, else as the market's rules assume of the whole list, which is noted.
+func (v view) Has(name, item string) quantity.Truth {
+	if f, ok := v.c.recipe.Facts[name]; ok {
+		return quantity.TruthOf(slices.Contains(f.List, item))
+	}
+	if a, ok := v.assume(name); ok {
+		return quantity.TruthOf(a == item)
+	}
+	return quantity.Open
+}
+
+// Stated tells whether the recipe states a fact.
+func (v view) Stated(name string) bool {
+	_, ok := v.c.recipe.Facts[name]
+	return ok
+}
+
 // Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted.
 func (v view) Measured(name string) (quantity.Ratio, bool) {
 	if f, ok := v.c.recipe.Facts[name]; ok && f.Number != nil {

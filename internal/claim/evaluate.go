@@ -32,6 +32,8 @@ type Context interface {
 	ReferenceValue(quantity string) (v quantity.Ratio, ok bool)
 	Declared(quantity, is string) quantity.Truth // "" asks whether the line stands
 	Fact(name, is string) quantity.Truth
+	Has(name, item string) quantity.Truth        // a fact that is a list
+	Stated(name string) bool                     // whether the recipe states the fact
 	Measured(name string) (quantity.Ratio, bool) // a fact that is an amount, in base units
 	ReferenceAmount(atMost []quantity.Amount) quantity.Truth
 	ClaimedAbout(subjects []string, onLabel bool) quantity.Truth
@@ -156,6 +158,8 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 		return lacking(x.ReferenceKind(c.Kinds), "the reference food")
 	case rulebook.OpAbout:
 		return Result{Truth: x.ClaimedAbout(c.About, c.Label)}
+	case rulebook.OpUndecided:
+		return Result{Missing: c.Why.In("en")}
 	default:
 		t, missing := x.NoIngredient(c)
 		return Result{Truth: t, Missing: missing}
@@ -163,8 +167,13 @@ func (x evaluator) ask(c *rulebook.Condition) Result {
 }
 
 func (x evaluator) fact(c *rulebook.Condition) quantity.Truth {
-	if c.Is != "" {
+	switch {
+	case c.Is != "":
 		return x.Fact(c.Name, c.Is)
+	case c.Has != "":
+		return x.Has(c.Name, c.Has)
+	case c.Stated:
+		return quantity.TruthOf(x.Stated(c.Name))
 	}
 	v, ok := x.Measured(c.Name)
 	if !ok {

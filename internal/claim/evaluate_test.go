@@ -39,6 +39,13 @@ func (w world) Fact(name, is string) quantity.Truth {
 	}
 	return quantity.Open
 }
+func (w world) Has(name, item string) quantity.Truth {
+	if name == "added vitamins and minerals" {
+		return quantity.TruthOf(item == "iron")
+	}
+	return quantity.Open
+}
+func (w world) Stated(name string) bool { return name == "alcohol by volume" }
 func (w world) Measured(name string) (quantity.Ratio, bool) {
 	return quantity.Scaled(12, -1), name == "alcohol by volume"
 }
@@ -114,6 +121,12 @@ func TestConditions(t *testing.T) {
 		{"a measured fact at its limit", `{"fact":"alcohol by volume","above":"1.2 %"}`, world{product: bread}, quantity.No},
 		{"a measured fact below its limit", `{"fact":"alcohol by volume","below":"1.3 %"}`, world{product: bread}, quantity.Yes},
 		{"a measured fact nobody stated", `{"fact":"polyols","above":"10 %"}`, world{product: bread}, quantity.Open},
+		{"a list that holds it", `{"fact":"added vitamins and minerals","has":"iron"}`, world{product: bread}, quantity.Yes},
+		{"a list without it", `{"fact":"added vitamins and minerals","has":"zinc"}`, world{product: bread}, quantity.No},
+		{"a list nobody stated", `{"fact":"other list","has":"zinc"}`, world{product: bread}, quantity.Open},
+		{"a fact that is stated", `{"fact":"alcohol by volume","stated":true}`, world{product: bread}, quantity.Yes},
+		{"a fact that is not stated", `{"fact":"polyols","stated":true}`, world{product: bread}, quantity.No},
+		{"what data cannot decide", `{"undecided":{"en":"the order of the words"}}`, world{product: bread}, quantity.Open},
 		{"a package of twice the reference amount", `{"size of":"package","as":"share of reference amount","at least":"200 %"}`, world{product: bread}, quantity.Yes},
 		{"a package below twice the reference amount", `{"size of":"package","as":"share of reference amount","below":"200 %"}`, world{product: bread}, quantity.No},
 		{"a package by mass", `{"size of":"package","at most":"60 g"}`, world{product: bread}, quantity.Yes},

@@ -80,10 +80,7 @@ func atomSays(c *rulebook.Condition, x Context) string {
 		}
 		return "meets " + quote(rulebook.Name(c.Name))
 	case rulebook.OpFact:
-		if c.Is == "" {
-			return c.Name + " " + string(c.Relation) + " " + c.Threshold.String()
-		}
-		return c.Name + ": " + c.Is
+		return factSays(c)
 	case rulebook.OpAmount:
 		return amountSays(c)
 	case rulebook.OpSize:
@@ -94,11 +91,25 @@ func atomSays(c *rulebook.Condition, x Context) string {
 		return s
 	case rulebook.OpKind:
 		return "the reference food is " + list(c.Kinds)
+	case rulebook.OpUndecided:
+		return c.Why.In("en")
 	case rulebook.OpAbout:
 		return "claimed about " + list(c.About)
 	default:
 		return ingredientSays(c)
 	}
+}
+
+func factSays(c *rulebook.Condition) string {
+	switch {
+	case c.Is != "":
+		return c.Name + ": " + c.Is
+	case c.Has != "":
+		return c.Name + ": " + c.Has + " among them"
+	case c.Stated:
+		return c.Name + " is stated"
+	}
+	return c.Name + " " + string(c.Relation) + " " + c.Threshold.String()
 }
 
 func declaredSays(c *rulebook.Condition, x Context) string {

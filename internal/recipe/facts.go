@@ -8,15 +8,18 @@ const (
 	YesNo FactKind = iota
 	OneOf
 	Measure
+	Listed
 )
 
 // A FactRule describes one fact of the closed register.
 type FactRule struct {
 	Name   string
 	Kind   FactKind
-	Values []string // of OneOf
-	Unit   string   // of Measure
+	Values []string // of OneOf and Listed
+	Unit   string   // of Measure; empty is a plain number, which may also be written in per cent
 	Says   string
+
+	Implies string // a yes-or-no fact that holds when a Listed one is stated
 }
 
 // Facts is the closed register. An unstated fact is unknown, never false; what a market takes instead stands in its rules.
@@ -37,7 +40,7 @@ var Facts = []FactRule{
 	{Name: "sold to", Kind: OneOf, Values: []string{"final consumer", "other business"}, Says: "who buys the food"},
 	{Name: "table-top sweetener", Kind: YesNo, Says: "the food is a table-top sweetener"},
 	{Name: "single-portion package", Kind: YesNo, Says: "the package holds a single portion"},
-	{Name: "kind of drink", Kind: OneOf, Values: []string{"semi-skimmed milk", "natural mineral water", "other water", "other drink"}, Says: "which kind of drink, where limits differ"},
+	{Name: "kind of drink", Kind: OneOf, Values: []string{"semi-skimmed milk", "natural mineral water", "other water", "wine", "other drink"}, Says: "which kind of drink, where limits differ"},
 	{Name: "beverage", Kind: YesNo, Says: "the food is a drink"},
 	{Name: "seafood or game meat product", Kind: YesNo, Says: "the food is a seafood or game meat product as packaged"},
 	{Name: "discrete product", Kind: YesNo, Says: "the product is whole pieces, not a mixture"},
@@ -62,6 +65,47 @@ var Facts = []FactRule{
 	{Name: "kind of oil", Kind: OneOf, Values: []string{"camelina, mustard or borage oil", "other vegetable oil", "animal fat or oil"}, Says: "which kind of oil, where limits differ"},
 	{Name: "food supplement", Kind: YesNo, Says: "the product is a food supplement"},
 	{Name: "exempt from the nutrition declaration", Kind: YesNo, Says: "the food belongs to those that the law excuses from a nutrition declaration"},
-	{Name: "kind of food", Kind: OneOf, Values: []string{"fat or oil", "fruit or vegetable", "dairy product", "mayonnaise or dressing", "snack bar", "other food"}, Says: "which kind of food, where a rule names kinds"},
+	{Name: "declaration exemption", Kind: OneOf, Values: exemptions, Says: "why the food might need no nutrition declaration; each law has its own list of these"},
+	{Name: "prepacked", Kind: YesNo, Says: "the food is sold prepacked; no means loose, packed on request or packed for immediate sale"},
+	{Name: "very low energy diet", Kind: YesNo, Says: "the food is for a very low energy diet"},
+	{Name: "phosphorus without phytate at most calcium", Kind: YesNo, Says: "the food has no more phosphorus, without that of phytate, than calcium"},
+	{Name: "protein digestibility-corrected amino acid score", Kind: Measure, Says: "the score (PDCAAS) of the food's protein"},
+	{Name: "protein efficiency ratio", Kind: Measure, Says: "the efficiency ratio (PER) of the food's protein, determined by the law's official method"},
+	{Name: "protein efficiency ratio against casein", Kind: Measure, Says: "the efficiency ratio of the food's protein over that of casein"},
+	{Name: "reasonable daily intake", Kind: Measure, Unit: "g", Says: "what the law takes for a day's intake of the food, where its category does not tell"},
+	{Name: "added vitamins and minerals", Kind: Listed, Values: micronutrients, Implies: "vitamins or minerals added", Says: "which vitamins and minerals are added"},
+	{Name: "added plant sterols", Kind: OneOf, Values: []string{"sterols", "stanols", "both", "no"}, Says: "whether plant sterols, plant stanols or their esters are added"},
+	{Name: "infant formula", Kind: OneOf, Values: []string{"infant formula", "follow-on formula", "no"}, Says: "the food is a formula for infants, and of which kind"},
+	{Name: "minced meat", Kind: OneOf, Values: []string{"lean minced meat", "minced pure beef", "minced meat containing pigmeat", "minced meat of other species", "no"}, Says: "the food is minced meat, and of which name"},
+	{Name: "collagen to protein ratio", Kind: Measure, Unit: "%", Says: "collagen in meat protein"},
+	{Name: "kind of olive oil", Kind: OneOf, Values: []string{"extra virgin olive oil", "virgin olive oil", "olive oil composed of refined and virgin olive oils", "olive-pomace oil", "no"}, Says: "the food is an olive oil, and of which name"},
+	{Name: "free acidity", Kind: Measure, Unit: "%", Says: "free fatty acids of the oil, as oleic acid in g per 100 g"},
+	{Name: "animal fat in the fat", Kind: Measure, Unit: "%", Says: "fat of animal origin in all fat of the food"},
+	{Name: "made directly from milk or cream", Kind: YesNo, Says: "the butter is made directly from milk or cream"},
+	{Name: "oil group for 3-MCPD", Kind: OneOf, Values: []string{"coconut, maize, rapeseed, sunflower, soybean, palm kernel or olive oil", "other vegetable, fish or marine oil", "mixture", "virgin olive oil"}, Says: "the group of oils that decides the limit of 3-MCPD"},
+	{Name: "3-MCPD and its esters", Kind: Measure, Unit: "µg", Says: "3-monochloropropanediol and its fatty-acid esters, as 3-MCPD, in 1 kg"},
+	{Name: "glycidyl esters", Kind: Measure, Unit: "µg", Says: "glycidyl fatty-acid esters, as glycidol, in 1 kg"},
+	{Name: "benzo(a)pyrene", Kind: Measure, Unit: "µg", Says: "benzo(a)pyrene in 1 kg"},
+	{Name: "four polycyclic aromatic hydrocarbons", Kind: Measure, Unit: "µg", Says: "benzo(a)pyrene, benz(a)anthracene, benzo(b)fluoranthene and chrysene together, in 1 kg"},
+	{Name: "made for baby food", Kind: YesNo, Says: "the oil or fat is meant for the making of food for infants and young children"},
+	{Name: "kind of food", Kind: OneOf, Values: []string{"fat or oil", "fruit or vegetable", "dairy product", "mayonnaise or dressing", "snack bar", "mustard", "other food"}, Says: "which kind of food, where a rule names kinds"},
 	{Name: "trans origin", Kind: OneOf, Values: []string{"ruminant", "industrial"}, Says: "where all trans fatty acids of the product come from"},
+}
+
+// exemptions are the kinds of food and of sale that a law may excuse from a nutrition declaration.
+var exemptions = []string{
+	"none",
+	"unprocessed product of one ingredient", "product of one ingredient, matured only", "water", "herb or spice", "salt", "table-top sweetener", "coffee or chicory",
+	"tea or infusion", "fermented vinegar", "flavouring", "additive", "processing aid", "enzyme", "gelatine", "jam-setting compound", "yeast", "chewing gum",
+	"small packaging", "small quantities supplied directly", "fresh fruit or vegetable", "raw meat, poultry or fish of one ingredient",
+	"alcoholic drink", "flavour extract or food colour", "dehydrated vegetables as a condiment", "small retailer", "low-volume product", "restaurant or ready to eat",
+	"portion served with a meal", "prepared where it is sold", "sold by the maker at a market", "portion for immediate consumption", "small package with a sticker",
+	"milk or cream in a refillable container",
+}
+
+// micronutrients are the quantities of vitamins and minerals as every market names them.
+var micronutrients = []string{
+	"vitamin-a", "vitamin-d", "vitamin-e", "vitamin-k", "vitamin-c", "thiamin", "riboflavin", "niacin", "vitamin-b6", "folate", "vitamin-b12", "biotin",
+	"pantothenic-acid", "choline", "calcium", "iron", "potassium", "phosphorus", "iodine", "magnesium", "zinc", "selenium", "copper", "manganese", "chromium",
+	"molybdenum", "chloride", "fluoride", "sodium",
 }

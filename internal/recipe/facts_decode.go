@@ -13,7 +13,12 @@ func (d *decoder) facts(at int32) map[string]Fact {
 		if n.faulty {
 			return
 		}
-		if n.kind != '"' {
+		if n.kind == '[' {
+			d.elements(m, func(e int32) { d.text(e) })
+			if n.count == 0 {
+				return
+			}
+		} else if n.kind != '"' {
 			d.flag(m)
 		} else if d.text(m) == "" {
 			return
@@ -24,6 +29,9 @@ func (d *decoder) facts(at int32) map[string]Fact {
 			return
 		}
 		out[name] = d.fact(m, rule)
+		if _, said := out[rule.Implies]; rule.Implies != "" && !said {
+			out[rule.Implies] = Fact{Flag: quantity.Yes}
+		}
 	})
 	return out
 }
@@ -50,7 +58,7 @@ func (d *decoder) fact(at int32, rule FactRule) (f Fact) {
 	case YesNo:
 		if n.kind == 't' || n.kind == 'f' {
 			f.Flag = quantity.TruthOf(n.kind == 't')
-		} else if n.kind == '"' {
+		} else if n.kind == '"' || n.kind == '[' {
 			d.fault(at, WrongFactValue, quote(rule.Name)+" is true or false")
 		}
 	case OneOf:
@@ -58,11 +66,43 @@ func (d *decoder) fact(at int32, rule FactRule) (f Fact) {
 			d.fault(at, WrongFactValue, quote(rule.Name)+" is one of "+list(quoted(rule.Values), "and")+suggest(n.text, rule.Values))
 		}
 	case Measure:
-		unit, _ := quantity.ParseUnit(rule.Unit)
-		a, err := quantity.ParseAmount(n.text)
-		if f.Number = &a; err != nil || a.Unit.Dimension() != unit.Dimension() {
-			d.fault(at, WrongFactValue, quote(rule.Name)+" is a number with its unit, such as \"5 "+rule.Unit+"\"")
-		}
+		return d.measure(at, rule)
+	case Listed:
+		f.List = d.listed(at, rule)
 	}
 	return f
+}
+
+// measure reads an amount. A plain number is kept in per cent.
+func (d *decoder) measure(at int32, rule FactRule) Fact {
+	text, such := d.nodes[at].text, "with its unit, such as \"5 "+rule.Unit+"\""
+	unit, ok := quantity.ParseUnit(rule.Unit)
+	if !ok {
+		unit, such = quantity.PerCent, "such as \"0.8\""
+		if v, err := quantity.ParseNumber(text); err == nil {
+			return Fact{Number: &quantity.Amount{Value: v.Shift(2), Unit: unit}}
+		}
+	}
+	a, err := quantity.ParseAmount(text)
+	if err != nil || a.Unit.Dimension() != unit.Dimension() {
+		d.fault(at, WrongFactValue, quote(rule.Name)+" is a number "+such)
+	}
+	return Fact{Number: &a}
+}
+
+// listed reads a list of the rule's values.
+func (d *decoder) listed(at int32, rule FactRule) []string {
+	if d.nodes[at].kind != '[' {
+		d.fault(at, WrongFactValue, quote(rule.Name)+" is a list")
+		return nil
+	}
+	var out []string
+	for m := d.nodes[at].first; m != 0; m = d.nodes[m].next {
+		text := d.nodes[m].text
+		if d.nodes[m].kind == '"' && text != "" && !slices.Contains(rule.Values, text) {
+			d.fault(m, WrongFactValue, quote(rule.Name)+" lists "+list(quoted(rule.Values), "and")+suggest(text, rule.Values))
+		}
+		out = append(out, text)
+	}
+	return out
 }

@@ -198,6 +198,7 @@ type Fact struct {
 	Text   string           // for a fact with a list of values
 	Flag   quantity.Truth   // for a yes-or-no fact
 	Number *quantity.Amount // for an amount
+	List   []string         // for a fact that lists values
 }
 
 // A Claim is asked for by the words on the pack or by the shared name of the claim.

@@ -26,6 +26,7 @@ const (
 	OpNot        Op = "not"
 	OpCount      Op = "count"
 	OpWhen       Op = "when"
+	OpUndecided  Op = "undecided"
 )
 
 // A Condition is a legal condition as data: a comparison of a linear form, or a combination of conditions. It is
@@ -50,8 +51,13 @@ type Condition struct {
 	limit quantity.Ratio
 
 	// OpDeclared, OpMeets, OpFact
-	Name string // line, rule id or fact
-	Is   string
+	Name   string // line, rule id or fact
+	Is     string
+	Has    string // OpFact: what a list must hold
+	Stated bool   // OpFact: whether the recipe states it at all
+
+	// OpUndecided: why data cannot decide it
+	Why Words
 
 	// OpAmount: at most one of these, each in its own unit. OpAbout: subjects. OpKind: kinds of reference food.
 	Amounts []quantity.Amount

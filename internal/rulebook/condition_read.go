@@ -30,7 +30,7 @@ var forms = []form{
 	{"when", OpWhen, []string{"then", "else"}, false},
 	{"declared", OpDeclared, []string{"is"}, false},
 	{"meets", OpMeets, []string{"subject"}, false},
-	{"fact", OpFact, []string{"is"}, true},
+	{"fact", OpFact, []string{"is", "has", "stated"}, true},
 	{"reference amount", OpAmount, nil, false},
 	{"claimed about", OpAbout, nil, false},
 	{"claimed on the label about", OpAbout, nil, false},
@@ -38,6 +38,7 @@ var forms = []form{
 	{"no ingredient", OpIngredient, nil, false},
 	{"size of", OpSize, []string{"as"}, true},
 	{"reference food is", OpKind, nil, false},
+	{"undecided", OpUndecided, nil, false},
 }
 
 var countForm = form{"of", OpCount, []string{string(AtLeast)}, false}
@@ -132,6 +133,12 @@ func (r *conditionReader) place(name string) any {
 	case "claimed about", "claimed on the label about":
 		r.Label = name == "claimed on the label about"
 		return &r.About
+	case "has":
+		return &r.Has
+	case "stated":
+		return &r.Stated
+	case "undecided":
+		return &r.Why
 	case "reference amount":
 		return &r.amount
 	case "no ingredient":
@@ -207,20 +214,35 @@ func (r *conditionReader) form() (form, bool) {
 	return forms[i], true
 }
 
-// compare readies a comparison. A fact has a value or is compared, not both.
+// compare readies a comparison. A fact is asked one thing, or is compared.
 func (r *conditionReader) compare(f form) error {
-	valued := r.Op == OpFact && r.Is != ""
+	asked := r.asked()
+	valued := len(asked) > 0
 	switch {
+	case len(asked) > 1:
+		return fmt.Errorf("condition has both %q and %q", asked[0], asked[1])
+	case valued && asked[0] == "stated" && !r.Stated:
+		return errors.New(`"stated" is true, or stands under "not"`)
 	case r.number != (r.Op == OpCount):
 		return errors.New(`"at least" is a number before a list of conditions, and an amount elsewhere`)
 	case valued && r.Relation != "":
-		return fmt.Errorf(`condition has both "is" and %q`, r.Relation)
+		return fmt.Errorf("condition has both %q and %q", asked[0], r.Relation)
 	case f.relation && !valued && r.Relation == "":
 		return errors.New(`comparison has no relation such as "at most"`)
 	case f.relation && !valued:
 		r.Prepare()
 	}
 	return nil
+}
+
+// asked lists what a fact is asked besides a comparison.
+func (r *conditionReader) asked() (out []string) {
+	for _, name := range r.members {
+		if r.Op == OpFact && (name == "is" || name == "has" || name == "stated") {
+			out = append(out, name)
+		}
+	}
+	return out
 }
 
 // combine gathers the parts of a combination.

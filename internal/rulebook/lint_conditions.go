@@ -78,9 +78,14 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 		case OpSize:
 			c.size(kind, id, field, p)
 		case OpFact:
-			if p.Is == "" && p.Relation.Relative() {
+			if p.Is == "" && p.Has == "" && !p.Stated && p.Relation == "" {
+				bad("the fact %q is compared with nothing", p.Name)
+			}
+			if p.Relation.Relative() {
 				bad("a measured fact is compared with an amount only")
 			}
+		case OpUndecided:
+			c.words(kind, id, field+"/undecided", p.Why)
 		case OpKind:
 			if len(p.Kinds) == 0 {
 				bad("reference food is compared with no kind")
