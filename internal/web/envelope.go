@@ -1,0 +1,265 @@
+package web
+
+import (
+	"bytes"
+	"encoding/hex"
+	"errors"
+	"fmt"
+	"io"
+	"slices"
+	"strings"
+	"unicode/utf8"
+
+	"github.com/go-json-experiment/json/jsontext"
+
+	"gramlaw/internal/check"
+	"gramlaw/internal/recipe"
+	"gramlaw/internal/rulebook"
+)
+
+// Bounds of the members around a recipe.
+const (
+	maxNames    = 1000 // entries of a list
+	maxNameText = 200  // bytes of a text
+)
+
+// An order is one check asked for: a recipe alone, or an envelope with the recipe and how to check it.
+type order struct {
+	recipe  *recipe.Recipe
+	request check.Request
+	rules   string // digest of the rule set wanted; empty takes the one loaded
+	within  string // pointer to the recipe in the document
+}
+
+// readOrder reads a document that has a member "recipe" as an envelope and any other as a recipe. It gives the order, or every fault.
+func readOrder(doc []byte) (*order, recipe.Faults) {
+	e := &envelope{doc: doc}
+	if !e.scan() {
+		r, faults := recipe.Decode(doc)
+		return &order{recipe: r}, faults
+	}
+	return e.read()
+}
+
+// An envelope is the outermost object of a document, its members not yet read.
+type envelope struct {
+	doc     []byte
+	members []member
+	broken  *recipe.Fault // where the document stops being JSON
+	faults  recipe.Faults
+}
+
+type member struct {
+	name   string
+	value  jsontext.Value
+	broken bool // the value is the rest of a document that cannot be read
+}
+
+func envelopeMembers() []string {
+	return []string{"recipe", "on", "in", "detail", "transition", "rules", "without"}
+}
+
+// scan lists the members and tells whether one of them is a recipe.
+func (e *envelope) scan() bool {
+	in := jsontext.NewDecoder(bytes.NewBuffer(e.doc), jsontext.AllowDuplicateNames(true), jsontext.AllowInvalidUTF8(true))
+	if in.PeekKind() != '{' {
+		return false
+	}
+	if err := e.walk(in); err != nil {
+		e.broken = syntaxFault(err)
+	} else if _, err := in.ReadToken(); err != io.EOF {
+		e.broken = &recipe.Fault{Code: recipe.TrailingData, Says: fmt.Sprintf("the document ends at byte %d and something follows; send one JSON object", in.InputOffset())}
+	}
+	return slices.ContainsFunc(e.members, func(m member) bool { return m.name == "recipe" })
+}
+
+func (e *envelope) walk(in *jsontext.Decoder) error {
+	if _, err := in.ReadToken(); err != nil {
+		return err
+	}
+	for in.PeekKind() == '"' {
+		name, err := in.ReadToken()
+		if err != nil {
+			return err
+		}
+		m := member{name: name.String()}
+		in.PeekKind()
+		start := in.InputOffset()
+		raw, err := in.ReadValue()
+		if err != nil {
+			m.value, m.broken = afterColon(e.doc[start:]), true
+			e.members = append(e.members, m)
+			return err
+		}
+		end := in.InputOffset()
+		m.value = e.doc[end-int64(len(raw)) : end]
+		e.members = append(e.members, m)
+	}
+	_, err := in.ReadToken()
+	return err
+}
+
+func afterColon(rest []byte) []byte {
+	return bytes.TrimLeft(rest, ": \t\r\n")
+}
+
+func syntaxFault(err error) *recipe.Fault {
+	var at *jsontext.SyntacticError
+	if errors.As(err, &at) {
+		return &recipe.Fault{Pointer: string(at.JSONPointer), Code: recipe.BadSyntax, Says: fmt.Sprintf("the document is not JSON from byte %d on", at.ByteOffset)}
+	}
+	return &recipe.Fault{Code: recipe.BadSyntax, Says: "the document ends before its value does"}
+}
+
+func (e *envelope) fault(pointer, code, format string, args ...any) {
+	e.faults = append(e.faults, recipe.Fault{Pointer: pointer, Code: code, Says: fmt.Sprintf(format, args...)})
+}
+
+// read turns members into an order.
+func (e *envelope) read() (*order, recipe.Faults) {
+	o := &order{within: "/recipe"}
+	seen := map[string]bool{}
+	for _, m := range e.members {
+		at := "/" + pointerToken(m.name)
+		switch {
+		case seen[m.name]:
+			e.fault(at, recipe.DuplicateName, "the object has the member %s twice; keep one", quote(m.name))
+		case m.broken && m.name != "recipe":
+		default:
+			e.take(o, m, at)
+		}
+		seen[m.name] = true
+		if len(e.faults) > recipe.MaxFaults {
+			e.fault("", recipe.MoreFaults, "the document has more than %d faults; the first ones are listed", recipe.MaxFaults)
+			return o, e.faults
+		}
+	}
+	if e.broken != nil && !e.stopped() {
+		e.faults = append(e.faults, *e.broken)
+	}
+	return o, e.faults
+}
+
+// stopped tells whether the recipe's own faults say already where reading ended.
+func (e *envelope) stopped() bool {
+	last := e.members[len(e.members)-1]
+	return last.broken && last.name == "recipe" && len(e.faults) > 0
+}
+
+func (e *envelope) take(o *order, m member, at string) {
+	switch m.name {
+	case "recipe":
+		e.recipe(o, m)
+	case "on":
+		o.request.On = e.text(m, at)
+	case "in":
+		o.request.In = e.texts(m, at)
+	case "detail":
+		o.request.Detail = e.text(m, at)
+	case "transition":
+		o.request.Transition = rulebook.Transition(e.text(m, at))
+	case "rules":
+		o.rules = e.digest(m, at)
+	case "without":
+		o.request.Without = e.texts(m, at)
+	default:
+		e.fault(at, recipe.UnknownMember, "%s is not known here%s", quote(m.name), listed(envelopeMembers()))
+	}
+}
+
+func (e *envelope) recipe(o *order, m member) {
+	r, faults := recipe.Decode(m.value)
+	o.recipe = r
+	for _, f := range faults {
+		f.Pointer = o.within + f.Pointer
+		e.faults = append(e.faults, f)
+	}
+}
+
+// text reads a text that says something.
+func (e *envelope) text(m member, at string) string {
+	s, ok := e.unquote(m.value, at)
+	if ok && s == "" {
+		e.fault(at, recipe.Empty, "something is wanted here; leave the member out otherwise")
+	}
+	return s
+}
+
+func (e *envelope) unquote(v jsontext.Value, at string) (string, bool) {
+	switch v.Kind() {
+	case '"':
+	case 'n':
+		e.fault(at, recipe.Null, "null is not a value here; leave out what is not known")
+		return "", false
+	default:
+		e.fault(at, recipe.WrongType, "a text in quotation marks is wanted")
+		return "", false
+	}
+	b, err := jsontext.AppendUnquote(nil, v)
+	switch {
+	case err != nil || !utf8.Valid(b):
+		e.fault(at, recipe.BadText, "the text is not valid UTF-8, or escapes half of a surrogate pair")
+		return "", false
+	case len(b) > maxNameText:
+		e.fault(at, recipe.StringTooLong, "the text has more than %d bytes", maxNameText)
+		return "", false
+	}
+	return string(b), true
+}
+
+// texts reads a list of names that are not empty and stand once.
+func (e *envelope) texts(m member, at string) []string {
+	if m.value.Kind() != '[' {
+		e.fault(at, recipe.WrongType, `a list of texts is wanted, such as ["us", "ca"]`)
+		return nil
+	}
+	in := jsontext.NewDecoder(bytes.NewBuffer(m.value), jsontext.AllowDuplicateNames(true), jsontext.AllowInvalidUTF8(true))
+	in.ReadToken() // the bracket; the syntax is known to be right
+	var out []string
+	for i := 0; in.PeekKind() != ']'; i++ {
+		if i == maxNames {
+			e.fault(at, recipe.TooMany, "at most %d are read", maxNames)
+			return nil
+		}
+		raw, err := in.ReadValue()
+		if err != nil {
+			e.faults = append(e.faults, *syntaxFault(err))
+			return nil
+		}
+		out = e.name(out, raw, fmt.Sprintf("%s/%d", at, i))
+	}
+	if len(out) == 0 && len(e.faults) == 0 {
+		e.fault(at, recipe.Empty, "something is wanted here; leave the member out otherwise")
+	}
+	return out
+}
+
+func (e *envelope) name(list []string, raw jsontext.Value, at string) []string {
+	s, ok := e.unquote(raw, at)
+	switch {
+	case !ok:
+		return list
+	case s == "":
+		e.fault(at, recipe.Empty, "the name is empty")
+	case slices.Contains(list, s):
+		e.fault(at, recipe.Repeated, "%s stands twice; keep one", quote(s))
+	}
+	return append(list, s)
+}
+
+// digest reads the digest of a rule set.
+func (e *envelope) digest(m member, at string) string {
+	s, ok := e.unquote(m.value, at)
+	if !ok {
+		return ""
+	}
+	digits, prefixed := strings.CutPrefix(s, "sha256:")
+	if b, err := hex.DecodeString(digits); !prefixed || err != nil || len(b) != 32 || strings.ToLower(s) != s {
+		e.fault(at, recipe.BadFormat, "the digest of a rule set is wanted: sha256: and 64 hexadecimal digits, as a report has it")
+	}
+	return s
+}
+
+func pointerToken(name string) string {
+	return strings.NewReplacer("~", "~0", "/", "~1").Replace(strings.ToValidUTF8(name, "\uFFFD"))
+}

@@ -1,0 +1,126 @@
+package web
+
+import (
+	"io/fs"
+	"slices"
+	"time"
+
+	"gramlaw/internal/check"
+	"gramlaw/internal/recipe"
+	"gramlaw/schemas"
+)
+
+// schemaList names the published schemas.
+type schemaList struct {
+	Schemas []string `json:"schemas"`
+}
+
+// problemList describes every kind of problem and every code of a fault.
+type problemList struct {
+	Problems []problemPage `json:"problems"`
+	Codes    []codePage    `json:"codes"`
+}
+
+type problemPage struct {
+	Type   string `json:"type"`
+	Title  string `json:"title"`
+	Status int    `json:"status"`
+	Says   string `json:"says"`
+}
+
+type codePage struct {
+	Code string `json:"code"`
+	Says string `json:"says"`
+}
+
+// health tells that the service works, and with which rules.
+type health struct {
+	Status  string    `json:"status"`
+	Version string    `json:"version"`
+	Rules   loadedSet `json:"rules"`
+}
+
+type loadedSet struct {
+	check.RuleSet
+	Loaded     string `json:"loaded"` // RFC 3339, UTC
+	AgeSeconds int64  `json:"age_seconds"`
+}
+
+func getSchemas(x *exchange) *Problem {
+	if _, p := x.parameters(); p != nil {
+		return p
+	}
+	files, err := fs.Glob(schemas.Files, "*.schema.json")
+	if err != nil {
+		return problem(internal, "")
+	}
+	for i := range files {
+		files[i] = "/schemas/" + files[i]
+	}
+	return x.replyJSON(schemaList{files}, true)
+}
+
+func getSchema(x *exchange) *Problem {
+	if _, p := x.parameters(); p != nil {
+		return p
+	}
+	mediaType, p := x.choose(typeSchema, typeJSON)
+	if p != nil {
+		return p
+	}
+	name := x.r.PathValue("name")
+	body, err := fs.ReadFile(schemas.Files, name)
+	if !fs.ValidPath(name) || err != nil {
+		return problem(notFound, "There is no such schema; /schemas lists them.")
+	}
+	return x.replyTagged(mediaType, body)
+}
+
+func getOpenAPI(x *exchange) *Problem {
+	if _, p := x.parameters(); p != nil {
+		return p
+	}
+	mediaType, p := x.choose(typeJSON)
+	if p != nil {
+		return p
+	}
+	return x.replyTagged(mediaType, x.openapi)
+}
+
+func getProblems(x *exchange) *Problem {
+	if _, p := x.parameters(); p != nil {
+		return p
+	}
+	list := problemList{}
+	for _, k := range kinds() {
+		list.Problems = append(list.Problems, k.page())
+	}
+	for _, c := range slices.Concat(recipe.Codes, requestCodes(), ownCodes()) {
+		list.Codes = append(list.Codes, codePage(c))
+	}
+	return x.replyJSON(list, true)
+}
+
+func getProblem(x *exchange) *Problem {
+	if _, p := x.parameters(); p != nil {
+		return p
+	}
+	for _, k := range kinds() {
+		if k.Name == x.r.PathValue("name") {
+			return x.replyJSON(k.page(), true)
+		}
+	}
+	return problem(notFound, "There is no such problem; /problems lists them.")
+}
+
+func (k kind) page() problemPage {
+	return problemPage{Type: "/problems/" + k.Name, Title: k.Title, Status: k.Status, Says: k.Says}
+}
+
+func getHealth(x *exchange) *Problem {
+	if _, p := x.parameters(); p != nil {
+		return p
+	}
+	age := x.Now().Sub(x.rules.Loaded)
+	return x.replyJSON(health{"ok", x.Version, loadedSet{x.ruleSet(), x.rules.Loaded.UTC().Format(time.RFC3339), int64(age / time.Second)}}, false)
+}

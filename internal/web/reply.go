@@ -1,0 +1,128 @@
+package web
+
+import (
+	"bytes"
+	"compress/gzip"
+	"crypto/sha256"
+	"encoding/hex"
+	"encoding/json"
+	"net/http"
+	"strconv"
+	"strings"
+	"sync"
+)
+
+const compressFrom = 1024 // bytes; smaller answers are not worth it
+
+// Compressing most of a report's bytes costs less than a check at this level.
+var gzips = sync.Pool{New: func() any {
+	z, _ := gzip.NewWriterLevel(nil, gzip.BestSpeed) // the level is valid
+	return z
+}}
+
+// reply sends a whole answer, compressed where the client reads that.
+func (x *exchange) reply(mediaType string, body []byte) *Problem {
+	h := x.w.Header()
+	h.Add("Vary", "Accept, Accept-Encoding")
+	if len(body) >= compressFrom && takesGzip(x.r) {
+		body = compress(body)
+		h.Set("Content-Encoding", "gzip")
+	}
+	if most := x.Limits.Answer; most > 0 && int64(len(body)) > most {
+		h.Del("Content-Encoding")
+		return problem(answerLarge, "The answer has "+strconv.Itoa(len(body))+" bytes.")
+	}
+	x.send(http.StatusOK, mediaType, body)
+	return nil
+}
+
+func compress(body []byte) []byte {
+	var b bytes.Buffer
+	z := gzips.Get().(*gzip.Writer)
+	defer gzips.Put(z)
+	z.Reset(&b)
+	z.Write(body) // into memory: neither fails
+	z.Close()
+	return b.Bytes()
+}
+
+// replyTagged sends an answer that changes only with rules or program, or says that the client has it already.
+func (x *exchange) replyTagged(mediaType string, body []byte) *Problem {
+	sum := sha256.Sum256(body)
+	tag := `W/"` + hex.EncodeToString(sum[:16]) + `"`
+	h := x.w.Header()
+	h.Set("ETag", tag)
+	h.Set("Cache-Control", "no-cache")
+	if matches(x.r.Header.Values("If-None-Match"), tag) {
+		h.Add("Vary", "Accept, Accept-Encoding")
+		x.started, x.record.status = true, http.StatusNotModified
+		x.w.WriteHeader(http.StatusNotModified)
+		return nil
+	}
+	return x.reply(mediaType, body)
+}
+
+// matches compares entity tags weakly (RFC 9110, 13.1.2).
+func matches(headers []string, tag string) bool {
+	opaque := strings.TrimPrefix(tag, "W/")
+	for one := range strings.SplitSeq(strings.Join(headers, ","), ",") {
+		one = strings.TrimSpace(one)
+		if one == "*" || strings.TrimPrefix(one, "W/") == opaque {
+			return true
+		}
+	}
+	return false
+}
+
+// replyJSON sends a value of our own.
+func (x *exchange) replyJSON(v any, tagged bool) *Problem {
+	mediaType, p := x.choose(typeJSON)
+	if p != nil {
+		return p
+	}
+	body, err := encode(v)
+	if err != nil {
+		x.Log.Error("answer cannot be written", "request_id", x.id, "route", x.record.route)
+		return problem(internal, "")
+	}
+	if tagged {
+		return x.replyTagged(mediaType, body)
+	}
+	return x.reply(mediaType, body)
+}
+
+func encode(v any) ([]byte, error) {
+	var b bytes.Buffer
+	e := json.NewEncoder(&b)
+	e.SetEscapeHTML(false)
+	err := e.Encode(v)
+	return b.Bytes(), err
+}
+
+// refuse sends a problem instead of an answer.
+func (x *exchange) refuse(p *Problem) {
+	p.RequestID = x.id
+	x.record.refused(p)
+	h := x.w.Header()
+	for _, name := range []string{"ETag", "Vary", "Content-Encoding"} {
+		h.Del(name)
+	}
+	h.Set("Cache-Control", "no-store")
+	for name, values := range p.header {
+		h[name] = values
+	}
+	x.send(p.Status, typeProblem, p.bytes())
+}
+
+func (x *exchange) send(status int, mediaType string, body []byte) {
+	h := x.w.Header()
+	h.Set("Content-Type", mediaType)
+	h.Set("Content-Length", strconv.Itoa(len(body)))
+	x.started, x.record.status = true, status
+	x.w.WriteHeader(status)
+	if x.r.Method == http.MethodHead {
+		return
+	}
+	n, _ := x.w.Write(body) // a client that is gone needs no answer
+	x.record.bytesOut = int64(n)
+}
