@@ -83,11 +83,14 @@ func (l *loader) check() {
 	if l.book.Version == "" {
 		l.problem("set.json", "", "version", "is missing")
 	}
+	work := []func(*loader){(*loader).presumptions}
 	for _, j := range l.book.Jurisdictions() {
-		c := &checker{loader: l, j: j, m: l.book.markets[j]}
-		c.market()
+		work = append(work, func(own *loader) {
+			c := &checker{loader: own, j: j, m: l.book.markets[j]}
+			c.market()
+		})
 	}
-	l.presumptions()
+	l.sideBySide(work)
 }
 
 // A checker lints one market.

@@ -122,14 +122,24 @@ func (l *loader) problem(file, rule, field, format string, args ...any) {
 	l.problems = append(l.problems, Problem{file, rule, field, fmt.Sprintf(format, args...)})
 }
 
-// decodeAll decodes the files side by side. Each writes to a place of its own; problems come in the order of the files.
+// decodeAll decodes the files side by side. Each writes to a place of its own.
 func (l *loader) decodeAll(files []ruleFile) {
-	own := make([]loader, len(files))
-	var wait sync.WaitGroup
-	for i, f := range files {
+	var work []func(*loader)
+	for _, f := range files {
 		if read := l.reader(f); read != nil {
-			wait.Go(func() { read(&own[i]) })
+			work = append(work, read)
 		}
+	}
+	l.sideBySide(work)
+}
+
+// sideBySide does work that has nothing to do with each other. Problems come in the order of the work.
+func (l *loader) sideBySide(work []func(*loader)) {
+	own := make([]loader, len(work))
+	var wait sync.WaitGroup
+	for i, do := range work {
+		own[i].book = l.book
+		wait.Go(func() { do(&own[i]) })
 	}
 	wait.Wait()
 	for i := range own {

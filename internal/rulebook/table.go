@@ -2,7 +2,6 @@ package rulebook
 
 import (
 	"bytes"
-	"fmt"
 
 	"github.com/go-json-experiment/json"
 	"github.com/go-json-experiment/json/jsontext"
@@ -62,35 +61,29 @@ func (t *rows[T]) heads(visit func(kind, id string, h *Head)) {
 	}
 }
 
-// decode reads a file, writes families out, and checks what is common to all kinds.
+// decode reads a file rule by rule, writes families out, and checks what is common to all kinds.
 func (t *rows[T]) decode(l *loader, f ruleFile, jurisdiction string) {
-	var doc struct {
-		Jurisdiction string           `json:"jurisdiction"`
-		Rules        []jsontext.Value `json:"rules"`
-	}
-	if !l.decode(f.name, f.data, &doc) {
-		return
-	}
-	if doc.Jurisdiction != jurisdiction {
-		l.problem(f.name, "", "jurisdiction", "is %q in the folder %q", doc.Jurisdiction, jurisdiction)
-	}
-	seen := map[string]bool{}
-	for i, raw := range doc.Rules {
-		family, texts := l.expand(f.name, i, raw)
-		for _, text := range texts {
-			r := Rule[T]{}
-			if err := json.Unmarshal(text, &r, json.RejectUnknownMembers(true)); err != nil {
-				l.problem(f.name, ruleID(text), "", "%v", err)
-				continue
-			}
-			if seen[r.ID] {
-				l.problem(f.name, r.ID, "id", "stands twice")
-			}
-			seen[r.ID] = true
-			r.ForEach = family
-			l.common(f.name, r.ID, jurisdiction+"/"+t.segment+"/", r.heads())
-			*t.rules = append(*t.rules, r)
+	in := &ruleReader{loader: l, file: f.name, dec: jsontext.NewDecoder(bytes.NewBuffer(f.data))}
+	prefix, seen := jurisdiction+"/"+t.segment+"/", map[string]bool{}
+	err := in.document(func(text []byte, family []map[string]string) {
+		var r Rule[T]
+		if err := json.Unmarshal(text, &r, json.RejectUnknownMembers(true)); err != nil {
+			l.problem(f.name, ruleID(text), "", "%v", err)
+			return
 		}
+		if seen[r.ID] {
+			l.problem(f.name, r.ID, "id", "stands twice")
+		}
+		seen[r.ID] = true
+		r.ForEach = family
+		l.common(f.name, r.ID, prefix, r.heads())
+		*t.rules = append(*t.rules, r)
+	})
+	switch {
+	case err != nil:
+		l.problem(f.name, "", "", "%v", err)
+	case in.jurisdiction != jurisdiction:
+		l.problem(f.name, "", "jurisdiction", "is %q in the folder %q", in.jurisdiction, jurisdiction)
 	}
 }
 
@@ -110,57 +103,4 @@ func ruleID(raw []byte) string {
 		return ""
 	}
 	return r.ID
-}
-
-// expand writes a family out: "{each}" and the other names of a family member are replaced in the rule's text.
-func (l *loader) expand(file string, i int, raw jsontext.Value) (family []map[string]string, texts []jsontext.Value) {
-	if !bytes.Contains(raw, []byte(`"for each"`)) {
-		return nil, []jsontext.Value{raw}
-	}
-	var rule struct {
-		ForEach []map[string]string `json:"for each"`
-		Rest    jsontext.Value      `json:",embed"`
-	}
-	if err := json.Unmarshal(raw, &rule); err != nil {
-		l.problem(file, fmt.Sprintf("rule %d", i), "for each", "%v", err)
-		return nil, nil
-	}
-	if rule.ForEach == nil {
-		return nil, []jsontext.Value{raw}
-	}
-	for _, member := range rule.ForEach {
-		texts = append(texts, fill(rule.Rest, member))
-	}
-	return rule.ForEach, texts
-}
-
-// fill replaces every {name} of text that is a name of the member. Values stand in JSON strings and are quoted for them.
-func fill(text []byte, member map[string]string) []byte {
-	out := make([]byte, 0, len(text))
-	for {
-		at := bytes.IndexByte(text, '{')
-		if at < 0 {
-			return append(out, text...)
-		}
-		out, text = append(out, text[:at]...), text[at:]
-		end := bytes.IndexByte(text, '}')
-		value, ok := "", false
-		if end > 0 {
-			value, ok = member[string(text[1:end])]
-		}
-		if !ok {
-			out, text = append(out, '{'), text[1:]
-			continue
-		}
-		out, text = appendInside(out, value), text[end+1:]
-	}
-}
-
-// appendInside appends text as it stands between the quotes of a JSON string.
-func appendInside(out []byte, s string) []byte {
-	quoted, err := jsontext.AppendQuote(nil, s)
-	if err != nil { // not UTF-8: the decoder will say so
-		return append(out, s...)
-	}
-	return append(out, quoted[1:len(quoted)-1]...)
 }
