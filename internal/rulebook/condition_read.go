@@ -46,23 +46,33 @@ var countForm = form{"of", OpCount, []string{string(AtLeast)}, false}
 // A conditionReader holds what was read of one condition.
 type conditionReader struct {
 	*Condition
-	dec      *jsontext.Decoder
-	members  []string
-	list     bool // "of" was a list
-	number   bool // "at least" was a number
-	parts    [3]*Condition
-	compared string // what "against" and "not more than" name
-	from     struct {
+	dec        *jsontext.Decoder
+	members    []string
+	list       bool // "of" was a list
+	number     bool // "at least" was a number
+	parts      [3]*Condition
+	compared   string // what "against" and "not more than" name
+	from       originTest
+	amount     amountTest
+	ingredient ingredientTest
+}
+
+// The values of members that are objects.
+type (
+	originTest struct {
 		Origin string `json:"trans origin"`
 	}
-	amount struct {
+	amountTest struct {
 		AtMost []quantity.Amount `json:"at most"`
 	}
-	ingredient struct {
+	ingredientTest struct {
 		Process     []string         `json:"process"`
 		IodineAbove *decimal.Decimal `json:"iodine value above,omitzero"`
 	}
-}
+)
+
+// referenceFood is what a relative comparison is with.
+const referenceFood = "reference food"
 
 // UnmarshalJSONFrom reads the forms of rules/README.md.
 func (c *Condition) UnmarshalJSONFrom(dec *jsontext.Decoder) error {
@@ -102,8 +112,8 @@ func (r *conditionReader) member() error {
 	if err := json.UnmarshalDecode(r.dec, to, json.RejectUnknownMembers(true)); err != nil {
 		return err
 	}
-	if r.compared != "" && r.compared != "reference food" {
-		return fmt.Errorf(`%q compares with the "reference food", not with %q`, name, r.compared)
+	if r.compared != "" && r.compared != referenceFood {
+		return fmt.Errorf("%q compares with the %q, not with %q", name, referenceFood, r.compared)
 	}
 	return nil
 }
