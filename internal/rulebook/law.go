@@ -92,8 +92,7 @@ func (b *Book) At(jurisdiction, date string, t Transition, facts func(*Condition
 	if !ok {
 		return nil, false
 	}
-	s := &selection{date: date, transition: t, facts: facts}
-	s.edition = s.pickEdition(m.Market.Editions)
+	s := newSelection(m, date, t, facts)
 	law := &Law{Market: &m.Market, Date: date, Transition: t, Edition: s.edition}
 	law.Definitions = active(s, m.Definitions)
 	law.Energy = active(s, m.Energy)
@@ -118,8 +117,7 @@ func (b *Book) EditionAt(jurisdiction, date string, t Transition, facts func(*Co
 	if !ok {
 		return "", false
 	}
-	s := &selection{date: date, transition: t, facts: facts}
-	return s.pickEdition(m.Market.Editions), true
+	return newSelection(m, date, t, facts).edition, true
 }
 
 func (l *Law) index() {
@@ -153,6 +151,12 @@ type selection struct {
 	transition Transition
 	edition    string
 	facts      func(*Condition) quantity.Truth
+}
+
+func newSelection(m *Rules, date string, t Transition, facts func(*Condition) quantity.Truth) *selection {
+	s := &selection{date: date, transition: t, facts: facts}
+	s.edition = s.pickEdition(m.Market.Editions)
+	return s
 }
 
 func active[T any](s *selection, rules []Rule[T]) List[T] {
