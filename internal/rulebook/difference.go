@@ -22,8 +22,8 @@ const (
 	Edited   = "edited"
 )
 
-// A Change is what differs in one rule.
-type Change struct {
+// An Edit is what differs in one rule.
+type Edit struct {
 	Jurisdiction string   `json:"jurisdiction"`
 	Kind         string   `json:"kind"` // name of the file: "claims"
 	Rule         string   `json:"rule"` // identifier; of a market's own page "<jurisdiction>/jurisdiction"
@@ -55,7 +55,7 @@ var Switches = []string{"may be used", "must be used", "no longer holds"}
 // Changes lists the rules of a market that hold in another version on the day to than on the day from, kind by kind in
 // the order of the files. Transition and facts choose among versions as in At. An edition whose own dates switch changes
 // every rule that has a version for it.
-func (b *Book) Changes(jurisdiction, from, to string, t Transition, facts func(*Condition) quantity.Truth) ([]Change, error) {
+func (b *Book) Changes(jurisdiction, from, to string, t Transition, facts func(*Condition) quantity.Truth) ([]Edit, error) {
 	m, ok := b.markets[jurisdiction]
 	switch {
 	case !ok:
@@ -66,7 +66,7 @@ func (b *Book) Changes(jurisdiction, from, to string, t Transition, facts func(*
 		return nil, fmt.Errorf("%q is no date yyyy-mm-dd from %s on", to, from)
 	}
 	old, now := newSelection(m, from, t, facts), newSelection(m, to, t, facts)
-	out := []Change{}
+	out := []Edit{}
 	for _, table := range m.tables() {
 		for _, c := range table.between(old, now) {
 			c.Jurisdiction, c.Kind = jurisdiction, table.kind()
@@ -76,8 +76,8 @@ func (b *Book) Changes(jurisdiction, from, to string, t Transition, facts func(*
 	return out, nil
 }
 
-func (t *rows[T]) between(old, now *selection) []Change {
-	var out []Change
+func (t *rows[T]) between(old, now *selection) []Edit {
+	var out []Edit
 	for i := range *t.rules {
 		r := &(*t.rules)[i]
 		head := func(i int) *Head { return &r.Versions[i].Head }
@@ -121,8 +121,8 @@ func days(heads []*Head, from, to string) []Day {
 }
 
 // change compares two versions; one of them may be nil. effects are for a version that came, went and changed.
-func change[T any](id string, before, after *Version[T], effects [3]string) Change {
-	c := Change{Rule: id, Members: []Member{}, Days: []Day{}}
+func change[T any](id string, before, after *Version[T], effects [3]string) Edit {
+	c := Edit{Rule: id, Members: []Member{}, Days: []Day{}}
 	switch {
 	case before == nil:
 		c.Effect, c.After = effects[0], &after.Head

@@ -10,8 +10,8 @@ import (
 
 // Difference lists what differs between two sets: every version of a rule that is in one only, or that reads otherwise,
 // and every market's own page, market by market and kind by kind; practice stands last.
-func Difference(old, now *Book) []Change {
-	out := []Change{}
+func Difference(old, now *Book) []Edit {
+	out := []Edit{}
 	for _, j := range union(old.Jurisdictions(), now.Jurisdictions()) {
 		out = append(out, differenceOfMarkets(j, old.market(j), now.market(j))...)
 	}
@@ -26,10 +26,10 @@ func (b *Book) market(jurisdiction string) *Rules {
 	return &Rules{}
 }
 
-func differenceOfMarkets(j string, old, now *Rules) []Change {
-	var out []Change
+func differenceOfMarkets(j string, old, now *Rules) []Edit {
+	var out []Edit
 	if m := members(&old.Market, &now.Market); len(m) > 0 {
-		c := Change{Jurisdiction: j, Kind: "jurisdiction", Rule: j + "/jurisdiction", Effect: Edited, Members: m, Days: []Day{}}
+		c := Edit{Jurisdiction: j, Kind: "jurisdiction", Rule: j + "/jurisdiction", Effect: Edited, Members: m, Days: []Day{}}
 		switch {
 		case old.Market.Jurisdiction == "":
 			c.Effect, c.Members = Added, []Member{}
@@ -42,8 +42,8 @@ func differenceOfMarkets(j string, old, now *Rules) []Change {
 	return append(out, differenceOfTables(j, old.tables(), now.tables())...)
 }
 
-func differenceOfTables(j string, old, now []table) []Change {
-	var out []Change
+func differenceOfTables(j string, old, now []table) []Edit {
+	var out []Edit
 	for i := range old {
 		for _, c := range old[i].difference(now[i]) {
 			c.Jurisdiction, c.Kind = j, old[i].kind()
@@ -53,13 +53,13 @@ func differenceOfTables(j string, old, now []table) []Change {
 	return out
 }
 
-func (t *rows[T]) difference(other table) []Change {
+func (t *rows[T]) difference(other table) []Edit {
 	now, ok := other.(*rows[T])
 	if !ok {
 		return nil
 	}
 	before, after := byID(*t.rules), byID(*now.rules)
-	var out []Change
+	var out []Edit
 	for _, id := range union(ids(*t.rules), ids(*now.rules)) {
 		out = append(out, differenceOfVersions(id, before[id], after[id])...)
 	}
@@ -67,9 +67,9 @@ func (t *rows[T]) difference(other table) []Change {
 }
 
 // differenceOfVersions compares the versions of a rule that begin on the same day for the same edition.
-func differenceOfVersions[T any](id string, old, now *Rule[T]) []Change {
+func differenceOfVersions[T any](id string, old, now *Rule[T]) []Edit {
 	before, after := old.byStart(), now.byStart()
-	var out []Change
+	var out []Edit
 	for _, key := range union(sorted(before), sorted(after)) {
 		a, b := before[key], after[key]
 		c := change(id, a, b, [3]string{Added, Removed, Edited})
@@ -125,7 +125,7 @@ func union(a, b []string) []string {
 }
 
 // says is the effect in short. Plain values of one or two members stand with it.
-func (c *Change) says() string {
+func (c *Edit) says() string {
 	since := func(h *Head) string { return "version from " + h.From }
 	switch {
 	case c.Before == nil && c.After == nil:
@@ -140,7 +140,7 @@ func (c *Change) says() string {
 	return c.Effect + c.memberNames()
 }
 
-func (c *Change) memberNames() string {
+func (c *Edit) memberNames() string {
 	var parts []string
 	for _, m := range c.Members {
 		s := m.Member

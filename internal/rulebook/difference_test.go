@@ -27,7 +27,7 @@ var threeVersions = map[string]string{"xx/reference_values.json": `{"jurisdictio
 	{"id":"xx/reference/late","versions":[{"from":"2018-05-01","until":"2022-01-01","quantity":"fat","amounts":{"general population":"1 g"},` + source + `}]}]}`}
 
 // short writes changes as "rule effect", with the members that differ.
-func short(changes []rulebook.Change) string {
+func short(changes []rulebook.Edit) string {
 	var out []string
 	for _, c := range changes {
 		s := c.Rule + " " + c.Effect
@@ -151,7 +151,7 @@ func TestChangesOfTheEmbeddedSet(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	i := slices.IndexFunc(got, func(c rulebook.Change) bool { return c.Rule == "us/reference/fat" })
+	i := slices.IndexFunc(got, func(c rulebook.Edit) bool { return c.Rule == "us/reference/fat" })
 	if i < 0 || got[i].Effect != rulebook.Replaced {
 		t.Errorf("the reference value of fat is not replaced: %s", short(got))
 	}
