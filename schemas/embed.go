@@ -15,6 +15,9 @@ const RulesID = "urn:gramlaw:schema:rules"
 // RecipeID is the $id of the recipe schema.
 const RecipeID = "urn:gramlaw:schema:recipe"
 
+// ReportID is the $id of the report schema.
+const ReportID = "urn:gramlaw:schema:report"
+
 // Recipe is the text of recipe.schema.json.
 //
 //go:embed recipe.schema.json
