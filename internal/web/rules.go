@@ -51,39 +51,6 @@ type version struct {
 	Source       rulebook.Source `json:"source"`
 }
 
-// marketChanges is what differs between two labelling dates.
-type marketChanges struct {
-	Rules        check.RuleSet `json:"rules"`
-	Jurisdiction string        `json:"jurisdiction"`
-	From         string        `json:"from"`
-	To           string        `json:"to"`
-	Transition   string        `json:"transition"`
-	EditionWas   string        `json:"edition_was,omitzero"`
-	EditionIs    string        `json:"edition_is,omitzero"`
-	Changes      []change      `json:"changes"`
-	Dates        []datedEvent  `json:"dates"`
-	Caution      string        `json:"caution"`
-}
-
-// A change is a rule that another version of, or none, holds later.
-type change struct {
-	Kind   string   `json:"kind"`
-	ID     string   `json:"id"`
-	Change string   `json:"change"` // "begins", "ends" or "replaced"
-	Was    *version `json:"was,omitzero"`
-	Is     *version `json:"is,omitzero"`
-}
-
-// A datedEvent is a day after From and up to To on which something about a rule changes.
-type datedEvent struct {
-	Date        string `json:"date"`
-	Event       string `json:"event"` // "may be used", "must be used" or "no longer holds"
-	Conditional bool   `json:"conditional,omitzero"`
-	Kind        string `json:"kind"`
-	ID          string `json:"id"`
-	Edition     string `json:"edition,omitzero"`
-}
-
 // getRules tells what the rule set covers.
 func getRules(x *exchange) *Problem {
 	if _, p := x.parameters(); p != nil {
@@ -186,50 +153,6 @@ func some(list []string) []string { return append([]string{}, list...) }
 
 func caution(m *rulebook.Market) string {
 	return strings.TrimSpace(m.Caution + " " + check.Caution)
-}
-
-// getChanges compares two labelling dates.
-func getChanges(x *exchange) *Problem {
-	m, p := x.market()
-	if p != nil {
-		return p
-	}
-	parameters, p := x.parameters("from", "to", "transition")
-	if p != nil {
-		return p
-	}
-	from, badFrom := date(parameters, "from", "")
-	to, badTo := date(parameters, "to", "")
-	t, badTransition := transition(parameters)
-	if badFrom == nil && badTo == nil && from > to {
-		badTo = &Fault{Parameter: "to", Code: "range-reversed", Says: "the day lies before from"}
-	}
-	if p := given(badFrom, badTo, badTransition); p != nil {
-		return p
-	}
-	was, is := x.law(from, t), x.law(to, t)
-	page := marketChanges{
-		Rules: x.ruleSet(), Jurisdiction: m.Market.Jurisdiction, From: from, To: to, Transition: string(t), EditionWas: was.Edition, EditionIs: is.Edition,
-		Changes: []change{}, Dates: []datedEvent{}, Caution: caution(&m.Market),
-	}
-	for _, c := range rulebook.Changes(was, is) {
-		page.Changes = append(page.Changes, changeOf(c))
-	}
-	for _, e := range m.Events(from, to) {
-		page.Dates = append(page.Dates, datedEvent(e))
-	}
-	return x.replyJSON(page, true)
-}
-
-func changeOf(c rulebook.Change) change {
-	out := change{Kind: c.Kind, ID: c.ID, Change: "replaced", Was: versionOf(c.Was), Is: versionOf(c.Is)}
-	switch {
-	case c.Was == nil:
-		out.Change = "begins"
-	case c.Is == nil:
-		out.Change = "ends"
-	}
-	return out
 }
 
 func versionOf(h *rulebook.Head) *version {
