@@ -62,7 +62,7 @@ type entry struct {
 	Component
 	within   []ID // as the register states it
 	disjoint []ID // as the register states it
-	wholes   Set  // all ancestors
+	parts    Set  // all that is part of it, by descent too
 	apart    Set  // all components disjoint from this one, by descent too
 }
 
@@ -152,7 +152,7 @@ func (id ID) DisjointFrom() iter.Seq[ID] {
 
 // IsWithin tells whether the component is part of whole, directly or through
 // others. No component is within itself.
-func (id ID) IsWithin(whole ID) bool { return id.valid() && register[id-1].wholes.Has(whole) }
+func (id ID) IsWithin(whole ID) bool { return whole.valid() && register[whole-1].parts.Has(id) }
 
 // IsDisjoint tells whether the two components certainly share nothing.
 func (id ID) IsDisjoint(other ID) bool { return id.valid() && register[id-1].apart.Has(other) }
@@ -170,85 +170,69 @@ func Beside(part, whole ID, known Set) Set {
 	if !part.valid() {
 		return picked
 	}
-	candidates := register[part-1].apart.and(known)
-	left := candidates.count()
-	for _, id := range parentsFirst {
-		if left == 0 {
-			break
-		}
-		if !candidates.Has(id) {
-			continue
-		}
-		if left--; whole != 0 && !id.IsWithin(whole) {
-			continue
-		}
-		if register[id-1].apart.containsAll(picked) {
-			picked.Add(id)
-		}
+	candidates := register[part-1].apart.and(&known)
+	if whole != 0 {
+		candidates = candidates.and(&register[whole-1].parts)
+	}
+	for id, ok := candidates.Next(0); ok; id, ok = candidates.Next(id) {
+		picked.Add(id)
+		candidates = candidates.and(&register[id-1].apart)
 	}
 	return picked
 }
 
-// Set is a set of components. The zero Set is empty.
-type Set [(Count + 64) / 64]uint64
+// Set is a set of components, a bit for each, wholes before parts. The zero Set is empty.
+type Set [(Count + 63) / 64]uint64
 
 // Add puts a component into the set; IDs outside the register are ignored.
 func (s *Set) Add(id ID) {
 	if id.valid() {
-		s[id/64] |= 1 << (id % 64)
+		place := placeOf[id-1]
+		s[place/64] |= 1 << (place % 64)
 	}
 }
 
 // Has tells whether the set holds the component.
-func (s Set) Has(id ID) bool { return id.valid() && s[id/64]&(1<<(id%64)) != 0 }
+func (s *Set) Has(id ID) bool {
+	if !id.valid() {
+		return false
+	}
+	place := placeOf[id-1]
+	return s[place/64]&(1<<(place%64)) != 0
+}
 
-// Next is the first component of the set after another; start with 0.
+// Next is the first component of the set after another, wholes before parts; start with 0.
 func (s *Set) Next(after ID) (ID, bool) {
-	i := int(after) + 1
+	i := 0
+	if after.valid() {
+		i = int(placeOf[after-1]) + 1
+	}
 	for w := i / 64; w < len(s); w++ {
 		word := s[w]
 		if w == i/64 {
 			word &= ^uint64(0) << (i % 64)
 		}
 		if word != 0 {
-			return ID(w*64 + bits.TrailingZeros64(word)), true
+			return parentsFirst[w*64+bits.TrailingZeros64(word)], true
 		}
 	}
 	return 0, false
 }
 
-// All lists the set in the order of IDs.
+// All lists the set, wholes before parts.
 func (s Set) All() iter.Seq[ID] {
 	return func(yield func(ID) bool) {
-		for i, word := range s {
-			for ; word != 0; word &= word - 1 {
-				if !yield(ID(i*64 + bits.TrailingZeros64(word))) {
-					return
-				}
+		for id, ok := s.Next(0); ok; id, ok = s.Next(id) {
+			if !yield(id) {
+				return
 			}
 		}
 	}
 }
 
-func (s Set) count() (n int) {
-	for _, word := range s {
-		n += bits.OnesCount64(word)
-	}
-	return n
-}
-
-func (s Set) and(t Set) Set {
+func (s Set) and(t *Set) Set {
 	for i := range s {
 		s[i] &= t[i]
 	}
 	return s
-}
-
-func (s Set) containsAll(t Set) bool {
-	for i := range s {
-		if t[i]&^s[i] != 0 {
-			return false
-		}
-	}
-	return true
 }

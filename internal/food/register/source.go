@@ -21,6 +21,7 @@ func (r *resolved) source() ([]byte, error) {
 		r.entry(&b, i)
 	}
 	fmt.Fprintf(&b, "}\n\nvar parentsFirst = [Count]ID{%s}\n\n", ids(r.order))
+	fmt.Fprintf(&b, "var placeOf = [Count]uint16{%s}\n\n", numbers(r.places()))
 	r.indexes(&b)
 	return format.Source(b.Bytes())
 }
@@ -39,8 +40,8 @@ func (r *resolved) entry(b *bytes.Buffer, i int) {
 	one := r.rows[i]
 	fmt.Fprintf(b, "{Component: Component{ID: %d, Tag: %q, Unit: %q, Name: %q, USDA: %d, Decimals: %d, Own: %t, Evidence: %q, Note: %q},\n",
 		i+1, one.tag, one.unit, one.name, one.usda, one.decimals, one.own, one.evidence, one.note)
-	fmt.Fprintf(b, "within: []ID{%s}, disjoint: []ID{%s}, wholes: Set{%s}, apart: Set{%s}},\n",
-		ids(r.within[i]), ids(r.disjoint[i]), words(r.wholes[i]), words(r.apart[i]))
+	fmt.Fprintf(b, "within: []ID{%s}, disjoint: []ID{%s}, parts: Set{%s}, apart: Set{%s}},\n",
+		ids(r.within[i]), ids(r.disjoint[i]), r.words(r.parts(i)), r.words(r.apart[i]))
 }
 
 func (r *resolved) indexes(b *bytes.Buffer) {
@@ -67,12 +68,38 @@ func ids(indexes []int) string {
 	return strings.Join(parts, ", ")
 }
 
-// words packs booleans as the food package's Set does: bit ID.
-func words(has []bool) string {
-	set := make([]uint64, (len(has)+64)/64)
-	for i, yes := range has {
-		if yes {
-			set[(i+1)/64] |= 1 << ((i + 1) % 64)
+// places is where each component stands among all, wholes before parts.
+func (r *resolved) places() []int {
+	places := make([]int, len(r.order))
+	for place, i := range r.order {
+		places[i] = place
+	}
+	return places
+}
+
+// parts tells which components are part of one, directly or through others.
+func (r *resolved) parts(whole int) []bool {
+	parts := make([]bool, len(r.rows))
+	for i := range r.rows {
+		parts[i] = r.wholes[i][whole]
+	}
+	return parts
+}
+
+func numbers(list []int) string {
+	parts := make([]string, len(list))
+	for i, n := range list {
+		parts[i] = fmt.Sprint(n)
+	}
+	return strings.Join(parts, ", ")
+}
+
+// words packs booleans as the food package's Set does: a bit for each place.
+func (r *resolved) words(has []bool) string {
+	set := make([]uint64, (len(has)+63)/64)
+	for place, i := range r.order {
+		if has[i] {
+			set[place/64] |= 1 << (place % 64)
 		}
 	}
 	parts := make([]string, 0, len(set))
