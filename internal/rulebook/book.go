@@ -21,7 +21,7 @@ type Version[T any] struct {
 // Name is the last segment of a rule's identifier.
 func Name(id string) string { return id[strings.LastIndexByte(id, '/')+1:] }
 
-// A Book is a loaded, linted rule set. It is never changed after Load.
+// A Book is a loaded, linted rule set. Its rules are never changed after Load, and it may be used by many at once.
 type Book struct {
 	Version string // of the set, for people
 	Digest  string // "sha256:" over all files
@@ -29,6 +29,8 @@ type Book struct {
 
 	Presumptions []Rule[Presumption]
 	Origins      []Rule[Origin]
+
+	chosen chosen
 }
 
 // Rules are all rules of one market.

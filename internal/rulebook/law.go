@@ -86,14 +86,25 @@ func (l *Law) ReferenceOf(name string) (Active[Reference], bool) {
 	return l.References.All[i], true
 }
 
-// At gives a market's law on a labelling date. facts answers the conditions on which a law makes its dates depend.
+// At gives a market's law on a labelling date. facts answers the conditions on which a law makes its dates depend. The book remembers what
+// it chose; laws are never changed.
 func (b *Book) At(jurisdiction, date string, t Transition, facts func(*Condition) quantity.Truth) (*Law, bool) {
 	m, ok := b.markets[jurisdiction]
 	if !ok {
 		return nil, false
 	}
-	s := newSelection(m, date, t, facts)
-	law := &Law{Market: &m.Market, Date: date, Transition: t, Edition: s.edition}
+	key := asked{jurisdiction, date, t}
+	if law, ok := b.chosen.find(key, facts); ok {
+		return law, true
+	}
+	way := route{}
+	way.law = m.at(newSelection(m, date, t, way.through(facts)))
+	b.chosen.keep(key, way)
+	return way.law, true
+}
+
+func (m *Rules) at(s *selection) *Law {
+	law := &Law{Market: &m.Market, Date: s.date, Transition: s.transition, Edition: s.edition}
 	law.Definitions = active(s, m.Definitions)
 	law.Energy = active(s, m.Energy)
 	law.References = active(s, m.References)
@@ -108,7 +119,7 @@ func (b *Book) At(jurisdiction, date string, t Transition, facts func(*Condition
 	law.Naming = active(s, m.Naming)
 	law.Conditions = active(s, m.Conditions)
 	law.index()
-	return law, true
+	return law
 }
 
 // EditionAt is the edition that At would take.

@@ -184,3 +184,35 @@ func FuzzLint(f *testing.F) {
 		}
 	})
 }
+
+// What a book remembers is what it would choose anew: by date, transition and the answers to what dates depend on, and the same is asked.
+func TestRememberedLawsAreTheChosen(t *testing.T) {
+	load := func() *rulebook.Book {
+		b, err := rulebook.Load(smallSet(map[string]string{"xx/claims.json": `{"jurisdiction":"xx","rules":[{"id":"xx/claim/fat-low","versions":[
+			{"from":"2000-01-01","until":"2030-01-01","source":{"ref":"a","evidence":"memory","force":"law"},"name":{"en":"Low fat"},"about":["fat"],"condition":{"of":{"fat":"1"},"per":"100 g","at most":"3 g"}},
+			{"from":"2010-01-01","required_from":[{"date":"2012-01-01","when":{"fact":"state","is":"solid"}},{"date":"2014-01-01"}],"source":{"ref":"a","evidence":"memory","force":"law"},"name":{"en":"Low fat"},"about":["fat"],"condition":{"of":{"fat":"1"},"per":"100 g","at most":"2 g"}}]}]}`}))
+		if err != nil {
+			t.Fatal(err)
+		}
+		return b
+	}
+	answers := map[string]quantity.Truth{"yes": quantity.Yes, "no": quantity.No, "open": quantity.Open}
+	one := load()
+	for _, date := range []string{"2011-01-01", "2012-06-01", "2014-06-01", "2012-06-01", "2011-01-01"} {
+		for _, transition := range []rulebook.Transition{rulebook.WhenRequired, rulebook.Newest} {
+			for name, answer := range answers {
+				var asked [2]string
+				facts := func(i int) func(*rulebook.Condition) quantity.Truth {
+					return func(c *rulebook.Condition) quantity.Truth { asked[i] = c.Name; return answer }
+				}
+				got, _ := one.At("xx", date, transition, facts(0))
+				want, _ := load().At("xx", date, transition, facts(1))
+				g, _ := got.Claims.Get("fat-low")
+				w, _ := want.Claims.Get("fat-low")
+				if g.Head.From != w.Head.From || asked[0] != asked[1] {
+					t.Errorf("%s %s %s: version of %s asking %q, want %s asking %q", date, transition, name, g.Head.From, asked[0], w.Head.From, asked[1])
+				}
+			}
+		}
+	}
+}
