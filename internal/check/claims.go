@@ -197,10 +197,8 @@ func (m *market) candidates(list []rulebook.Active[rulebook.Claim], asked []Clai
 		if c.Body.Prohibited || !m.product.surelyMeets(c, v) || c.Body.BarredIf != nil && v.truth(c.Body.BarredIf) != quantity.No {
 			continue
 		}
-		one := Claim{Verdict: Permitted, Rule: c.ID}
-		m.accompany(&one, c.Body, v)
-		if one.Verdict == Permitted || one.Verdict == WithStatement {
-			out = append(out, Candidate{Claim: c.ID, Name: c.Body.Name.In("en"), Verdict: one.Verdict, Health: health})
+		if verdict := v.verdictBeside(c.Body); verdict == Permitted || verdict == WithStatement {
+			out = append(out, Candidate{Claim: c.ID, Name: c.Body.Name.In("en"), Verdict: verdict, Health: health})
 		}
 	}
 	return out

@@ -28,6 +28,7 @@ type market struct {
 	refs    map[string]*product
 	assumed map[string]Assumed
 	about   map[string]bool // subjects of the claims that stand
+	truths  map[*rulebook.Condition]quantity.Truth
 	lines   map[string]*lineState
 	order   []*lineState
 	columns []column
@@ -44,7 +45,8 @@ func (m *market) report(tags map[string]bool) Market {
 }
 
 func (c *checker) open(j string, t rulebook.Transition) *market {
-	m := &market{c: c, j: j, refs: map[string]*product{}, assumed: map[string]Assumed{}, about: map[string]bool{}, lines: map[string]*lineState{}}
+	m := &market{c: c, j: j, refs: map[string]*product{}, assumed: map[string]Assumed{}, about: map[string]bool{}, lines: map[string]*lineState{},
+		truths: map[*rulebook.Condition]quantity.Truth{}}
 	rules, _ := c.book.Rules(j)
 	m.law = &rulebook.Law{Market: &rules.Market} // facts may be asked while versions are chosen
 	m.law, _ = c.book.At(j, c.request.On, t, m.as(nil).truth)
@@ -77,17 +79,9 @@ func (m *market) judge() Market {
 // presumed lists what practice was asked for, for components this market's definitions speak of. It is asked after all markets
 // are judged, so that their order does not matter.
 func (m *market) presumed() []Presumed {
-	spoken := map[string]bool{}
-	for _, d := range m.law.Definitions.All {
-		for _, w := range d.Body.Ways {
-			for tag := range w.Sum {
-				spoken[tag] = true
-			}
-		}
-	}
 	out := []Presumed{}
 	for _, p := range m.c.habits.used {
-		if spoken[p.Component] || p.Component == Process || p.Component == TransOrigin {
+		if m.law.SpeaksOf(p.Component) || p.Component == Process || p.Component == TransOrigin {
 			out = append(out, p)
 		}
 	}

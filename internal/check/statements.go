@@ -13,10 +13,7 @@ import (
 
 // accompany lists what must stand beside a permitted claim.
 func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
-	v.own = map[string]bool{}
-	for _, s := range b.About {
-		v.own[s] = true
-	}
+	v.judged = b
 	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
 	out.Statements = append(out.Statements, v.disclosures(out)...)
 	for _, s := range out.Statements {
@@ -36,6 +33,39 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
 			out.Verdict = WithStatement
 		}
 	}
+}
+
+// verdictBeside is the verdict that accompany leaves to a permitted claim, found without writing a statement.
+func (v view) verdictBeside(b *rulebook.Claim) string {
+	v.judged = b
+	verdict := Permitted
+	for _, d := range v.law.Disclosures.All {
+		switch t := v.level(d.Body); {
+		case t == quantity.No:
+		case d.Body.Effect == "bars" && t == quantity.Yes:
+			return Refused
+		case d.Body.Effect == "bars":
+			return Undetermined
+		case t == quantity.Yes:
+			verdict = WithStatement
+		}
+	}
+	for i := range b.Statements {
+		s := &b.Statements[i]
+		if s.Presence != "optional" && (s.If == nil || v.truth(s.If) == quantity.Yes) {
+			verdict = WithStatement
+		}
+	}
+	return verdict
+}
+
+// level tells whether a disclosure level is exceeded where it counts.
+func (v view) level(d *rulebook.Disclosure) quantity.Truth {
+	t := v.truth(d.When)
+	if t != quantity.No {
+		t = quantity.All(t, v.truth(d.Condition))
+	}
+	return t
 }
 
 // raisedBy lists the lines that stand because something is claimed about one of the subjects.
@@ -99,10 +129,7 @@ func (v view) disclosures(out *Claim) []Statement {
 	}
 	var groups []*group
 	for _, d := range v.law.Disclosures.All {
-		t := v.truth(d.Body.When)
-		if t != quantity.No {
-			t = quantity.All(t, v.truth(d.Body.Condition))
-		}
+		t := v.level(d.Body)
 		if t == quantity.No {
 			continue
 		}

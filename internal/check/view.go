@@ -20,12 +20,23 @@ type view struct {
 	subject *product
 	ref     *product
 	against string          // name of ref
-	own     map[string]bool // what the one claim judged is about; nil where all that stand count
+	judged  *rulebook.Claim // whose subjects count; nil where those of all that stand do
 }
 
 func (m *market) as(p *product) view { return view{market: m, subject: p} }
 
-func (v view) truth(c *rulebook.Condition) quantity.Truth { return claim.Decide(c, v) }
+// truth decides a condition. What depends on the product alone is decided once.
+func (v view) truth(c *rulebook.Condition) quantity.Truth {
+	if !c.OfProduct() || v.subject != v.product {
+		return claim.Decide(c, v)
+	}
+	t, ok := v.truths[c]
+	if !ok {
+		t = claim.Decide(c, v)
+		v.truths[c] = t
+	}
+	return t
+}
 
 // Product is the food the condition speaks of.
 func (v view) Product() claim.Subject { return v.subject }
@@ -171,11 +182,11 @@ func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 
 // ClaimedAbout tells whether a claim that stands is about one of the subjects; where one claim is judged, whether it is.
 func (v view) ClaimedAbout(subjects []string, onLabel bool) quantity.Truth {
-	about := v.about
-	if v.own != nil && !onLabel {
-		about = v.own
+	if v.judged != nil && !onLabel {
+		own := v.judged.About
+		return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return slices.Contains(own, s) || s == "any" && len(own) > 0 }))
 	}
-	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return about[s] || s == "any" && len(about) > 0 }))
+	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return v.about[s] || s == "any" && len(v.about) > 0 }))
 }
 
 // Named is the active version of a condition that has a rule of its own.

@@ -1,6 +1,8 @@
 package rulebook
 
 import (
+	"slices"
+
 	"github.com/shopspring/decimal"
 
 	"gramlaw/internal/quantity"
@@ -46,9 +48,10 @@ type Condition struct {
 	Origin    string // "industrial" or "ruminant": only trans of that origin
 	Subject   string // "" is the product, "reference food" the other
 
-	terms []Term
-	bases []Per
-	limit quantity.Ratio
+	terms     []Term
+	bases     []Per
+	limit     quantity.Ratio
+	ofProduct bool
 
 	// OpDeclared, OpMeets, OpFact
 	Name   string // line, rule id or fact
@@ -121,6 +124,22 @@ func (c *Condition) Walk(visit func(*Condition)) {
 	for _, p := range c.Parts {
 		p.Walk(visit)
 	}
+}
+
+// OfProduct tells whether the condition, read from a rule, depends on the product and the facts alone: not on a reference food, on other
+// rules or on what is claimed.
+func (c *Condition) OfProduct() bool { return c != nil && c.ofProduct }
+
+func (c *Condition) asksProductOnly() bool {
+	switch c.Op {
+	case OpCompare:
+		return c.Subject == "" && !c.Relation.Relative()
+	case OpFact, OpAmount, OpSize, OpIngredient:
+		return true
+	case OpAll, OpAny, OpNot, OpCount, OpWhen:
+		return !slices.ContainsFunc(c.Parts, func(p *Condition) bool { return !p.asksProductOnly() })
+	}
+	return false
 }
 
 // Relative tells whether the condition needs a reference food.

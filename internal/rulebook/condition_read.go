@@ -210,7 +210,11 @@ func (r *conditionReader) finish() error {
 	if r.Op == OpAmount {
 		r.Amounts = r.amount.AtMost
 	}
-	return errors.Join(r.compare(f), r.combine())
+	if err := errors.Join(r.compare(f), r.combine()); err != nil {
+		return err
+	}
+	r.ofProduct = r.asksProductOnly()
+	return nil
 }
 
 func (r *conditionReader) form() (form, bool) {

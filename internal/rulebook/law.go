@@ -58,7 +58,11 @@ type Law struct {
 
 	roundingOf  map[string]int // quantity -> index in Roundings
 	referenceOf map[string]int
+	spoken      map[string]bool // components of definitions
 }
+
+// SpeaksOf tells whether a definition of the law sums a component.
+func (l *Law) SpeaksOf(tag string) bool { return l.spoken[tag] }
 
 // RoundingOf finds the rounding rule of a quantity.
 func (l *Law) RoundingOf(name string) (Active[Rounding], bool) {
@@ -143,6 +147,14 @@ func (l *Law) index() {
 	l.referenceOf = map[string]int{}
 	for i, r := range l.References.All {
 		l.referenceOf[r.Body.Quantity] = i
+	}
+	l.spoken = map[string]bool{}
+	for _, d := range l.Definitions.All {
+		for i := range d.Body.Ways {
+			for tag := range d.Body.Ways[i].Sum {
+				l.spoken[tag] = true
+			}
+		}
 	}
 }
 
