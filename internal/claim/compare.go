@@ -52,7 +52,7 @@ func (x evaluator) compareOn(c *rulebook.Condition, name string, per rulebook.Pe
 	if missing != "" {
 		return Result{Says: cmp.Says, Missing: missing}
 	}
-	s := measure(c, per, subject, x)
+	s := measure(c, per, subject, x.Context)
 	switch {
 	case s.missing != "":
 		return Result{Says: cmp.Says, Missing: s.missing}

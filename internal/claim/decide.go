@@ -74,7 +74,7 @@ func (x evaluator) decide(c *rulebook.Condition) quantity.Truth {
 		}
 		return x.decide(named)
 	}
-	return x.ask(c).Truth
+	return x.askTruth(c)
 }
 
 // decideUntil starts from what nothing gives, and ends at the first part that settles the whole.
@@ -122,7 +122,7 @@ func (x evaluator) decideOn(c *rulebook.Condition, per rulebook.Per) quantity.Tr
 	if missing != "" {
 		return quantity.Open
 	}
-	s := measure(c, per, subject, x)
+	s := measure(c, per, subject, x.Context)
 	switch {
 	case s.missing != "":
 		return quantity.Open

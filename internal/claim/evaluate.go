@@ -142,28 +142,62 @@ func (x evaluator) atom(c *rulebook.Condition) Result {
 	return r
 }
 
+// ask puts a condition without parts to the context; missing is what an open answer lacks.
 func (x evaluator) ask(c *rulebook.Condition) Result {
-	switch c.Op {
-	case rulebook.OpDeclared:
-		return Result{Truth: x.Declared(c.Name, c.Is)}
-	case rulebook.OpMeets:
-		return x.meets(c)
-	case rulebook.OpFact:
-		return lacking(x.fact(c), "the fact “"+c.Name+"”")
-	case rulebook.OpAmount:
-		return lacking(x.ReferenceAmount(c.Amounts), "the reference amount")
-	case rulebook.OpSize:
-		return lacking(x.size(c), "the mass of the "+c.Name)
-	case rulebook.OpKind:
-		return lacking(x.ReferenceKind(c.Kinds), "the reference food")
-	case rulebook.OpAbout:
-		return Result{Truth: x.ClaimedAbout(c.About, c.Label)}
-	case rulebook.OpUndecided:
-		return Result{Missing: c.Why.In("en")}
-	default:
+	if c.Op == rulebook.OpIngredient {
 		t, missing := x.NoIngredient(c)
 		return Result{Truth: t, Missing: missing}
 	}
+	r := Result{Truth: x.askTruth(c)}
+	if r.Truth == quantity.Open {
+		r.Missing = x.lacks(c)
+	}
+	return r
+}
+
+func (x evaluator) askTruth(c *rulebook.Condition) quantity.Truth {
+	switch c.Op {
+	case rulebook.OpDeclared:
+		return x.Declared(c.Name, c.Is)
+	case rulebook.OpMeets:
+		return x.meets(c)
+	case rulebook.OpFact:
+		return x.fact(c)
+	case rulebook.OpAmount:
+		return x.ReferenceAmount(c.Amounts)
+	case rulebook.OpSize:
+		return x.size(c)
+	case rulebook.OpKind:
+		return x.ReferenceKind(c.Kinds)
+	case rulebook.OpAbout:
+		return x.ClaimedAbout(c.About, c.Label)
+	case rulebook.OpUndecided:
+		return quantity.Open
+	default:
+		t, _ := x.NoIngredient(c)
+		return t
+	}
+}
+
+// lacks names what an open answer lacks.
+func (x evaluator) lacks(c *rulebook.Condition) string {
+	switch c.Op {
+	case rulebook.OpFact:
+		return "the fact " + quote(c.Name)
+	case rulebook.OpAmount:
+		return "the reference amount"
+	case rulebook.OpSize:
+		return "the mass of the " + c.Name
+	case rulebook.OpKind:
+		return "the reference food"
+	case rulebook.OpUndecided:
+		return c.Why.In("en")
+	case rulebook.OpMeets:
+		if _, ok := x.Reference(); c.Subject == "reference food" && !ok {
+			return "the reference food"
+		}
+	}
+	return ""
 }
 
 func (x evaluator) fact(c *rulebook.Condition) quantity.Truth {
@@ -203,22 +237,13 @@ func (x evaluator) size(c *rulebook.Condition) quantity.Truth {
 	return sign(c.Relation, quantity.Exactly(size.Sub(limit.Mul(share))))
 }
 
-// lacking names what an open answer lacks.
-func lacking(t quantity.Truth, what string) Result {
-	if t == quantity.Open {
-		return Result{Missing: what}
+func (x evaluator) meets(c *rulebook.Condition) quantity.Truth {
+	if c.Subject != "reference food" {
+		return x.Product().Meets(c.Name)
 	}
-	return Result{Truth: t}
-}
-
-func (x evaluator) meets(c *rulebook.Condition) Result {
-	s := x.Product()
-	if c.Subject == "reference food" {
-		ref, ok := x.Reference()
-		if !ok {
-			return Result{Missing: "the reference food"}
-		}
-		s = ref
+	ref, ok := x.Reference()
+	if !ok {
+		return quantity.Open
 	}
-	return Result{Truth: s.Meets(c.Name)}
+	return ref.Meets(c.Name)
 }

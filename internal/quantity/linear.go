@@ -75,18 +75,21 @@ func mergeTerms(a, b []term) []term {
 	return append(append(out, a...), b...)
 }
 
-// Sum adds many forms at once; its cost is linear in their terms, but for one sort.
+// Sum adds many forms at once; its cost is linear in their terms, but for one sort. What shares a denominator is added up first, so that
+// few sums need a new one.
 func Sum(forms iter.Seq[Linear]) Linear {
 	var s Linear
+	var known tally
 	sorted, last := true, 0
 	for l := range forms {
-		s.Known = s.Known.Add(l.Known)
+		known.add(l.Known)
 		for _, t := range l.terms {
 			sorted = sorted && t.v.Index > last
 			last = t.v.Index
 			s.terms = append(s.terms, t)
 		}
 	}
+	s.Known = known.sum()
 	if !sorted {
 		s.terms = united(s.terms)
 	}
@@ -94,6 +97,43 @@ func Sum(forms iter.Seq[Linear]) Linear {
 		s.ends = &[2]Ratio{s.end(true), s.end(false)}
 	}
 	return s
+}
+
+// A tally adds up ratios by denominator.
+type tally struct {
+	parts [4]Ratio
+	n     int
+	more  Ratio // of denominators beyond the first few
+}
+
+func (t *tally) add(r Ratio) {
+	if r.IsZero() {
+		return
+	}
+	for i := range t.n {
+		if t.parts[i].d == r.d {
+			t.parts[i] = t.parts[i].Add(r)
+			if t.parts[i].d != r.d { // they cancelled out
+				t.n--
+				t.parts[i] = t.parts[t.n]
+			}
+			return
+		}
+	}
+	if t.n == len(t.parts) {
+		t.more = t.more.Add(r)
+		return
+	}
+	t.parts[t.n] = r
+	t.n++
+}
+
+func (t *tally) sum() Ratio {
+	sum := t.more
+	for i := range t.n {
+		sum = sum.Add(t.parts[i])
+	}
+	return sum
 }
 
 // united orders terms and adds up those of one variable.
@@ -151,7 +191,8 @@ func (l Linear) High() Ratio {
 }
 
 func (l Linear) end(low bool) Ratio {
-	s := l.Known
+	var s tally
+	s.add(l.Known)
 	for _, t := range l.terms {
 		x := t.v.High
 		if low == (t.c.Sign() > 0) {
@@ -160,21 +201,22 @@ func (l Linear) end(low bool) Ratio {
 		if !t.c.isOne() {
 			x = t.c.Mul(x)
 		}
-		s = s.Add(x)
+		s.add(x)
 	}
-	return s
+	return s.sum()
 }
 
 // Central is the value where every uncertain part has a typical one.
 func (l Linear) Central() (Ratio, bool) {
-	s := l.Known
+	var s tally
+	s.add(l.Known)
 	for _, t := range l.terms {
 		if !t.v.Typical {
 			return Ratio{}, false
 		}
-		s = s.Add(t.c.Mul(t.v.Central))
+		s.add(t.c.Mul(t.v.Central))
 	}
-	return s, true
+	return s.sum(), true
 }
 
 // Variables lists what the form still depends on, in order.

@@ -134,7 +134,7 @@ func (c *Condition) asksProductOnly() bool {
 	switch c.Op {
 	case OpCompare:
 		return c.Subject == "" && !c.Relation.Relative()
-	case OpFact, OpAmount, OpSize, OpIngredient:
+	case OpFact, OpAmount, OpSize, OpIngredient, OpUndecided:
 		return true
 	case OpAll, OpAny, OpNot, OpCount, OpWhen:
 		return !slices.ContainsFunc(c.Parts, func(p *Condition) bool { return !p.asksProductOnly() })
