@@ -40,7 +40,7 @@ func (w world) Fact(name, is string) quantity.Truth {
 	return quantity.Open
 }
 func (w world) Has(name, item string) quantity.Truth {
-	if name == "added vitamins and minerals" {
+	if name == "nutrients added as such" {
 		return quantity.TruthOf(item == "iron")
 	}
 	return quantity.Open
@@ -121,8 +121,8 @@ func TestConditions(t *testing.T) {
 		{"a measured fact at its limit", `{"fact":"alcohol by volume","above":"1.2 %"}`, world{product: bread}, quantity.No},
 		{"a measured fact below its limit", `{"fact":"alcohol by volume","below":"1.3 %"}`, world{product: bread}, quantity.Yes},
 		{"a measured fact nobody stated", `{"fact":"polyols","above":"10 %"}`, world{product: bread}, quantity.Open},
-		{"a list that holds it", `{"fact":"added vitamins and minerals","has":"iron"}`, world{product: bread}, quantity.Yes},
-		{"a list without it", `{"fact":"added vitamins and minerals","has":"zinc"}`, world{product: bread}, quantity.No},
+		{"a list that holds it", `{"fact":"nutrients added as such","has":"iron"}`, world{product: bread}, quantity.Yes},
+		{"a list without it", `{"fact":"nutrients added as such","has":"zinc"}`, world{product: bread}, quantity.No},
 		{"a list nobody stated", `{"fact":"other list","has":"zinc"}`, world{product: bread}, quantity.Open},
 		{"a fact that is stated", `{"fact":"alcohol by volume","stated":true}`, world{product: bread}, quantity.Yes},
 		{"a fact that is not stated", `{"fact":"polyols","stated":true}`, world{product: bread}, quantity.No},

@@ -61,7 +61,7 @@ var acceptedCases = []struct{ name, doc string }{
 	{"changes", sold(`"yield":{"water":{"loss":"100 %"},"fat":{"gain":"8 %","oil":{"composition":{"components":{"FAT":"100 g"}}}}}`)},
 	{"gain of water", sold(`"yield":{"water":{"gain":"250 %"}}`)},
 	{"facts", sold(`"facts":{"alcohol by volume":"5 %","sold to":"other business","beverage":false,"protein efficiency ratio":"2.5","free acidity":"0.8 %",
-		"added vitamins and minerals":["vitamin-d","vitamin-e"]}`)},
+		"nutrients added as such":["vitamin-d","vitamin-e"]}`)},
 	{"claims", sold(`"claims":[{"text":"riche en oméga-3","language":"fr-CA"},{"claim":"fat-reduced","against":"r/1"}],"reference_foods":{"r/1":{"kind":"similar product","food":"sr:20038"}}`)},
 	{"escapes", `{"\u0069d":"\ud83d\ude00","ingredients":[{"id":"a\u0000","amount":"1\u0020g","food":"sr:20038"}]}`},
 	{"8 levels", nested(MaxLevels)},
@@ -227,12 +227,12 @@ func same[T comparable](t *testing.T, what string, got, want T) {
 }
 
 func TestFactsOfEveryForm(t *testing.T) {
-	r, faults := Decode([]byte(sold(`"facts":{"protein efficiency ratio":"2.5","free acidity":"0.8 %","added vitamins and minerals":["vitamin-d","vitamin-e"]}`)))
+	r, faults := Decode([]byte(sold(`"facts":{"protein efficiency ratio":"2.5","free acidity":"0.8 %","nutrients added as such":["vitamin-d","vitamin-e"]}`)))
 	if len(faults) > 0 {
 		t.Fatal(faults)
 	}
 	same(t, "a plain number", r.Facts["protein efficiency ratio"].Number.String(), "250 %")
 	same(t, "an amount", r.Facts["free acidity"].Number.String(), "0.8 %")
-	same(t, "a list", strings.Join(r.Facts["added vitamins and minerals"].List, " "), "vitamin-d vitamin-e")
+	same(t, "a list", strings.Join(r.Facts["nutrients added as such"].List, " "), "vitamin-d vitamin-e")
 	same(t, "what the list implies", r.Facts["vitamins or minerals added"].Flag, quantity.Yes)
 }

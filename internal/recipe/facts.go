@@ -19,7 +19,8 @@ type FactRule struct {
 	Unit   string   // of Measure; empty is a plain number, which may also be written in per cent
 	Says   string
 
-	Implies string // a yes-or-no fact that holds when a Listed one is stated
+	Implies   string // a yes-or-no fact that holds when a Listed one names one of ImpliedBy
+	ImpliedBy []string
 }
 
 // Facts is the closed register. An unstated fact is unknown, never false; what a market takes instead stands in its rules.
@@ -49,7 +50,7 @@ var Facts = []FactRule{
 	{Name: "replaced food has added salt", Kind: YesNo, Says: "the food that this one resembles and replaces is normally processed with salt"},
 	{Name: "protein level reached after correction for quality", Kind: YesNo, Says: "the protein level of the claim is reached after correction for digestibility and amino acids"},
 	{Name: "named food in the meal meets the level", Kind: YesNo, Says: "the meal contains a food that meets the level of the claim, and the claim names it"},
-	{Name: "food group amounts for healthy reached", Kind: YesNo, Says: "the food-group amounts and the nutrient limits of the claim “healthy” (2024 text) are met"},
+	{Name: "food group amounts for healthy reached", Kind: YesNo, Says: "the food group equivalents that the claim “healthy” (2024 text) asks of the product are reached"},
 	{Name: "contains grain, fruit or vegetables", Kind: YesNo, Says: "the food is or contains a grain product, fruit or vegetable"},
 	{Name: "claimed nutrient without fortification", Kind: YesNo, Says: "the level of the claimed nutrient is reached without fortification"},
 	{Name: "whole grain 51 % or more", Kind: YesNo, Says: "whole grain makes 51 % or more of the weight per reference amount"},
@@ -73,7 +74,26 @@ var Facts = []FactRule{
 	{Name: "protein efficiency ratio", Kind: Measure, Says: "the efficiency ratio (PER) of the food's protein, determined by the law's official method"},
 	{Name: "protein efficiency ratio against casein", Kind: Measure, Says: "the efficiency ratio of the food's protein over that of casein"},
 	{Name: "reasonable daily intake", Kind: Measure, Unit: "g", Says: "what the law takes for a day's intake of the food, where its category does not tell"},
-	{Name: "added vitamins and minerals", Kind: Listed, Values: micronutrients, Implies: "vitamins or minerals added", Says: "which vitamins and minerals are added"},
+	{Name: "nutrients added as such", Kind: Listed, Values: append([]string{"polyols"}, micronutrients...), Implies: "vitamins or minerals added", ImpliedBy: micronutrients,
+		Says: "which vitamins, minerals and sugar alcohols are added, by the names of quantities"},
+	{Name: "replaced food has added fat", Kind: YesNo, Says: "the food that this one resembles and replaces normally contains added fat"},
+	{Name: "reduction of added sodium", Kind: Measure, Unit: "%", Says: "how much less sodium is added than to the similar food"},
+	{Name: "fermentable carbohydrate", Kind: Measure, Unit: "%", Says: "starch, dextrins, sugars, oligosaccharides and other fermentable carbohydrate, by weight"},
+	{Name: "plaque pH stays at 5.7 or above", Kind: YesNo, Says: "the food does not lower plaque pH below 5.7 by bacterial fermentation during 30 minutes after eating"},
+	{Name: "random weight", Kind: YesNo, Says: "packages of the food differ in weight"},
+	{Name: "no nutrition table allowed", Kind: OneOf, Values: []string{"formulated liquid diet", "human milk fortifier or substitute", "meal replacement", "nutritional supplement", "very low energy diet food", "supplemented food", "no"}, Says: "the food is of a kind that has a table of its own law"},
+	{Name: "for children under 2", Kind: YesNo, Says: "the food is made for children under 2 years"},
+	{Name: "enriched grain product under a standard", Kind: YesNo, Says: "the food is an enriched grain product that conforms to a standard of identity"},
+	{Name: "half of the usual sodium added", Kind: YesNo, Says: "50 per cent less sodium is added than is normally added to the reference food"},
+	{Name: "antioxidant activity recognised", Kind: YesNo, Says: "every nutrient named has a reference intake and recognised antioxidant activity"},
+	{Name: "served for immediate consumption", Kind: YesNo, Says: "the food is served in a restaurant or the like"},
+	{Name: "fats and oils predominate", Kind: YesNo, Says: "fats and oils together weigh at least as much as the heaviest other ingredient"},
+	{Name: "single-ingredient sugar, honey or syrup", Kind: YesNo, Says: "the food is sugar, honey or a syrup, and nothing else"},
+	{Name: "similar supplements exceed low calorie", Kind: YesNo, Says: "similar dietary supplements are above the level of low calorie"},
+	{Name: "unit is usually divided", Kind: YesNo, Says: "the unit is divided for eating, such as a cake, a pie or a pizza"},
+	{Name: "food group", Kind: OneOf, Values: []string{"vegetable", "fruit", "grain", "dairy", "game meat", "seafood", "egg", "beans, peas or lentils", "nuts, seeds or soy", "oil", "oil-based spread", "oil-based dressing",
+		"mixed product", "encouraged foods with nothing but water", "water, tea or coffee"}, Says: "which food group the food belongs to, where a claim has limits by group"},
+	{Name: "saturated fat not inherent in seafood, nuts, seeds or soy", Kind: Measure, Unit: "%", Says: "share of the food's saturated fat that does not come with seafood, nuts, seeds or soy"},
 	{Name: "added plant sterols", Kind: OneOf, Values: []string{"sterols", "stanols", "both", "no"}, Says: "whether plant sterols, plant stanols or their esters are added"},
 	{Name: "infant formula", Kind: OneOf, Values: []string{"infant formula", "follow-on formula", "no"}, Says: "the food is a formula for infants, and of which kind"},
 	{Name: "minced meat", Kind: OneOf, Values: []string{"lean minced meat", "minced pure beef", "minced meat containing pigmeat", "minced meat of other species", "no"}, Says: "the food is minced meat, and of which name"},
@@ -88,7 +108,7 @@ var Facts = []FactRule{
 	{Name: "benzo(a)pyrene", Kind: Measure, Unit: "µg", Says: "benzo(a)pyrene in 1 kg"},
 	{Name: "four polycyclic aromatic hydrocarbons", Kind: Measure, Unit: "µg", Says: "benzo(a)pyrene, benz(a)anthracene, benzo(b)fluoranthene and chrysene together, in 1 kg"},
 	{Name: "made for baby food", Kind: YesNo, Says: "the oil or fat is meant for the making of food for infants and young children"},
-	{Name: "kind of food", Kind: OneOf, Values: []string{"fat or oil", "fruit or vegetable", "dairy product", "mayonnaise or dressing", "snack bar", "mustard", "other food"}, Says: "which kind of food, where a rule names kinds"},
+	{Name: "kind of food", Kind: OneOf, Values: []string{"fat or oil", "fruit or vegetable", "dairy product", "mayonnaise or dressing", "snack bar", "mustard", "meat or poultry, not ground", "ground meat or poultry", "fish or seafood", "chewing gum", "hard candy or breath freshener", "other food"}, Says: "which kind of food, where a rule names kinds"},
 	{Name: "trans origin", Kind: OneOf, Values: []string{"ruminant", "industrial"}, Says: "where all trans fatty acids of the product come from"},
 }
 

@@ -29,11 +29,19 @@ func (d *decoder) facts(at int32) map[string]Fact {
 			return
 		}
 		out[name] = d.fact(m, rule)
-		if _, said := out[rule.Implies]; rule.Implies != "" && !said {
+	})
+	for name := range out {
+		rule, _ := factRule(name)
+		if _, said := out[rule.Implies]; rule.implied(out[name].List) && !said {
 			out[rule.Implies] = Fact{Flag: quantity.Yes}
 		}
-	})
+	}
 	return out
+}
+
+// implied tells whether a list names what implies another fact.
+func (r *FactRule) implied(list []string) bool {
+	return slices.ContainsFunc(list, func(s string) bool { return slices.Contains(r.ImpliedBy, s) })
 }
 
 func factRule(name string) (FactRule, bool) {
