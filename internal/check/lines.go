@@ -202,7 +202,10 @@ func (m *market) table() Table {
 	if d, ok := m.law.Declaration(); ok {
 		t.Title, t.Rule = d.Body.Title.In(m.language()), d.ID
 		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
-		t.Servings, t.Simplified = v.servings(d.Body), v.simplified(d.Body.Simplified)
+		t.Servings = v.servings(d.Body)
+		if f := v.formats(d.Body.Simplified); len(f) > 0 {
+			t.Simplified, t.OtherFormats = &f[0], f[1:]
+		}
 	}
 	return t
 }

@@ -76,6 +76,8 @@ type Table struct {
 	Statements []Statement `json:"statements"`
 	Servings   *Servings   `json:"servings_per_package,omitzero"`
 	Simplified *Simplified `json:"simplified_format,omitzero"`
+	// OtherFormats are further shorter formats, and what may be repeated elsewhere.
+	OtherFormats []Simplified `json:"other_formats,omitzero"`
 }
 
 // Servings is how many servings the package holds.
@@ -88,8 +90,12 @@ type Servings struct {
 // Simplified is a shorter format the law allows this product: which lines may go, and what must then be said.
 type Simplified struct {
 	Name     string   `json:"name"`
-	LeaveOut []string `json:"leave_out"` // terms
+	LeaveOut []string `json:"leave_out"`        // terms
+	Repeats  []string `json:"repeats,omitzero"` // terms that may be repeated beside the whole table; then nothing is left out
 	Says     string   `json:"says,omitzero"`
+	Named    []string `json:"named,omitzero"` // what Says names
+	// SaysPresence is "optional" where Says may stand, "open" where that is not determined; empty where it must.
+	SaysPresence string `json:"says_presence,omitzero"`
 	// Texts is what must be said in each of the market's languages, where it has several.
 	Texts map[string]string `json:"texts,omitzero"`
 }

@@ -1,7 +1,6 @@
 package check
 
 import (
-	"slices"
 	"strings"
 
 	"github.com/shopspring/decimal"
@@ -47,44 +46,4 @@ func count(bands []rulebook.CountBand, exact quantity.Ratio) decimal.Decimal {
 		return exact.Round(b.Nearest, quantity.TiesUp)
 	}
 	return decimal.Zero // lint sees to a last band without an edge
-}
-
-// simplified is the shorter format, where enough quantities are insignificant.
-func (v view) simplified(f *rulebook.Simplified) *Simplified {
-	if f == nil || f.Where != nil && v.truth(f.Where) != quantity.Yes {
-		return nil
-	}
-	truths := make([]quantity.Truth, len(f.Of))
-	out := &Simplified{Name: f.Name.In(v.language()), LeaveOut: []string{}}
-	var left []*rulebook.Line
-	for i, one := range f.Of {
-		truths[i] = v.truth(one.If)
-		if truths[i] == quantity.Yes && !slices.Contains(f.Keeps, one.Quantity) && !v.lines[one.Quantity].needed {
-			left = append(left, v.lines[one.Quantity].line)
-		}
-	}
-	if quantity.AtLeast(f.Needed, truths...) != quantity.Yes || len(left) == 0 {
-		return nil
-	}
-	out.LeaveOut = termsOf(left, v.language())
-	texts := map[string]string{}
-	for _, lang := range v.law.Market.Languages {
-		if says, ok := f.Says[lang]; ok {
-			texts[lang] = strings.ReplaceAll(says, "{names}", joined(termsOf(left, lang), lang))
-		}
-	}
-	out.Says = texts[v.language()]
-	if len(texts) > 1 {
-		out.Texts = texts
-	}
-	return out
-}
-
-// termsOf are the first terms of lines in a language.
-func termsOf(lines []*rulebook.Line, lang string) []string {
-	out := make([]string, len(lines))
-	for i, l := range lines {
-		out[i] = l.Terms[lang][0]
-	}
-	return out
 }

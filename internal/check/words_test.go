@@ -9,7 +9,7 @@ func TestShortFormsInFrench(t *testing.T) {
 	if m.Declaration.Simplified == nil || m.Declaration.Servings == nil {
 		t.Fatal("no simplified format, or no servings per package")
 	}
-	const left = "Source négligeable de Lipides saturés, Lipides trans, Cholestérol, Fibres, Sucres, Potassium et Fer"
+	const left = "Source négligeable de lipides saturés, lipides trans, cholestérol, fibres, sucres, potassium et fer"
 	if got := m.Declaration.Simplified.Texts["fr"]; got != left {
 		t.Errorf("the label states %q, want %q", got, left)
 	}

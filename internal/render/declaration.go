@@ -26,7 +26,7 @@ func (p *page) declaration(m *check.Market, o Options) {
 	p.additions(d, o)
 	p.notKnown(d)
 	p.omissions(d.Lines, o)
-	p.simplified(d.Simplified)
+	p.formats(d)
 	p.alternatives(d, o)
 	p.grounds(d.Lines, o)
 	if len(d.Statements) > 0 {

@@ -78,15 +78,26 @@ func (p *page) servings(s *check.Servings, o Options) {
 	p.languages(in(o.Language, s.Text, s.Texts), s.Texts)
 }
 
+// formats lists the shorter formats, and what may be repeated.
+func (p *page) formats(d *check.Table) {
+	if d.Simplified != nil {
+		p.simplified(d.Simplified)
+	}
+	for i := range d.OtherFormats {
+		p.simplified(&d.OtherFormats[i])
+	}
+}
+
 func (p *page) simplified(s *check.Simplified) {
-	if s == nil {
-		return
+	title, text := "A shorter format is allowed", s.Name+", without "+strings.Join(s.LeaveOut, ", ")
+	if len(s.Repeats) > 0 {
+		title, text = "May be repeated elsewhere", strings.Join(s.Repeats, ", ")+" ("+s.Name+")"
 	}
-	text := s.Name + ", without " + strings.Join(s.LeaveOut, ", ")
 	if s.Says != "" {
-		text += "; the label then states “" + strings.TrimSuffix(listless(s.Says, s.LeaveOut), ".") + "”"
+		states := map[string]string{"": "then states", "optional": "may then state", "open": "then states, where it must (not determined),"}[s.SaysPresence]
+		text += "; the label " + states + " “" + strings.TrimSuffix(listless(s.Says, s.Named), ".") + "”"
 	}
-	p.run("A shorter format is allowed", strings.TrimSuffix(text, ".")+".")
+	p.run(title, strings.TrimSuffix(text, ".")+".")
 	p.languages(s.Says, s.Texts)
 }
 

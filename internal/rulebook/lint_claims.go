@@ -40,27 +40,45 @@ func (c *checker) declarations() {
 	})
 }
 
-// shortForms checks the simplified format and the count of servings.
+// shortForms checks the shorter formats and the count of servings.
 func (c *checker) shortForms(id, field string, d *Declaration, lines map[string]bool) {
-	if f := d.Simplified; f != nil {
-		at := field + "/simplified"
-		c.words("declaration", id, at+"/name", f.Name)
-		c.condition("declaration", id, at+"/where", "simplified", f.Where)
-		if f.Needed < 1 || f.Needed > len(f.Of) {
-			c.bad("declaration", id, at, "%d of %d cannot be insignificant", f.Needed, len(f.Of))
-		}
-		for _, one := range f.Of {
-			c.condition("declaration", id, at+"/of/"+one.Quantity, "simplified", one.If)
-			if !lines[one.Quantity] || one.If == nil {
-				c.bad("declaration", id, at+"/of", "%q has no line or no condition", one.Quantity)
-			}
-		}
+	for i := range d.Simplified {
+		c.simplified(id, field+"/simplified/"+strconv.Itoa(i), &d.Simplified[i], lines)
 	}
 	if s := d.Servings; s != nil {
 		for i, b := range s.Bands {
 			if open := b.Below == nil && b.AtMost == nil; open != (i == len(s.Bands)-1) || !b.Nearest.IsPositive() {
 				c.bad("declaration", id, field+"/servings per package/bands", "must have edges but for the last, and steps above zero")
 			}
+		}
+	}
+}
+
+func (c *checker) simplified(id, at string, f *Simplified, lines map[string]bool) {
+	bad := func(f, format string, args ...any) { c.bad("declaration", id, at+f, format, args...) }
+	c.words("declaration", id, at+"/name", f.Name)
+	c.condition("declaration", id, at+"/where", "simplified", f.Where)
+	c.condition("declaration", id, at+"/says if", "simplified", f.SaysIf)
+	if f.Needed > len(f.Of) || f.Needed < 1 && len(f.Of) > 0 {
+		bad("", "%d of %d cannot be insignificant", f.Needed, len(f.Of))
+	}
+	leaves := len(f.Of)+len(f.Leaves) > 0
+	if leaves == (len(f.Shows) > 0) || f.Repeats && leaves {
+		bad("", "either leaves lines out (of, leaves out) or shows some alone; what is repeated is shown")
+	}
+	members := func(what string, list []Insignificant, always bool) {
+		for _, one := range list {
+			c.condition("declaration", id, at+"/"+what+"/"+one.Quantity, "simplified", one.If)
+			if !lines[one.Quantity] || one.If == nil && !always {
+				bad("/"+what, "%q has no line or no condition", one.Quantity)
+			}
+		}
+	}
+	members("of", f.Of, false)
+	members("leaves out", f.Leaves, true)
+	for _, q := range slices.Concat(f.Keeps, f.Shows) {
+		if !lines[q] {
+			bad("", "%q has no line", q)
 		}
 	}
 }

@@ -300,25 +300,31 @@ type Declaration struct {
 	Number     map[string]Number `json:"number"` // by language
 	Lines      []Line            `json:"lines"`
 	Together   [][]string        `json:"together,omitzero"` // lines that all stand once one of them does
-	Simplified *Simplified       `json:"simplified,omitzero"`
+	Simplified []Simplified      `json:"simplified,omitzero"`
 	Servings   *Servings         `json:"servings per package,omitzero"`
 	Statements []Statement       `json:"statements,omitzero"`
 }
 
-// Simplified is the shorter form a law allows when enough of its nutrients are insignificant.
+// A Simplified is a shorter form of the declaration that a law allows, or what of it may be repeated elsewhere.
 type Simplified struct {
-	Name   Words           `json:"name"`
-	Where  *Condition      `json:"where,omitzero"`
-	Needed int             `json:"at least"` // so many of Of must be insignificant
-	Of     []Insignificant `json:"of"`
-	Keeps  []string        `json:"keeps"` // lines that stay in any case
-	Says   Words           `json:"says"`  // with {names} of what is left out; empty where nothing need be said
+	Name    Words           `json:"name"`
+	Where   *Condition      `json:"where,omitzero"`
+	Needed  int             `json:"at least,omitzero"`   // so many of Of must be insignificant
+	Of      []Insignificant `json:"of,omitzero"`         // counted, and left out
+	Leaves  []Insignificant `json:"leaves out,omitzero"` // left out without being counted or named
+	Shows   []string        `json:"shows,omitzero"`      // these lines alone stand
+	Repeats bool            `json:"repeats,omitzero"`    // Shows may be repeated beside the whole table
+	Keeps   []string        `json:"keeps,omitzero"`      // lines that stay in any case
+	// KeepsClaimed keeps the lines of what a claim on the label is about.
+	KeepsClaimed bool       `json:"keeps claimed,omitzero"`
+	Says         Words      `json:"says,omitzero"`    // with {names} of what of Of is left out; empty where nothing need be said
+	SaysIf       *Condition `json:"says if,omitzero"` // where Says must stand; elsewhere it may
 }
 
-// Insignificant says when a quantity counts as insignificant.
+// Insignificant says when a quantity counts as insignificant; always without a condition.
 type Insignificant struct {
 	Quantity string     `json:"quantity"`
-	If       *Condition `json:"if"`
+	If       *Condition `json:"if,omitzero"`
 }
 
 // Servings is how many servings a package holds, rounded by its own bands of plain numbers.
