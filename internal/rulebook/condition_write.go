@@ -45,7 +45,13 @@ func (c *Condition) members() []member {
 	case OpMeets:
 		return c.some(member{"meets", c.Name}, member{"subject", c.Subject})
 	case OpFact:
-		return append(c.some(member{"fact", c.Name}, member{"is", c.Is}), c.related()...)
+		out := c.some(member{"fact", c.Name}, member{"is", c.Is}, member{"has", c.Has})
+		if c.Stated {
+			out = append(out, member{"stated", true})
+		}
+		return append(out, c.related()...)
+	case OpUndecided:
+		return []member{{string(OpUndecided), c.Why}}
 	case OpSize:
 		return append(c.some(member{string(OpSize), c.Name}, member{"as", c.As}), c.related()...)
 	case OpCompare:
