@@ -10,8 +10,8 @@ import (
 
 // Difference lists what differs between two sets: every version of a rule that is in one only, or that reads otherwise,
 // and every market's own page, market by market and kind by kind; practice stands last.
-func Difference(old, now *Book) []Edit {
-	out := []Edit{}
+func Difference(old, now *Book) []Change {
+	out := []Change{}
 	for _, j := range union(old.Jurisdictions(), now.Jurisdictions()) {
 		out = append(out, differenceOfMarkets(j, old.market(j), now.market(j))...)
 	}
@@ -26,59 +26,60 @@ func (b *Book) market(jurisdiction string) *Rules {
 	return &Rules{}
 }
 
-func differenceOfMarkets(j string, old, now *Rules) []Edit {
-	var out []Edit
-	if m := members(&old.Market, &now.Market); len(m) > 0 {
-		c := Edit{Jurisdiction: j, Kind: "jurisdiction", Rule: j + "/jurisdiction", Effect: Edited, Members: m, Days: []Day{}}
-		switch {
-		case old.Market.Jurisdiction == "":
-			c.Effect, c.Members = Added, []Member{}
-		case now.Market.Jurisdiction == "":
-			c.Effect, c.Members = Removed, []Member{}
-		}
-		c.Says = c.says()
-		out = append(out, c)
+func differenceOfMarkets(j string, old, now *Rules) []Change {
+	var out []Change
+	page := Change{Kind: "jurisdiction", ID: j + "/jurisdiction", Effect: Edited, Members: members(&old.Market, &now.Market)}
+	switch {
+	case old.Market.Jurisdiction == "":
+		page.Effect, page.Members = Added, nil
+	case now.Market.Jurisdiction == "":
+		page.Effect, page.Members = Removed, nil
+	}
+	if page.Effect != Edited || page.Members != nil {
+		out = append(out, page.finish(j, nil, nil))
 	}
 	return append(out, differenceOfTables(j, old.tables(), now.tables())...)
 }
 
-func differenceOfTables(j string, old, now []table) []Edit {
-	var out []Edit
+func differenceOfTables(j string, old, now []table) []Change {
+	var out []Change
 	for i := range old {
-		for _, c := range old[i].difference(now[i]) {
-			c.Jurisdiction, c.Kind = j, old[i].kind()
-			out = append(out, c)
-		}
+		out = append(out, old[i].difference(j, now[i])...)
 	}
 	return out
 }
 
-func (t *rows[T]) difference(other table) []Edit {
+func (t *rows[T]) difference(j string, other table) []Change {
 	now, ok := other.(*rows[T])
 	if !ok {
 		return nil
 	}
 	before, after := byID(*t.rules), byID(*now.rules)
-	var out []Edit
-	for _, id := range union(ids(*t.rules), ids(*now.rules)) {
-		out = append(out, differenceOfVersions(id, before[id], after[id])...)
+	var out []Change
+	for _, id := range union(sorted(before), sorted(after)) {
+		out = append(out, differenceOfVersions(Change{Jurisdiction: j, Kind: t.file, ID: id}, before[id], after[id])...)
 	}
 	return out
 }
 
 // differenceOfVersions compares the versions of a rule that begin on the same day for the same edition.
-func differenceOfVersions[T any](id string, old, now *Rule[T]) []Edit {
+func differenceOfVersions[T any](c Change, old, now *Rule[T]) []Change {
 	before, after := old.byStart(), now.byStart()
-	var out []Edit
+	var out []Change
 	for _, key := range union(sorted(before), sorted(after)) {
-		a, b := before[key], after[key]
-		c := change(id, a, b, [3]string{Added, Removed, Edited})
-		if c.Effect == Edited {
-			c.Members = append(c.Members, members(&a.Head, &b.Head)...)
-			c.Says = c.says()
-		}
-		if c.Effect != Edited || len(c.Members) > 0 {
-			out = append(out, c)
+		one, was, is := c, before[key], after[key]
+		switch {
+		case was == nil:
+			one.Effect, one.Is = Added, &is.Head
+			out = append(out, one.finish(c.Jurisdiction, nil, nil))
+		case is == nil:
+			one.Effect, one.Was = Removed, &was.Head
+			out = append(out, one.finish(c.Jurisdiction, nil, nil))
+		default:
+			one.Effect, one.Was, one.Is, one.Members = Edited, &was.Head, &is.Head, members(&was.Head, &is.Head)
+			if one = one.finish(c.Jurisdiction, &was.Body, &is.Body); len(one.Members) > 0 {
+				out = append(out, one)
+			}
 		}
 	}
 	return out
@@ -109,14 +110,6 @@ func byID[T any](rules []Rule[T]) map[string]*Rule[T] {
 	return out
 }
 
-func ids[T any](rules []Rule[T]) []string {
-	out := make([]string, len(rules))
-	for i := range rules {
-		out[i] = rules[i].ID
-	}
-	return out
-}
-
 // union sorts the names of two lists.
 func union(a, b []string) []string {
 	out := slices.Concat(a, b)
@@ -125,27 +118,27 @@ func union(a, b []string) []string {
 }
 
 // says is the effect in short. Plain values of one or two members stand with it.
-func (c *Edit) says() string {
+func (c *Change) says() string {
 	since := func(h *Head) string { return "version from " + h.From }
 	switch {
-	case c.Before == nil && c.After == nil:
+	case c.Was == nil && c.Is == nil:
 		return "the market's own page is " + c.Effect + c.memberNames()
-	case c.Before == nil:
-		return c.Effect + ": " + since(c.After) + ", " + c.After.Source.Ref
-	case c.After == nil:
-		return c.Effect + ": " + since(c.Before) + ", " + c.Before.Source.Ref
+	case c.Was == nil:
+		return c.Effect + ": " + since(c.Is) + ", " + c.Is.Source.Ref
+	case c.Is == nil:
+		return c.Effect + ": " + since(c.Was) + ", " + c.Was.Source.Ref
 	case len(c.Members) == 0:
-		return c.Effect + ": the same under " + c.After.Source.Ref
+		return c.Effect + ": the same under " + c.Is.Source.Ref
 	}
 	return c.Effect + c.memberNames()
 }
 
-func (c *Edit) memberNames() string {
+func (c *Change) memberNames() string {
 	var parts []string
 	for _, m := range c.Members {
 		s := m.Member
-		if before, after := m.Before.Kind(), m.After.Kind(); before == '"' && after == '"' && len(m.Before)+len(m.After) < 80 {
-			s += " " + plainText(m.Before) + " becomes " + plainText(m.After)
+		if before, after := m.Was.Kind(), m.Is.Kind(); before == '"' && after == '"' && len(m.Was)+len(m.Is) < 80 {
+			s += " " + plainText(m.Was) + " becomes " + plainText(m.Is)
 		}
 		parts = append(parts, s)
 	}

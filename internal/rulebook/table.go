@@ -15,8 +15,7 @@ type table interface {
 	kind() string // the name of the file without .json
 	decode(l *loader, f ruleFile, jurisdiction string)
 	heads(visit func(kind, id string, h *Head))
-	between(old, now *selection) []Edit // in force on two days
-	difference(now table) []Edit        // of the same kind in another set
+	difference(jurisdiction string, now table) []Change // to the same kind in another set
 }
 
 // tables are the kinds of a market. A new kind needs its line here.

@@ -5,6 +5,11 @@ type Visit func(kind, id string, h *Head)
 
 // Each visits every rule that holds, kind by kind, in the order of the files.
 func (l *Law) Each(visit Visit) {
+	l.each(func(kind, id string, h *Head, _ any) { visit(kind, id, h) })
+}
+
+// each is Each with a pointer to the rule's body.
+func (l *Law) each(visit func(kind, id string, h *Head, body any)) {
 	visitEach("definitions", l.Definitions, visit)
 	visitEach("energy", l.Energy, visit)
 	visitEach("reference_values", l.References, visit)
@@ -20,8 +25,8 @@ func (l *Law) Each(visit Visit) {
 	visitEach("conditions", l.Conditions, visit)
 }
 
-func visitEach[T any](kind string, l List[T], visit Visit) {
+func visitEach[T any](kind string, l List[T], visit func(kind, id string, h *Head, body any)) {
 	for _, a := range l.All {
-		visit(kind, a.ID, a.Head)
+		visit(kind, a.ID, a.Head, a.Body)
 	}
 }
