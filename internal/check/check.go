@@ -86,37 +86,28 @@ func name(ingredient string) string {
 
 // accept checks the request and settles the markets.
 func (c *checker) accept() recipe.Faults {
-	var faults recipe.Faults
+	faults := c.request.Faults(c.book)
 	bad := func(at, code, format string, args ...any) {
 		faults = append(faults, recipe.Fault{Pointer: at, Code: code, Says: fmt.Sprintf(format, args...)})
 	}
-	if !isDate(c.request.On) {
-		bad("on", "not-a-date", "%q is no date; write yyyy-mm-dd", c.request.On)
-	}
-	if t := c.request.Transition; t != rulebook.WhenRequired && t != rulebook.Newest {
-		bad("transition", "unknown-transition", `%q is neither "required" nor "newest"`, t)
-	}
-	if d := c.request.Detail; d != "" && d != "contributions" {
-		bad("detail", "unknown-detail", `%q is no detail; known is "contributions"`, d)
-	}
-	at := "in"
-	if len(c.request.In) == 0 {
-		c.request.In, at = c.recipe.Jurisdictions, "/jurisdictions"
-	}
-	if len(c.request.In) == 0 {
-		c.request.In = c.book.Jurisdictions()
-	}
 	known := c.book.Jurisdictions()
-	for _, j := range c.request.In {
+	unknown := func(at, j, more string) {
 		if !slices.Contains(known, j) {
-			bad(at, "unknown-market", "%q is no market of this rule set; known are %s", j, strings.Join(known, ", "))
+			bad(at, "unknown-market", "%q is no market of this rule set; known are %s%s", j, strings.Join(known, ", "), more)
 		}
+	}
+	if len(c.request.In) == 0 {
+		c.request.In = c.recipe.Jurisdictions
+		for _, j := range c.request.In {
+			unknown("/jurisdictions", j, "")
+		}
+	}
+	if len(c.request.In) == 0 {
+		c.request.In = known
 	}
 	for i, cl := range c.recipe.Claims {
 		for _, j := range cl.In {
-			if !slices.Contains(known, j) {
-				bad(fmt.Sprintf("/claims/%d/in", i), "unknown-market", "%q is no market of this rule set; known are %s", j, strings.Join(known, ", "))
-			}
+			unknown(fmt.Sprintf("/claims/%d/in", i), j, "")
 		}
 		if cl.Text != "" && cl.Claim != "" {
 			bad(fmt.Sprintf("/claims/%d", i), "claim-twice", "a claim is asked for by its words or by its name, not by both")
@@ -124,19 +115,12 @@ func (c *checker) accept() recipe.Faults {
 	}
 	for member, keys := range c.perMarket() {
 		for _, j := range keys {
-			if j != "default" && !slices.Contains(known, j) {
-				bad("/"+member+"/"+j, "unknown-market", "%q is no market of this rule set; known are %s, and default", j, strings.Join(known, ", "))
+			if j != "default" {
+				unknown("/"+member+"/"+j, j, ", and default")
 			}
 		}
 	}
 	slices.SortStableFunc(faults, func(a, b recipe.Fault) int { return strings.Compare(a.Pointer, b.Pointer) })
-	for _, id := range c.request.Without {
-		presumed := slices.ContainsFunc(c.book.Presumptions, func(r rulebook.Rule[rulebook.Presumption]) bool { return r.ID == id })
-		origin := slices.ContainsFunc(c.book.Origins, func(r rulebook.Rule[rulebook.Origin]) bool { return r.ID == id })
-		if id != "all" && !presumed && !origin {
-			bad("without", "unknown-presumption", "%q is no presumption of this rule set", id)
-		}
-	}
 	return faults
 }
 
