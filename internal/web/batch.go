@@ -3,7 +3,9 @@ package web
 import (
 	"bytes"
 	"compress/gzip"
+	"context"
 	"encoding/json"
+	"errors"
 	"fmt"
 	"io"
 	"net/http"
@@ -84,12 +86,12 @@ func (x *exchange) stream(mediaType string, lines []numbered) {
 		defer z.Close()
 		to, flush = z, func() { z.Flush() }
 	}
-	x.started, x.record.status = true, http.StatusOK
 	x.w.WriteHeader(http.StatusOK)
+	x.started, x.record.status = true, http.StatusOK
 	defer func() { x.record.bytesOut = out.n }()
 	for _, l := range lines {
-		if x.r.Context().Err() != nil {
-			return
+		if errors.Is(x.r.Context().Err(), context.Canceled) {
+			return // nobody listens any more
 		}
 		to.Write(x.answer(l, out.n))
 		flush()
@@ -132,6 +134,9 @@ func (x *exchange) judge(doc []byte) (report []byte, p *Problem) {
 			report, p = nil, problem(internal, "")
 		}
 	}()
+	if x.r.Context().Err() != nil {
+		return nil, problem(busy, "The time for this batch is over; send the line again.")
+	}
 	if most := x.Limits.Body; int64(len(doc)) > most {
 		return nil, problem(tooLarge, fmt.Sprintf("The line has %d bytes; at most %d are read.", len(doc), most))
 	}

@@ -40,20 +40,11 @@ func (x *exchange) check(ctx context.Context, doc []byte) ([]byte, *Problem) {
 		return nil, p
 	}
 	defer done()
-	o, faults := readOrder(doc)
-	if len(faults) > 0 {
-		return nil, faultyDocument(faults)
-	}
-	book := x.rules.Book
-	if o.rules != "" && o.rules != book.Digest {
-		p := problem(notLoaded, "The rule set "+o.rules+" is not loaded.")
-		p.Loaded = book.Digest
+	o, p := x.order(doc)
+	if p != nil {
 		return nil, p
 	}
-	if o.request.On == "" {
-		o.request.On = x.today()
-	}
-	report, faults := check.Check(o.recipe, book, o.request)
+	report, faults := check.Check(o.recipe, x.rules.Book, o.request)
 	if len(faults) > 0 {
 		return nil, faultyDocument(o.place(faults))
 	}
@@ -63,6 +54,24 @@ func (x *exchange) check(ctx context.Context, doc []byte) ([]byte, *Problem) {
 		return nil, problem(internal, "")
 	}
 	return b.Bytes(), nil
+}
+
+// order reads a document. What is wrong with the request beside the recipe is told together with what is wrong with both as documents.
+func (x *exchange) order(doc []byte) (*order, *Problem) {
+	o, faults := readOrder(doc)
+	if o.request.On == "" {
+		o.request.On = x.today()
+	}
+	book := x.rules.Book
+	if len(faults) > 0 {
+		return nil, faultyDocument(append(faults, o.place(o.request.Faults(book))...))
+	}
+	if o.rules != "" && o.rules != book.Digest {
+		p := problem(notLoaded, "The rule set "+o.rules+" is not loaded.")
+		p.Loaded = book.Digest
+		return nil, p
+	}
+	return o, nil
 }
 
 // place points faults of a check into the document that was sent.
@@ -77,16 +86,4 @@ func (o *order) place(faults recipe.Faults) recipe.Faults {
 		out[i] = f
 	}
 	return out
-}
-
-// requestCodes are the codes of faults that check finds.
-func requestCodes() []recipe.CodeRule {
-	return []recipe.CodeRule{
-		{Code: "not-a-date", Says: "the text is no date of the form yyyy-mm-dd"},
-		{Code: "unknown-transition", Says: `the transition is neither "required" nor "newest"`},
-		{Code: "unknown-detail", Says: `the detail is not "contributions"`},
-		{Code: "unknown-market", Says: "the rule set has no such market"},
-		{Code: "unknown-presumption", Says: "the rule set has no such presumption"},
-		{Code: "claim-twice", Says: "a claim is asked for by its words and by its name"},
-	}
 }

@@ -29,7 +29,7 @@ type exchange struct {
 func (s *service) serve(t route) http.Handler {
 	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
 		x := &exchange{service: s, w: w, r: r, id: requestID(r), rules: s.Rules(), record: newRecord(t.pattern, r.Method, s.Now())}
-		x.secure()
+		secure(w.Header(), x.id)
 		defer x.finish()
 		defer x.recover()
 		if p := x.run(t); p != nil {
@@ -60,9 +60,8 @@ func (x *exchange) run(t route) *Problem {
 }
 
 // secure sets the headers that every answer has.
-func (x *exchange) secure() {
-	h := x.w.Header()
-	h.Set("X-Request-Id", x.id)
+func secure(h http.Header, id string) {
+	h.Set("X-Request-Id", id)
 	h.Set("X-Content-Type-Options", "nosniff")
 	h.Set("Content-Security-Policy", "default-src 'none'; frame-ancestors 'none'")
 	h.Set("Referrer-Policy", "no-referrer")
@@ -99,6 +98,7 @@ func (x *exchange) recover() {
 }
 
 func (x *exchange) panicked(cause any) {
+	x.record.panics++
 	says := fmt.Sprintf("%T", cause)
 	if err, ok := cause.(runtime.Error); ok {
 		says = err.Error()
@@ -142,6 +142,7 @@ func (x *exchange) body(most int64) ([]byte, *Problem) {
 	}
 	doc, err := io.ReadAll(http.MaxBytesReader(x.w, x.r.Body, most))
 	x.record.bytesIn = int64(len(doc))
+	http.NewResponseController(x.w).SetReadDeadline(time.Time{}) // it has arrived; a deadline that passes now would cancel the work
 	var over *http.MaxBytesError
 	switch {
 	case errors.As(err, &over):

@@ -95,7 +95,7 @@ func getProblems(x *exchange) *Problem {
 	for _, k := range kinds() {
 		list.Problems = append(list.Problems, k.page())
 	}
-	for _, c := range slices.Concat(recipe.Codes, requestCodes(), ownCodes()) {
+	for _, c := range slices.Concat(recipe.Codes, check.Codes, ownCodes()) {
 		list.Codes = append(list.Codes, codePage(c))
 	}
 	return x.replyJSON(list, true)

@@ -40,6 +40,7 @@ type kind struct {
 var (
 	notJSON       = kind{"not-json", 400, "The body is not JSON", "The body is no JSON text in UTF-8, or something follows it. Nothing of it was used; the faults tell where reading ended."}
 	badRequest    = kind{"bad-request", 400, "The request is malformed", "A parameter of the query is not known, stands twice, is missing or cannot be read. Each fault names its parameter."}
+	unauthorized  = kind{"unauthorized", 401, "The caller is not known", "A door that lets only known callers in told so. The header WWW-Authenticate tells how to become one."}
 	notFound      = kind{"not-found", 404, "There is nothing here", "No route has this path, or the rule set has no such market, the open table no such food, or the service no such schema."}
 	notAllowed    = kind{"method-not-allowed", 405, "The method does not fit the path", "The header Allow lists the methods of this path."}
 	notAcceptable = kind{"not-acceptable", 406, "No form of the answer is acceptable", "The header Accept excludes every media type in which this path answers."}
@@ -56,7 +57,7 @@ var (
 )
 
 func kinds() []kind {
-	return []kind{notJSON, badRequest, notFound, notAllowed, notAcceptable, timeout, notLoaded, tooLarge, answerLarge, queryLong, unsupported, faulty, tooMany, internal, busy}
+	return []kind{notJSON, badRequest, unauthorized, notFound, notAllowed, notAcceptable, timeout, notLoaded, tooLarge, answerLarge, queryLong, unsupported, faulty, tooMany, internal, busy}
 }
 
 // Codes of faults that a recipe alone cannot have. Those of recipes are recipe.Codes, those of requests checkCodes.
@@ -122,4 +123,33 @@ func faultyDocument(faults recipe.Faults) *Problem {
 		p.Faults = append(p.Faults, Fault{Pointer: &f.Pointer, Code: f.Code, Says: f.Says})
 	}
 	return p
+}
+
+// Refuse writes a problem that a door finds itself, by the last segment of its type; an unknown one is internal.
+func Refuse(w http.ResponseWriter, r *http.Request, name, detail string) {
+	p := problem(internal, detail)
+	for _, k := range kinds() {
+		if k.Name == name {
+			p = problem(k, detail)
+		}
+	}
+	if p.Status == unauthorized.Status {
+		p.with("WWW-Authenticate", "Bearer")
+	}
+	p.RequestID = requestID(r)
+	secure(w.Header(), p.RequestID)
+	p.write(w, r)
+}
+
+// write sends a problem.
+func (p *Problem) write(w http.ResponseWriter, r *http.Request) (sent int) {
+	h := w.Header()
+	for _, name := range []string{"ETag", "Vary", "Content-Encoding"} {
+		h.Del(name)
+	}
+	for name, values := range p.header {
+		h[name] = values
+	}
+	h.Set("Cache-Control", "no-store")
+	return send(w, r, p.Status, typeProblem, p.bytes())
 }

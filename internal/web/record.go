@@ -20,6 +20,8 @@ type record struct {
 	problem       string // its type
 	bytesIn       int64
 	bytesOut      int64
+	panics        int
+	shed          int // requests and lines refused because of load
 	recipes       int
 	asked, open   int // verdicts and mandatory lines, and those of them that are not determined
 	verdicts      map[string]int
@@ -43,6 +45,9 @@ func (c *record) refused(p *Problem) {
 }
 
 func (c *record) faulty(p *Problem) {
+	if p.Status == busy.Status || p.Status == tooMany.Status {
+		c.shed++
+	}
 	if len(p.Faults) == 0 {
 		c.faults[p.Type]++
 	}
@@ -101,7 +106,7 @@ func (x *exchange) finish() {
 	x.Log.LogAttrs(context.Background(), level(c.status), "request",
 		slog.String("request_id", x.id), slog.String("method", c.method), slog.String("route", c.route), slog.Int("status", c.status),
 		slog.String("problem", c.problem), slog.Float64("milliseconds", took), slog.Int64("bytes_in", c.bytesIn), slog.Int64("bytes_out", c.bytesOut),
-		slog.Int("recipes", c.recipes), slog.Any("verdicts", c.verdicts), slog.Any("faults", c.faults),
+		slog.Int("recipes", c.recipes), slog.Any("verdicts", c.verdicts), slog.Any("refusals", c.refusals), slog.Any("faults", c.faults),
 		slog.String("version", x.Version), slog.String("rules_version", x.rules.Book.Version), slog.String("rules_digest", x.rules.Book.Digest))
 	if x.Metrics != nil {
 		meter.Write(x.Metrics, now, c.line(x, took)) // a log that cannot be written is no reason to fail
@@ -109,44 +114,47 @@ func (x *exchange) finish() {
 }
 
 func level(status int) slog.Level {
-	if status >= 500 {
+	switch status {
+	case http.StatusInternalServerError:
 		return slog.LevelError
+	case http.StatusServiceUnavailable, http.StatusTooManyRequests:
+		return slog.LevelWarn
 	}
 	return slog.LevelInfo
 }
 
-// line is the record as metrics: counts by route and status class, the details beside them.
+// line is the record as metrics, over all and by route. What has many values stands beside them as properties, which make no metrics.
 func (c *record) line(x *exchange, took float64) meter.Line {
+	count := func(name string, n int) meter.Metric {
+		return meter.Metric{Name: name, Unit: "Count", Value: float64(n)}
+	}
 	return meter.Line{
 		Namespace:  "Gramlaw",
-		Dimensions: []meter.Dimension{{Name: "Route", Value: c.route}, {Name: "Status", Value: class(c.status)}},
+		Dimensions: []meter.Dimension{{Name: "Route", Value: c.route}},
 		Metrics: []meter.Metric{
-			{Name: "Latency", Unit: "Milliseconds", Value: took},
-			{Name: "Requests", Unit: "Count", Value: 1},
-			{Name: "Recipes", Unit: "Count", Value: float64(c.recipes)},
+			{Name: "Duration", Unit: "Milliseconds", Value: took},
+			count("Requests", 1), count("ServerErrors", serverError(c.status)), count("Panics", c.panics), count("Shed", c.shed),
+			count("Recipes", c.recipes), count("Refusals", sum(c.refusals)), count("Faults", sum(c.faults)),
 			{Name: "Undetermined", Unit: "Percent", Value: c.undetermined(), Absent: c.asked == 0},
-			{Name: "Refusals", Unit: "Count", Value: sum(c.refusals)},
-			{Name: "Faults", Unit: "Count", Value: sum(c.faults)},
 		},
 		Properties: map[string]any{
-			"RequestId": x.id, "Method": c.method, "StatusCode": c.status, "RefusalsByRule": c.refusals, "FaultsByCode": c.faults, "Verdicts": c.verdicts,
+			"RequestId": x.id, "Method": c.method, "Status": c.status, "RefusalsByRule": c.refusals, "FaultsByCode": c.faults, "Verdicts": c.verdicts,
 			"Version": x.Version, "RulesVersion": x.rules.Book.Version, "RulesDigest": x.rules.Book.Digest,
 		},
 	}
 }
 
-// class is "2xx" and so on.
-func class(status int) string {
-	if status < 100 {
-		return "none"
+func serverError(status int) int {
+	if status >= http.StatusInternalServerError {
+		return 1
 	}
-	return string(rune('0'+status/100)) + "xx"
+	return 0
 }
 
-func sum(m map[string]int) float64 {
+func sum(m map[string]int) int {
 	n := 0
 	for _, one := range m {
 		n += one
 	}
-	return float64(n)
+	return n
 }

@@ -32,7 +32,7 @@ func (x *exchange) reply(mediaType string, body []byte) *Problem {
 		h.Del("Content-Encoding")
 		return problem(answerLarge, "The answer has "+strconv.Itoa(len(body))+" bytes.")
 	}
-	x.send(http.StatusOK, mediaType, body)
+	x.sent(http.StatusOK, send(x.w, x.r, http.StatusOK, mediaType, body))
 	return nil
 }
 
@@ -55,8 +55,8 @@ func (x *exchange) replyTagged(mediaType string, body []byte) *Problem {
 	h.Set("Cache-Control", "no-cache")
 	if matches(x.r.Header.Values("If-None-Match"), tag) {
 		h.Add("Vary", "Accept, Accept-Encoding")
-		x.started, x.record.status = true, http.StatusNotModified
 		x.w.WriteHeader(http.StatusNotModified)
+		x.sent(http.StatusNotModified, 0)
 		return nil
 	}
 	return x.reply(mediaType, body)
@@ -103,26 +103,22 @@ func encode(v any) ([]byte, error) {
 func (x *exchange) refuse(p *Problem) {
 	p.RequestID = x.id
 	x.record.refused(p)
-	h := x.w.Header()
-	for _, name := range []string{"ETag", "Vary", "Content-Encoding"} {
-		h.Del(name)
-	}
-	h.Set("Cache-Control", "no-store")
-	for name, values := range p.header {
-		h[name] = values
-	}
-	x.send(p.Status, typeProblem, p.bytes())
+	x.sent(p.Status, p.write(x.w, x.r))
 }
 
-func (x *exchange) send(status int, mediaType string, body []byte) {
-	h := x.w.Header()
+func (x *exchange) sent(status, n int) {
+	x.started, x.record.status, x.record.bytesOut = true, status, int64(n)
+}
+
+// send writes a whole answer and tells how many bytes of its body went out.
+func send(w http.ResponseWriter, r *http.Request, status int, mediaType string, body []byte) int {
+	h := w.Header()
 	h.Set("Content-Type", mediaType)
 	h.Set("Content-Length", strconv.Itoa(len(body)))
-	x.started, x.record.status = true, status
-	x.w.WriteHeader(status)
-	if x.r.Method == http.MethodHead {
-		return
+	w.WriteHeader(status)
+	if r.Method == http.MethodHead {
+		return 0
 	}
-	n, _ := x.w.Write(body) // a client that is gone needs no answer
-	x.record.bytesOut = int64(n)
+	n, _ := w.Write(body) // a client that is gone needs no answer
+	return n
 }
