@@ -25,7 +25,7 @@ func smallMarket(t *testing.T, files map[string]string) *rulebook.Book {
 		"xx/definitions.json": rules(quantity("fat", "FAT"), quantity("protein", "PROCNT"), quantity("salt", "NACL")),
 		"xx/energy.json": rules(`{"id":"xx/energy/energy","versions":[{` + source + `,"name":{"en":"energy"},"unit":"kcal",
 			"methods":[{"method":"general factors","factors":{"fat":"9","protein":"4"}}]}]}`),
-		"xx/reference_values.json": rules(`{"id":"xx/reference/protein","versions":[{` + source + `,"quantity":"protein","amounts":{"general population":"50 g"}}]}`),
+		"xx/reference_values.json": rules(`{"id":"xx/reference/protein","versions":[{` + source + `,"quantity":"protein","amounts":{"general population":"50 g","infants":"50 g"}}]}`),
 		"xx/rounding.json": rules(`{"id":"xx/rounding/mass","versions":[{`+source+`,"quantities":["fat","protein","salt"],"ties":"up","bands":[{"nearest":"0.1 g"}]}]}`,
 			`{"id":"xx/rounding/energy","versions":[{`+source+`,"quantities":["energy"],"ties":"up","bands":[{"nearest":"1 kcal"}]}]}`),
 		"xx/declaration.json": rules(declaration("")),
@@ -101,6 +101,66 @@ func TestShorterFormats(t *testing.T) {
 			}
 			if !slices.Equal(got.LeaveOut, c.want.LeaveOut) || !slices.Equal(got.Repeats, c.want.Repeats) || got.Says != c.want.Says || got.SaysPresence != c.want.SaysPresence {
 				t.Errorf("the format is %+v, want %+v", got, c.want)
+			}
+		})
+	}
+}
+
+func TestPerCentWeighedByAFact(t *testing.T) {
+	const weighed = `{"id":"xx/rounding/protein","versions":[{SOURCE,"quantities":["protein"],"ties":"up","bands":[{"nearest":"1 g"}],
+		"percent":{"from":"exact","times":[{"fact":"protein efficiency ratio against casein","if":{"fact":"intended for","is":"infants"},"at most":"100 %"},
+		{"fact":"protein digestibility-corrected amino acid score","at most":"100 %"}],"bands":[{"nearest":"1 %"}]}}]}`
+	line := `{"quantity":"protein","component":"PROCNT","terms":{"en":["protein"]},"unit":"g","percent":"optional","presence":"mandatory",
+		"percent mandatory if":{"claimed on the label about":["protein"]},"percent none if":{"fact":"protein efficiency ratio against casein","below":"40 %"},
+		"no amount if":{"fact":"state","is":"liquid"}}`
+	b := smallMarket(t, map[string]string{"declaration.json": declaration("", line), "rounding.json": weighed,
+		"claims.json": `{"id":"xx/claim/protein-source","versions":[{SOURCE,"name":{"en":"source of protein"},"about":["protein"],"mandatory lines":["protein"],
+			"condition":{"of":{"protein":"1"},"per":"100 g","at least":"5 g"}}]}`})
+	for _, c := range []struct{ name, more, percent, status string }{
+		{"the score of 0.5", `,"facts":{"intended for":"general population","protein digestibility-corrected amino acid score":"0.5"}`, "10 %", "determined"},
+		{"a score above 1 counts as 1", `,"facts":{"intended for":"general population","protein digestibility-corrected amino acid score":"1.21"}`, "20 %", "determined"},
+		{"infants by another fact", `,"facts":{"intended for":"infants","protein efficiency ratio against casein":"0.8"}`, "16 %", "determined"},
+		{"no per cent by a condition", `,"facts":{"intended for":"infants","protein efficiency ratio against casein":"0.399"}`, "none", "determined"},
+		{"an optional per cent nobody knows", "", "none", "determined"},
+		{"a mandatory per cent nobody knows", `,"facts":{"intended for":"general population"},"claims":[{"claim":"protein-source"}]`, "none", "undetermined"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"0 g","PROCNT":"10 g","NACL":"0 g"}`, c.more))
+			l, v, err := printedLine(m, "protein", "")
+			if err != nil || percentOf(v) != c.percent || l.Status != c.status || v.Text != "10 g" {
+				t.Errorf("%v, %s with %s, %s; want %s, %s", err, v.Text, percentOf(v), l.Status, c.percent, c.status)
+			}
+			if c.status != "determined" && !slices.Contains(l.Needs, "the fact “protein digestibility-corrected amino acid score”") {
+				t.Errorf("what is missing is %v", l.Needs)
+			}
+		})
+	}
+	m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"0 g","PROCNT":"10 g","NACL":"0 g"}`, `,"state":{"default":"liquid"},"density":{"default":"1 kg/L"},
+		"facts":{"intended for":"general population","protein digestibility-corrected amino acid score":"1"}`))
+	if _, v, _ := printedLine(m, "protein", ""); v.Text != "" || percentOf(v) != "20 %" {
+		t.Errorf("the line shows %q with %s, want its per cent alone", v.Text, percentOf(v))
+	}
+}
+
+func TestDailyIntake(t *testing.T) {
+	b := smallMarket(t, map[string]string{
+		"reference_amounts.json": `{"id":"xx/reference-amount/bread","versions":[{SOURCE,"names":{"en":["Bread"]},"amount":"75 g","daily intake":"150 g"}]},
+			{"id":"xx/reference-amount/soup","versions":[{SOURCE,"names":{"en":["Soup"]},"amount":"200 g"}]}`,
+		"claims.json": `{"id":"xx/claim/protein-source","versions":[{SOURCE,"name":{"en":"source of protein"},"about":["protein"],
+			"condition":{"of":{"protein":"1"},"per":"daily intake","times":[{"fact":"protein efficiency ratio"},{"fact":"protein digestibility-corrected amino acid score","factor":"2.5"}],"at least":"20 g"}}]}`})
+	for _, c := range []struct{ name, more, verdict string }{
+		{"15 g in 150 g of bread, ratio 1.34", `,"category":{"default":"bread"},"facts":{"protein efficiency ratio":"1.34"}`, "permitted"},
+		{"15 g in 150 g of bread, ratio 1.33", `,"category":{"default":"bread"},"facts":{"protein efficiency ratio":"1.33"}`, "refused"},
+		{"15 g in 150 g of bread, score 0.54", `,"category":{"default":"bread"},"facts":{"protein digestibility-corrected amino acid score":"0.54"}`, "permitted"},
+		{"20 g in the reference amount of soup, ratio 1", `,"category":{"default":"soup"},"facts":{"protein efficiency ratio":"1"}`, "permitted"},
+		{"a stated intake", `,"category":{"default":"bread"},"facts":{"protein efficiency ratio":"1","reasonable daily intake":"200 g"}`, "permitted"},
+		{"no ratio", `,"category":{"default":"bread"}`, "undetermined"},
+		{"no intake", `,"facts":{"protein efficiency ratio":"3"}`, "undetermined"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"0 g","PROCNT":"10 g","NACL":"0 g"}`, c.more+`,"claims":[{"claim":"protein-source"}]`))
+			if got := m.Claims[0]; got.Verdict != c.verdict {
+				t.Errorf("%s, want %s: %+v", got.Verdict, c.verdict, got.Condition)
 			}
 		})
 	}

@@ -3,6 +3,7 @@ package check
 import (
 	"slices"
 
+	"gramlaw/internal/claim"
 	"gramlaw/internal/declare"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
@@ -264,6 +265,11 @@ func (v view) bandNeeds(q string) []string {
 		return nil
 	}
 	var out []string
+	if p := r.Body.Percent; p != nil && len(p.Times) > 0 && v.percentMust(v.lines[q].line) {
+		if _, missing := claim.Weigh(p.Times, v); missing != "" {
+			out = append(out, missing)
+		}
+	}
 	for i := range r.Body.Bands {
 		c := r.Body.Bands[i].If
 		if c == nil || v.truth(c) != quantity.Open {

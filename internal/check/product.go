@@ -297,8 +297,29 @@ func (p *product) Basis(per rulebook.Per) (quantity.Ratio, bool) {
 			return quantity.Ratio{}, false
 		}
 		return p.m.grams(*p.m.c.recipe.Package.Net, nil)
+	case "unit":
+		net, ok := p.Basis(rulebook.Per{Name: "package"})
+		if !ok || !p.m.c.recipe.Package.Units.IsPositive() {
+			return quantity.Ratio{}, false
+		}
+		return net.Quo(quantity.FromDecimal(p.m.c.recipe.Package.Units)), true
+	case "daily intake":
+		return p.dailyIntake()
 	}
 	return p.m.grams(per.Amount, nil)
+}
+
+// dailyIntake is what the law takes for a day's intake: as the recipe states it, as the category tells, else the reference amount.
+func (p *product) dailyIntake() (quantity.Ratio, bool) {
+	if f, ok := p.m.c.recipe.Facts["reasonable daily intake"]; ok && f.Number != nil {
+		return f.Number.Ratio(), true
+	}
+	if name, ok := p.m.c.recipe.Category.For(p.m.j); ok {
+		if c, ok := p.m.category(name); ok && c.Body.Daily != nil {
+			return p.m.grams(*c.Body.Daily, nil)
+		}
+	}
+	return p.Basis(rulebook.Per{Name: "reference amount"})
 }
 
 // Meets answers whether the food meets the condition of a claim of the law.

@@ -3,6 +3,7 @@ package check
 import (
 	"strings"
 
+	"gramlaw/internal/claim"
 	"gramlaw/internal/declare"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
@@ -33,12 +34,12 @@ func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	if len(r.Body.Bands) > 0 {
 		printed = v.outcomes(r.Body, x, quantity.FromInt(1), u)
 		settled = printed.determined()
-		v.print(&out, l, printed, unit != "", u)
+		v.print(&out, l, printed, unit != "" && !v.surely(l.line.NoAmountIf), u)
 	}
-	if l.line.Percent != "none" && r.Body.Percent != nil {
+	if r.Body.Percent != nil && l.line.Percent != "none" && !v.surely(l.line.NoPercentIf) {
 		p, one := v.percent(l, r, x, printed)
 		out.PercentReference = p
-		settled = settled && (one || l.line.Percent == "optional")
+		settled = settled && (one || !v.percentMust(l.line))
 	}
 	if l.line.Quantity == "energy" || v.isEnergy(l.line.Quantity) {
 		v.energyAlternatives(&out, l, c, r.Body, u)
@@ -48,6 +49,14 @@ func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	}
 	return out, settled
 }
+
+// percentMust tells whether the per cent must stand beside a line's amount.
+func (v view) percentMust(l *rulebook.Line) bool {
+	return l.Percent != "optional" || v.surely(l.PercentIf)
+}
+
+// surely tells whether a line has a condition that holds.
+func (v view) surely(c *rulebook.Condition) bool { return c != nil && v.truth(c) == quantity.Yes }
 
 func (o *Value) setExact(r quantity.Ratio) {
 	x := r.Exact()
@@ -134,11 +143,19 @@ func (v view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x quan
 	}
 	ref, _ := v.law.ReferenceOf(l.line.Quantity)
 	p := r.Body.Percent
+	per := quantity.FromInt(100).Quo(rv)
+	if len(p.Times) > 0 {
+		f, missing := claim.Weigh(p.Times, v)
+		if missing != "" {
+			return nil, false
+		}
+		per = per.Mul(f)
+	}
 	out := &Percent{Reference: ref.Body.Text(v.population()), Rule: ref.ID, Source: ref.Head.Source.Ref}
 	if mid, known := x.Central(); known {
-		out.Exact = text(mid.Mul(quantity.FromInt(100)).Quo(rv))
+		out.Exact = text(mid.Mul(per))
 	}
-	o, settled := v.percentOf(p.From, l, p, r.Body.Ties, x, printed, rv)
+	o, settled := v.percentOf(p.From, l, p, r.Body.Ties, x, printed, per)
 	if len(o) == 0 {
 		return out, false
 	}
@@ -153,7 +170,7 @@ func (v view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x quan
 		out.Alternatives = append(out.Alternatives, percentText(a))
 	}
 	if p.Or != "" {
-		if other, one := v.percentOf(p.Or, l, p, r.Body.Ties, x, printed, rv); one && !other[0].Printed.Equal(o[0].Printed) {
+		if other, one := v.percentOf(p.Or, l, p, r.Body.Ties, x, printed, per); one && !other[0].Printed.Equal(o[0].Printed) {
 			out.Alternatives = append(out.Alternatives, percentText(other[0].Printed)+" (from the "+p.Or+" amount)")
 		}
 	}
@@ -169,7 +186,7 @@ func percentText(p declare.Printed) string {
 }
 
 // percentOf computes per cents from exact amounts or from declared ones.
-func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties quantity.Ties, x quantity.Linear, printed outcomes, rv quantity.Ratio) (outcomes, bool) {
+func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties quantity.Ties, x quantity.Linear, printed outcomes, per quantity.Ratio) (outcomes, bool) {
 	zero := quantity.No
 	if p.ZeroIf != nil {
 		zero = v.truth(p.ZeroIf)
@@ -193,8 +210,7 @@ func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties qua
 	}
 	var out outcomes
 	for _, value := range values {
-		share := value.Mul(quantity.FromInt(100)).Quo(rv)
-		out = append(out, declare.Round(p.Bands, ties, share, quantity.PerCent, v.truth)...)
+		out = append(out, declare.Round(p.Bands, ties, value.Mul(per), quantity.PerCent, v.truth)...)
 	}
 	if zero == quantity.Open {
 		out = append(outcomes{{Printed: declare.Printed{}}}, out...)

@@ -142,8 +142,12 @@ func (v view) Stated(name string) bool {
 	return ok
 }
 
-// Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted.
+// Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted. Of another food than the product
+// nothing was measured.
 func (v view) Measured(name string) (quantity.Ratio, bool) {
+	if v.subject != nil && v.subject != v.product {
+		return quantity.Ratio{}, false
+	}
 	if f, ok := v.c.recipe.Facts[name]; ok && f.Number != nil {
 		return f.Number.Ratio(), true
 	}
@@ -213,15 +217,7 @@ func (v view) Size(name string) (quantity.Ratio, bool) {
 		}
 		return v.subject.Basis(rulebook.Per{Name: "serving"})
 	}
-	size, ok := v.subject.Basis(rulebook.Per{Name: "package"})
-	if !ok || name == "package" {
-		return size, ok
-	}
-	units := v.c.recipe.Package.Units
-	if !units.IsPositive() {
-		return quantity.Ratio{}, false
-	}
-	return size.Quo(quantity.FromDecimal(units)), true
+	return v.subject.Basis(rulebook.Per{Name: name})
 }
 
 // ReferenceKind tells whether the reference food is of one of the kinds.

@@ -52,7 +52,7 @@ func (x evaluator) compareOn(c *rulebook.Condition, name string, per rulebook.Pe
 	if missing != "" {
 		return Result{Says: cmp.Says, Missing: missing}
 	}
-	s := measure(c, per, subject, x.Context)
+	s := measure(c, per, subject, c.Subject == "", x.Context)
 	switch {
 	case s.missing != "":
 		return Result{Says: cmp.Says, Missing: s.missing}
@@ -74,9 +74,12 @@ func (x evaluator) subject(c *rulebook.Condition) (food Subject, missing string)
 	return ref, ""
 }
 
-// measure builds the two sides for one food: the value is num/den in base units of the threshold.
-func measure(c *rulebook.Condition, per rulebook.Per, s Subject, x Context) side {
+// measure builds the two sides for one food, the product or another: the value is num/den in base units of the threshold.
+func measure(c *rulebook.Condition, per rulebook.Per, s Subject, product bool, x Context) side {
 	num, missing := weighted(c, s, x)
+	if missing == "" && len(c.Times) > 0 {
+		num, missing = times(num, c.Times, product, x)
+	}
 	if missing != "" {
 		return side{missing: missing}
 	}
@@ -161,6 +164,41 @@ func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, str
 		sum = sum.Add(q.Mul(k))
 	}
 	return sum, ""
+}
+
+// times weighs the product's form by a measured fact. Of another food nobody states facts.
+func times(num quantity.Linear, list rulebook.Times, product bool, x Context) (quantity.Linear, string) {
+	if !product {
+		return num, "the fact “" + list[0].Fact + "”"
+	}
+	f, missing := Weigh(list, x)
+	return num.Mul(f), missing
+}
+
+// Weigh is the factor that measured facts give: that of the first that is stated, of those whose condition holds. What is missing is the
+// fact that would settle it.
+func Weigh(list rulebook.Times, x Context) (f quantity.Ratio, missing string) {
+	for i := range list {
+		w := &list[i]
+		applies := Decide(w.If, x)
+		if applies == quantity.No {
+			continue
+		}
+		value, ok := x.Measured(w.Fact)
+		if ok && applies == quantity.Yes {
+			return w.Of(value), ""
+		}
+		if missing == "" {
+			missing = "the fact “" + w.Fact + "”"
+		}
+		if applies == quantity.Open {
+			break // which of the facts counts is not known
+		}
+	}
+	if missing == "" {
+		missing = "a fact that weighs it"
+	}
+	return f, missing
 }
 
 // decideSides decides num relation T·den, and fills the comparison's numbers.

@@ -122,7 +122,7 @@ func (x evaluator) decideOn(c *rulebook.Condition, per rulebook.Per) quantity.Tr
 	if missing != "" {
 		return quantity.Open
 	}
-	s := measure(c, per, subject, x.Context)
+	s := measure(c, per, subject, c.Subject == "", x.Context)
 	switch {
 	case s.missing != "":
 		return quantity.Open

@@ -47,7 +47,9 @@ func (w world) Has(name, item string) quantity.Truth {
 }
 func (w world) Stated(name string) bool { return name == "alcohol by volume" }
 func (w world) Measured(name string) (quantity.Ratio, bool) {
-	return quantity.Scaled(12, -1), name == "alcohol by volume"
+	measured := map[string]quantity.Ratio{"alcohol by volume": quantity.Scaled(12, -1), "score": quantity.FromInt(50), "high score": quantity.FromInt(120)}
+	v, ok := measured[name]
+	return v, ok
 }
 func (w world) Size(name string) (quantity.Ratio, bool) {
 	return quantity.FromInt(60), name == "package"
@@ -121,6 +123,15 @@ func TestConditions(t *testing.T) {
 		{"a measured fact at its limit", `{"fact":"alcohol by volume","above":"1.2 %"}`, world{product: bread}, quantity.No},
 		{"a measured fact below its limit", `{"fact":"alcohol by volume","below":"1.3 %"}`, world{product: bread}, quantity.Yes},
 		{"a measured fact nobody stated", `{"fact":"polyols","above":"10 %"}`, world{product: bread}, quantity.Open},
+		{"weighed by a fact: 3 at 0.5", `{"of":{"fat":"1"},"times":[{"fact":"score"}],"per":"100 g","at least":"1.5 g"}`, world{product: bread}, quantity.Yes},
+		{"weighed by a fact, just under", `{"of":{"fat":"1"},"times":[{"fact":"score"}],"per":"100 g","at least":"1.51 g"}`, world{product: bread}, quantity.No},
+		{"weighed by a fact times 2.5", `{"of":{"fat":"1"},"times":[{"fact":"ratio"},{"fact":"score","factor":"2.5"}],"per":"100 g","at least":"3.75 g"}`, world{product: bread}, quantity.Yes},
+		{"weighed by a fact that is capped", `{"of":{"fat":"1"},"times":[{"fact":"high score","at most":"100 %"}],"per":"100 g","above":"3 g"}`, world{product: bread}, quantity.No},
+		{"weighed, as a share of the reference value: 1.5 of 20", `{"of":{"fat":"1"},"times":[{"fact":"score"}],"as":"share of reference value","per":"100 g","at least":"7.5 %"}`, world{product: bread}, quantity.Yes},
+		{"weighed by a fact nobody stated", `{"of":{"fat":"1"},"times":[{"fact":"ratio"}],"per":"100 g","at least":"0 g"}`, world{product: bread}, quantity.Open},
+		{"weighed by the fact whose condition holds", `{"of":{"fat":"1"},"times":[{"fact":"high score","if":{"fact":"state","is":"liquid"}},{"fact":"score"}],"per":"100 g","at most":"1.5 g"}`, world{product: bread}, quantity.Yes},
+		{"weighed by one of two facts, nobody knows which", `{"of":{"fat":"1"},"times":[{"fact":"high score","if":{"fact":"x","is":"y"}},{"fact":"score"}],"per":"100 g","at most":"9 g"}`, world{product: bread}, quantity.Open},
+		{"weighed against a food whose facts nobody knows", `{"of":{"fat":"1"},"times":[{"fact":"score"}],"per":"100 g","increased by":"25 %"}`, world{bread, bread}, quantity.Open},
 		{"a list that holds it", `{"fact":"nutrients added as such","has":"iron"}`, world{product: bread}, quantity.Yes},
 		{"a list without it", `{"fact":"nutrients added as such","has":"zinc"}`, world{product: bread}, quantity.No},
 		{"a list nobody stated", `{"fact":"other list","has":"zinc"}`, world{product: bread}, quantity.Open},

@@ -17,7 +17,7 @@ func (x evaluator) relative(c *rulebook.Condition, per rulebook.Per, s side, cmp
 		out.Missing = "the reference food"
 		return out
 	}
-	r := measure(c, per, ref, x.Context)
+	r := measure(c, per, ref, false, x.Context)
 	if r.missing != "" {
 		out.Missing = r.missing + " of the reference food"
 		return out

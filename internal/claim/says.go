@@ -45,6 +45,13 @@ func compareSays(c *rulebook.Condition, per string, x Context) string {
 		names = append(names, name)
 	}
 	s := strings.Join(names, " + ")
+	if len(c.Times) > 0 {
+		var facts []string
+		for i := range c.Times {
+			facts = append(facts, c.Times[i].Fact)
+		}
+		s += " × " + list(facts)
+	}
 	if c.Origin != "" {
 		s += " of " + c.Origin + " origin"
 	}

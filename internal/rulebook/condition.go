@@ -46,6 +46,7 @@ type Condition struct {
 	Relation  Relation
 	Threshold quantity.Amount
 	Origin    string // "industrial" or "ruminant": only trans of that origin
+	Times     Times  // what the product's form is multiplied by
 	Subject   string // "" is the product, "reference food" the other
 
 	terms     []Term
@@ -123,6 +124,9 @@ func (c *Condition) Walk(visit func(*Condition)) {
 	visit(c)
 	for _, p := range c.Parts {
 		p.Walk(visit)
+	}
+	for i := range c.Times {
+		c.Times[i].If.Walk(visit)
 	}
 }
 

@@ -23,7 +23,7 @@ type form struct {
 
 // forms are looked for in this order. A list under "of" makes a count of a comparison.
 var forms = []form{
-	{"of", OpCompare, []string{"per", "as", "subject", "from", "against"}, true},
+	{"of", OpCompare, []string{"per", "as", "subject", "from", "times", "against"}, true},
 	{"all", OpAll, nil, false},
 	{"any", OpAny, nil, false},
 	{"not", OpNot, nil, false},
@@ -172,6 +172,8 @@ func (r *conditionReader) placeCompared(name string) any {
 		return &r.As
 	case "subject":
 		return &r.Subject
+	case "times":
+		return &r.Times
 	case "from":
 		return &r.from
 	case "against", string(NotMore):

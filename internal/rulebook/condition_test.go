@@ -29,6 +29,7 @@ func TestConditionsAreWrittenAsTheyAreRead(t *testing.T) {
 		`{"of":{"trans-fat":"1"},"per":"100 g","not more than":"reference food"}`,
 		`{"of":{"trans-fat":"1"},"per":"100 g fat","from":{"trans origin":"industrial"},"at most":"2 g"}`,
 		`{"of":{"fat":"1"},"per":"100 g","subject":"reference food","above":"3 g"}`,
+		`{"of":{"protein":"1"},"per":"serving","times":[{"fact":"protein efficiency ratio"},{"fact":"x","if":{"fact":"state","is":"solid"},"factor":"2.5","at most":"100 %"}],"at least":"20 g"}`,
 		`{"declared":"saturated-fat","is":"0"}`,
 		`{"declared":"monounsaturated-fat"}`,
 		`{"meets":"us/claim/fat-low","subject":"reference food"}`,

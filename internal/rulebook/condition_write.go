@@ -119,6 +119,9 @@ func (c *Condition) compareMembers() []member {
 	if c.Origin != "" {
 		out = append(out, member{"from", originTest{c.Origin}})
 	}
+	if len(c.Times) > 0 {
+		out = append(out, member{"times", c.Times})
+	}
 	out = append(out, c.some(member{}, member{"as", c.As}, member{"subject", c.Subject})[1:]...)
 	return append(out, c.related()...)
 }

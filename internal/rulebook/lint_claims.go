@@ -114,6 +114,9 @@ func (c *checker) line(id, at string, line *Line) {
 	c.condition("declaration", id, at+"/mandatory if", node, line.MandatoryIf)
 	c.condition("declaration", id, at+"/forbidden if", node, line.ForbiddenIf)
 	c.condition("declaration", id, at+"/leave out if", node, line.LeaveOutIf)
+	c.condition("declaration", id, at+"/no amount if", "amount/"+line.Quantity, line.NoAmountIf)
+	c.condition("declaration", id, at+"/percent mandatory if", "percent/"+line.Quantity, line.PercentIf)
+	c.condition("declaration", id, at+"/percent none if", "percent/"+line.Quantity, line.NoPercentIf)
 }
 
 func (c *checker) statement(kind, id, at, node string, s Statement) {

@@ -12,16 +12,16 @@ import (
 
 // A Per is a parsed basis: an amount of the food, of energy, or of a quantity.
 type Per struct {
-	Name     string          // "serving", "reference amount", "package"; else ""
+	Name     string          // "serving", "reference amount", "package", "unit", "daily intake"; else ""
 	Amount   quantity.Amount // otherwise: 100 g, 100 mL, 100 kcal, 1 MJ as 1000 kJ
 	Quantity string          // "fat" in "100 g fat"; "" is the food
 }
 
-// ParsePer reads a basis: "serving", "reference amount", "package", "100 g", "50 g", "100 mL", "100 kcal", "1 MJ",
+// ParsePer reads a basis: "serving", "reference amount", "package", "unit", "daily intake", "100 g", "50 g", "100 mL", "100 kcal", "1 MJ",
 // "100 g fat", "100 g fatty acids".
 func ParsePer(s string) (Per, error) {
 	switch s {
-	case "serving", "reference amount", "package":
+	case "serving", "reference amount", "package", "unit", "daily intake":
 		return Per{Name: s}, nil
 	case "1 MJ":
 		return Per{Amount: quantity.Amount{Value: decimal.New(1000, 0), Unit: quantity.Kilojoule}}, nil
@@ -108,6 +108,16 @@ func (c *checker) meets(kind, id, field, node string, p *Condition) {
 	}
 }
 
+// times checks what a form is weighed by.
+func (c *checker) times(kind, id, field string, list Times) {
+	for i := range list {
+		w := &list[i]
+		if w.Fact == "" || w.AtMost != nil && w.AtMost.Unit.Dimension() != quantity.Percent {
+			c.bad(kind, id, field+"/times", "names a fact, and caps it in per cent")
+		}
+	}
+}
+
 func (c *checker) size(kind, id, field string, p *Condition) {
 	if !slices.Contains([]string{"package", "serving", "unit", "surface"}, p.Name) {
 		c.bad(kind, id, field, "%q is none of package, serving, unit, surface", p.Name)
@@ -117,7 +127,7 @@ func (c *checker) size(kind, id, field string, p *Condition) {
 	case p.Name == "surface" && p.As == "" && dim == quantity.Area:
 	case p.Name == "surface":
 		c.bad(kind, id, field, "a surface is compared with cm2, not with %s", p.Threshold)
-	case (p.As == "share of reference amount" || p.As == "share of package") && dim == quantity.Percent:
+	case slices.Contains([]string{"share of reference amount", "share of package", "share of unit"}, p.As) && dim == quantity.Percent:
 	case p.As == "" && (dim == quantity.Mass || dim == quantity.Volume):
 	default:
 		c.bad(kind, id, field, "compares with %s as %q; a mass, a volume or a share of reference amount is wanted", p.Threshold, p.As)
@@ -144,6 +154,7 @@ func (c *checker) compare(kind, id, field, node string, p *Condition) {
 			c.quantity(kind, id, field, per.Quantity, quantity.Mass)
 		}
 	}
+	c.times(kind, id, field, p.Times)
 	want := dim
 	switch {
 	case p.As != "" && !slices.Contains(Shares, p.As):

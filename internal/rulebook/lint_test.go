@@ -73,6 +73,8 @@ func TestLintRefuses(t *testing.T) {
 		{"a relative condition without a reference food", claim(`{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`), "needs reference food"},
 		{"two relations", claim(`{"of":{"fat":"1"},"per":"100 g","at most":"3 g","at least":"1 g"}`), "both"},
 		{"no condition", map[string]string{"xx/claims.json": oneRule("xx/claim/c", `"name":{"en":"c"},"about":[]`)}, "exactly one of condition"},
+		{"a weight without a fact", claim(`{"of":{"fat":"1"},"per":"100 g","times":[{"fact":""}],"at most":"3 g"}`), "names a fact"},
+		{"a weight capped in grams", claim(`{"of":{"fat":"1"},"per":"100 g","times":[{"fact":"x","at most":"1 g"}],"at most":"3 g"}`), "in per cent"},
 		{"a fact that is not stated", claim(`{"fact":"x","stated":false}`), `under "not"`},
 		{"two questions of one fact", claim(`{"fact":"x","is":"yes","has":"iron"}`), `both "is" and "has"`},
 		{"undecided without a reason", claim(`{"undecided":{}}`), "has no words"},

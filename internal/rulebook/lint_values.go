@@ -144,8 +144,13 @@ func (c *checker) references() {
 		}
 	})
 	bodies(c.m.ReferenceAmounts, func(id, field string, r *ReferenceAmount) {
-		if d := r.Amount.Unit.Dimension(); d != quantity.Mass && d != quantity.Volume || !r.Amount.Value.IsPositive() {
-			c.bad("reference_amounts", id, field+"/amount", "%s is no mass or volume above zero", r.Amount)
+		for _, a := range []*quantity.Amount{&r.Amount, r.Daily} {
+			if a == nil {
+				continue
+			}
+			if d := a.Unit.Dimension(); d != quantity.Mass && d != quantity.Volume || !a.Value.IsPositive() {
+				c.bad("reference_amounts", id, field+"/amount", "%s is no mass or volume above zero", a)
+			}
 		}
 	})
 }
@@ -185,6 +190,10 @@ func (c *checker) percent(id, field string, r *Rounding, p *Percent) {
 		c.source(c.j+"/rounding.json", id, field+"/source", *p.Source)
 	}
 	c.condition("rounding", id, field+"/zero if", "percent/"+Name(id), p.ZeroIf)
+	c.times("rounding", id, field, p.Times)
+	for i := range p.Times {
+		c.condition("rounding", id, field+"/times", "percent/"+Name(id), p.Times[i].If)
+	}
 }
 
 // bands checks that edges rise, that only the last band has none, and that each does one thing.

@@ -289,9 +289,33 @@ type Bands []Band
 type Percent struct {
 	From   string     `json:"from"`        // "exact" or "declared": the amount it is computed from
 	Or     string     `json:"or,omitzero"` // the other one, where the law allows both
+	Times  Times      `json:"times,omitzero"`
 	ZeroIf *Condition `json:"zero if,omitzero"`
 	Bands  Bands      `json:"bands"`           // edges and steps in %
 	Source *Source    `json:"source,omitzero"` // where it differs from the rounding's
+}
+
+// Times are measured facts that may weigh a quantity: the first that is stated, of those whose If holds.
+type Times []Weight
+
+// A Weight is a measured fact as a factor, such as the efficiency ratio of a protein.
+type Weight struct {
+	Fact   string           `json:"fact"`
+	If     *Condition       `json:"if,omitzero"`
+	Factor *decimal.Decimal `json:"factor,omitzero"`  // what the fact itself is multiplied by
+	AtMost *quantity.Amount `json:"at most,omitzero"` // more than that counts as that, in per cent
+}
+
+// Of is the factor that a value of the fact gives; the value is in per cent.
+func (w *Weight) Of(percent quantity.Ratio) quantity.Ratio {
+	if w.AtMost != nil {
+		percent = quantity.Min(percent, w.AtMost.Ratio())
+	}
+	f := percent.Mul(quantity.Scaled(1, -2))
+	if w.Factor != nil {
+		f = f.Times(*w.Factor)
+	}
+	return f
 }
 
 // A Declaration is the table of a market: lines in order, statements under it, how numbers look.
@@ -379,8 +403,11 @@ type Line struct {
 	Level       int        `json:"level,omitzero"`
 	Unit        string     `json:"unit,omitzero"`       // "" shows no amount
 	ShownUnit   Words      `json:"shown unit,omitzero"` // how the unit is printed, where not as itself
-	Percent     string     `json:"percent"`             // "shown", "optional" or "none"
-	Presence    string     `json:"presence"`            // "mandatory", "optional" or "forbidden"
+	NoAmountIf  *Condition `json:"no amount if,omitzero"`
+	Percent     string     `json:"percent"`                       // "shown", "optional" or "none"
+	PercentIf   *Condition `json:"percent mandatory if,omitzero"` // raises an optional per cent
+	NoPercentIf *Condition `json:"percent none if,omitzero"`
+	Presence    string     `json:"presence"` // "mandatory", "optional" or "forbidden"
 	MandatoryIf *Condition `json:"mandatory if,omitzero"`
 	ForbiddenIf *Condition `json:"forbidden if,omitzero"`
 	LeaveOutIf  *Condition `json:"leave out if,omitzero"`
@@ -408,6 +435,7 @@ type ReferenceAmount struct {
 	Names   map[string][]string `json:"names"`
 	Amount  quantity.Amount     `json:"amount"`
 	Measure string              `json:"measure,omitzero"`
+	Daily   *quantity.Amount    `json:"daily intake,omitzero"` // what the law takes for a day's intake of such food
 }
 
 // A Claim is a listed claim: what it needs and what it brings with it.
