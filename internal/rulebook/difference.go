@@ -45,10 +45,10 @@ func Changes(was, is *Law) []Change {
 		body any
 	}
 	before := map[string]side{}
-	was.each(func(_, id string, h *Head, body any) { before[id] = side{h, body} })
+	was.Each(func(_, id string, h *Head, body any) { before[id] = side{h, body} })
 	out := []Change{}
 	put := func(c Change, b, a any) { out = append(out, c.finish(is.Market.Jurisdiction, b, a)) }
-	is.each(func(kind, id string, h *Head, body any) {
+	is.Each(func(kind, id string, h *Head, body any) {
 		switch old, ok := before[id]; {
 		case !ok:
 			put(Change{Kind: kind, ID: id, Effect: Begins, Is: h}, nil, nil)
@@ -57,7 +57,7 @@ func Changes(was, is *Law) []Change {
 		}
 		delete(before, id)
 	})
-	was.each(func(kind, id string, h *Head, _ any) {
+	was.Each(func(kind, id string, h *Head, _ any) {
 		if _, ends := before[id]; ends {
 			put(Change{Kind: kind, ID: id, Effect: Ends, Was: h}, nil, nil)
 		}

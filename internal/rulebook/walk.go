@@ -1,15 +1,11 @@
 package rulebook
 
-// A Visit takes one version of a rule: the kind is the name of its file, the head what the version says of itself.
-type Visit func(kind, id string, h *Head)
+// A Visit takes the version of a rule that holds: the kind is the name of its file, the head what the version says of itself, the body a
+// pointer to what it says.
+type Visit func(kind, id string, h *Head, body any)
 
 // Each visits every rule that holds, kind by kind, in the order of the files.
 func (l *Law) Each(visit Visit) {
-	l.each(func(kind, id string, h *Head, _ any) { visit(kind, id, h) })
-}
-
-// each is Each with a pointer to the rule's body.
-func (l *Law) each(visit func(kind, id string, h *Head, body any)) {
 	visitEach("definitions", l.Definitions, visit)
 	visitEach("energy", l.Energy, visit)
 	visitEach("reference_values", l.References, visit)
@@ -25,7 +21,7 @@ func (l *Law) each(visit func(kind, id string, h *Head, body any)) {
 	visitEach("conditions", l.Conditions, visit)
 }
 
-func visitEach[T any](kind string, l List[T], visit func(kind, id string, h *Head, body any)) {
+func visitEach[T any](kind string, l List[T], visit Visit) {
 	for _, a := range l.All {
 		visit(kind, a.ID, a.Head, a.Body)
 	}

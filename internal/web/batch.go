@@ -4,20 +4,21 @@ import (
 	"bytes"
 	"compress/gzip"
 	"context"
-	"encoding/json"
 	"errors"
 	"fmt"
 	"io"
 	"net/http"
 	"time"
+
+	"github.com/go-json-experiment/json/jsontext"
 )
 
 // An answered line of a batch: the report, or the problem with the line.
 type answered struct {
-	Line    int             `json:"line"` // counted from 1, empty lines too
-	Status  int             `json:"status"`
-	Report  json.RawMessage `json:"report,omitzero"`
-	Problem *Problem        `json:"problem,omitzero"`
+	Line    int            `json:"line"` // counted from 1, empty lines too
+	Status  int            `json:"status"`
+	Report  jsontext.Value `json:"report,omitzero"`
+	Problem *Problem       `json:"problem,omitzero"`
 }
 
 // A numbered line of the body.

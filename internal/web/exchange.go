@@ -162,23 +162,20 @@ func (x *exchange) parameters(known ...string) (map[string]string, *Problem) {
 		query, err = parseQuery(x.r.URL.RawQuery)
 	}
 	if err != nil {
-		return nil, faultyParameters(Fault{Code: codeBadQuery, Says: "the query cannot be read: a percent sign without two hexadecimal digits, a semicolon, or text that is not UTF-8"})
+		return nil, faultyParameters(&Fault{Code: codeBadQuery, Says: "the query cannot be read: a percent sign without two hexadecimal digits, a semicolon, or text that is not UTF-8"})
 	}
 	out := map[string]string{}
-	var faults []Fault
+	var faults []*Fault
 	for _, name := range sortedNames(query) {
 		switch {
 		case !slices.Contains(known, name):
-			faults = append(faults, Fault{Parameter: cut(name), Code: codeUnknownParameter, Says: "the parameter is not known here" + listed(known)})
+			faults = append(faults, &Fault{Parameter: cut(name), Code: codeUnknownParameter, Says: "the parameter is not known here" + listed(known)})
 		case len(query[name]) > 1:
-			faults = append(faults, Fault{Parameter: name, Code: codeRepeatedParameter, Says: "the parameter stands more than once; keep one"})
+			faults = append(faults, &Fault{Parameter: name, Code: codeRepeatedParameter, Says: "the parameter stands more than once; keep one"})
 		}
 		out[name] = query[name][0]
 	}
-	if len(faults) > 0 {
-		return nil, faultyParameters(faults...)
-	}
-	return out, nil
+	return out, faultyParameters(faults...)
 }
 
 // date is a parameter that is a day, or the default where it is not stated.

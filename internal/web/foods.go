@@ -7,6 +7,7 @@ import (
 
 	"gramlaw/internal/check"
 	"gramlaw/internal/food"
+	"gramlaw/internal/recipe"
 )
 
 const (
@@ -78,17 +79,10 @@ func getFoods(x *exchange) *Problem {
 	if p != nil {
 		return p
 	}
-	var faults []Fault
-	text := parameters["q"]
-	if strings.TrimSpace(text) == "" || len(text) > food.MaxQuery {
-		faults = append(faults, Fault{Parameter: "q", Code: codeMissingParameter, Says: fmt.Sprintf("words of a food's name are wanted, at most %d bytes", food.MaxQuery)})
-	}
-	limit, fault := limitOf(parameters)
-	if fault != nil {
-		faults = append(faults, *fault)
-	}
-	if len(faults) > 0 {
-		return faultyParameters(faults...)
+	text, badText := wordsOf(parameters)
+	limit, badLimit := limitOf(parameters)
+	if p := faultyParameters(badText, badLimit); p != nil {
+		return p
 	}
 	found := food.Search(text, limit+1)
 	list := foodList{Foods: []foodHead{}, More: len(found) > limit, Source: foodTable, Caution: check.Caution}
@@ -96,6 +90,17 @@ func getFoods(x *exchange) *Problem {
 		list.Foods = append(list.Foods, headOf(f))
 	}
 	return x.replyJSON(list, true)
+}
+
+func wordsOf(parameters map[string]string) (string, *Fault) {
+	text := parameters["q"]
+	switch {
+	case strings.TrimSpace(text) == "":
+		return "", &Fault{Parameter: "q", Code: codeMissingParameter, Says: "words of a food's name are wanted"}
+	case len(text) > food.MaxQuery:
+		return "", &Fault{Parameter: "q", Code: recipe.TooMany, Says: fmt.Sprintf("at most %d bytes are read", food.MaxQuery)}
+	}
+	return text, nil
 }
 
 func limitOf(parameters map[string]string) (int, *Fault) {

@@ -98,10 +98,17 @@ func (p *Problem) bytes() []byte {
 	return append(b, '\n')
 }
 
-// faultyParameters is a problem of the query.
-func faultyParameters(faults ...Fault) *Problem {
+// faultyParameters is a problem of the query; nil where there is no fault.
+func faultyParameters(faults ...*Fault) *Problem {
 	p := problem(badRequest, "")
-	p.Faults = faults
+	for _, f := range faults {
+		if f != nil {
+			p.Faults = append(p.Faults, *f)
+		}
+	}
+	if len(p.Faults) == 0 {
+		return nil
+	}
 	return p
 }
 

@@ -5,11 +5,12 @@ import (
 	"compress/gzip"
 	"crypto/sha256"
 	"encoding/hex"
-	"encoding/json"
 	"net/http"
 	"strconv"
 	"strings"
 	"sync"
+
+	"github.com/go-json-experiment/json"
 )
 
 const compressFrom = 1024 // bytes; smaller answers are not worth it
@@ -92,11 +93,8 @@ func (x *exchange) replyJSON(v any, tagged bool) *Problem {
 }
 
 func encode(v any) ([]byte, error) {
-	var b bytes.Buffer
-	e := json.NewEncoder(&b)
-	e.SetEscapeHTML(false)
-	err := e.Encode(v)
-	return b.Bytes(), err
+	body, err := json.Marshal(v, json.Deterministic(true))
+	return append(body, '\n'), err
 }
 
 // refuse sends a problem instead of an answer.

@@ -9,46 +9,41 @@ import (
 	"gramlaw/internal/rulebook"
 )
 
-// marketLaw is what one market's rules say on one labelling date.
-type marketLaw struct {
-	Rules        check.RuleSet `json:"rules"`
-	Jurisdiction string        `json:"jurisdiction"`
-	Name         string        `json:"name"`
-	Languages    []string      `json:"languages"`
-	On           string        `json:"on"`
-	Transition   string        `json:"transition"`
-	Edition      string        `json:"edition,omitzero"`
-	Editions     []edition     `json:"editions"`
-	InForce      []activeRule  `json:"in_force"`
-	Gaps         []string      `json:"gaps"`
-	NotJudged    []string      `json:"not_judged"`
-	Caution      string        `json:"caution"`
+// marketRules is what one market's rules say on one labelling date.
+type marketRules struct {
+	Rules        check.RuleSet      `json:"rules"`
+	Jurisdiction string             `json:"jurisdiction"`
+	Name         string             `json:"name"`
+	Languages    []string           `json:"languages"`
+	On           string             `json:"on"`
+	Transition   string             `json:"transition"`
+	Edition      string             `json:"edition,omitzero"`
+	Editions     []rulebook.Edition `json:"editions"`
+	InForce      []ruleInForce      `json:"in_force"`
+	Gaps         []string           `json:"gaps"`
+	NotJudged    []string           `json:"not_judged"`
+	Caution      string             `json:"caution"`
 }
 
-// An edition is a reform whose rules go together on one label.
-type edition struct {
-	Edition      string   `json:"edition"`
-	From         string   `json:"from"`
-	RequiredFrom []string `json:"required_from,omitzero"` // several where the law staggers the day
-	Until        string   `json:"until,omitzero"`
-	Source       string   `json:"source"`
+// A ruleInForce is a rule with the version of it that holds.
+type ruleInForce struct {
+	Kind           string `json:"kind"` // the name of its file in the rule set
+	ID             string `json:"id"`
+	*rulebook.Head `json:",embed"`
+	Text           any `json:"text"` // as the rule set has it
 }
 
-// An activeRule is a rule with the version of it that holds.
-type activeRule struct {
-	Kind string `json:"kind"` // the name of its file in the rule set
-	ID   string `json:"id"`
-	version
-}
-
-// A version is what a dated version of a rule says of itself.
-type version struct {
-	From         string          `json:"from"`
-	RequiredFrom []string        `json:"required_from,omitzero"` // several where the law staggers the day
-	Until        string          `json:"until,omitzero"`
-	Edition      string          `json:"edition,omitzero"`
-	AppliesTo    string          `json:"applies_to,omitzero"`
-	Source       rulebook.Source `json:"source"`
+// marketChanges is what differs between two labelling dates.
+type marketChanges struct {
+	Rules        check.RuleSet     `json:"rules"`
+	Jurisdiction string            `json:"jurisdiction"`
+	From         string            `json:"from"`
+	To           string            `json:"to"`
+	Transition   string            `json:"transition"`
+	EditionWas   string            `json:"edition_was,omitzero"`
+	EditionIs    string            `json:"edition_is,omitzero"`
+	Changes      []rulebook.Change `json:"changes"`
+	Caution      string            `json:"caution"`
 }
 
 // getRules tells what the rule set covers.
@@ -63,13 +58,72 @@ func getRules(x *exchange) *Problem {
 	return x.replyJSON(report, true)
 }
 
+// getMarket shows the rules in force.
+func getMarket(x *exchange) *Problem {
+	m, p := x.market()
+	if p != nil {
+		return p
+	}
+	parameters, p := x.parameters("on", "transition")
+	if p != nil {
+		return p
+	}
+	on, badOn := date(parameters, "on", x.today())
+	t, badTransition := transition(parameters)
+	if p := faultyParameters(badOn, badTransition); p != nil {
+		return p
+	}
+	law := x.law(on, t)
+	page := marketRules{
+		Rules: x.ruleSet(), Jurisdiction: m.Jurisdiction, Name: m.Name, Languages: m.Languages, On: on, Transition: string(t), Edition: law.Edition,
+		Editions: m.Editions, Gaps: m.Gaps, NotJudged: m.NotJudged, Caution: caution(m),
+	}
+	law.Each(func(kind, id string, h *rulebook.Head, body any) {
+		page.InForce = append(page.InForce, ruleInForce{kind, id, h, body})
+	})
+	return x.replyJSON(page, true)
+}
+
+// getChanges compares two labelling dates.
+func getChanges(x *exchange) *Problem {
+	m, p := x.market()
+	if p != nil {
+		return p
+	}
+	parameters, p := x.parameters("from", "to", "transition")
+	if p != nil {
+		return p
+	}
+	from, badFrom := date(parameters, "from", "")
+	to, badTo := date(parameters, "to", "")
+	t, badTransition := transition(parameters)
+	if badFrom == nil && badTo == nil && from > to {
+		badTo = &Fault{Parameter: "to", Code: "range-reversed", Says: "the day lies before from"}
+	}
+	if p := faultyParameters(badFrom, badTo, badTransition); p != nil {
+		return p
+	}
+	was, is := x.law(from, t), x.law(to, t)
+	return x.replyJSON(marketChanges{
+		Rules: x.ruleSet(), Jurisdiction: m.Jurisdiction, From: from, To: to, Transition: string(t), EditionWas: was.Edition, EditionIs: is.Edition,
+		Changes: rulebook.Changes(was, is), Caution: caution(m),
+	}, true)
+}
+
 // market finds the market of the path.
-func (x *exchange) market() (*rulebook.Rules, *Problem) {
-	m, ok := x.rules.Book.Rules(x.r.PathValue("jurisdiction"))
+func (x *exchange) market() (*rulebook.Market, *Problem) {
+	r, ok := x.rules.Book.Rules(x.r.PathValue("jurisdiction"))
 	if !ok {
 		return nil, problem(notFound, "The rule set has no such market; it has "+strings.Join(x.rules.Book.Jurisdictions(), ", ")+".")
 	}
-	return m, nil
+	return &r.Market, nil
+}
+
+// law is the market's law where no fact of a recipe is known: a staggered day counts as reached when its last one is.
+func (x *exchange) law(on string, t rulebook.Transition) *rulebook.Law {
+	open := func(*rulebook.Condition) quantity.Truth { return quantity.Open }
+	law, _ := x.rules.Book.At(x.r.PathValue("jurisdiction"), on, t, open) // market has found it
+	return law
 }
 
 // transition reads the parameter of that name.
@@ -83,81 +137,10 @@ func transition(parameters map[string]string) (rulebook.Transition, *Fault) {
 	return "", &Fault{Parameter: "transition", Code: "unknown-transition", Says: "required or newest is wanted"}
 }
 
-// law is the market's law where no fact of a recipe is known: a staggered day counts as reached when its last one is.
-func (x *exchange) law(on string, t rulebook.Transition) *rulebook.Law {
-	open := func(*rulebook.Condition) quantity.Truth { return quantity.Open }
-	law, _ := x.rules.Book.At(x.r.PathValue("jurisdiction"), on, t, open) // market has found it
-	return law
-}
-
 func (x *exchange) ruleSet() check.RuleSet {
 	return check.RuleSet{Version: x.rules.Book.Version, Digest: x.rules.Book.Digest}
 }
 
-func given(faults ...*Fault) *Problem {
-	var out []Fault
-	for _, f := range faults {
-		if f != nil {
-			out = append(out, *f)
-		}
-	}
-	if len(out) == 0 {
-		return nil
-	}
-	return faultyParameters(out...)
-}
-
-// getMarket shows the rules in force.
-func getMarket(x *exchange) *Problem {
-	m, p := x.market()
-	if p != nil {
-		return p
-	}
-	parameters, p := x.parameters("on", "transition")
-	if p != nil {
-		return p
-	}
-	on, badOn := date(parameters, "on", x.today())
-	t, badTransition := transition(parameters)
-	if p := given(badOn, badTransition); p != nil {
-		return p
-	}
-	law := x.law(on, t)
-	page := marketLaw{
-		Rules: x.ruleSet(), Jurisdiction: m.Market.Jurisdiction, Name: m.Market.Name, Languages: some(m.Market.Languages), On: on, Transition: string(t),
-		Edition: law.Edition, Editions: editions(&m.Market), InForce: []activeRule{}, Gaps: some(m.Market.Gaps), NotJudged: some(m.Market.NotJudged), Caution: caution(&m.Market),
-	}
-	law.Each(func(kind, id string, h *rulebook.Head) {
-		page.InForce = append(page.InForce, activeRule{kind, id, *versionOf(h)})
-	})
-	return x.replyJSON(page, true)
-}
-
-func editions(m *rulebook.Market) []edition {
-	out := []edition{}
-	for _, e := range m.Editions {
-		out = append(out, edition{e.Edition, e.From, days(e.RequiredFrom), e.Until, e.Source.Ref})
-	}
-	return out
-}
-
-func days(list []rulebook.Required) []string {
-	var out []string
-	for _, r := range list {
-		out = append(out, r.Date)
-	}
-	return out
-}
-
-func some(list []string) []string { return append([]string{}, list...) }
-
 func caution(m *rulebook.Market) string {
 	return strings.TrimSpace(m.Caution + " " + check.Caution)
-}
-
-func versionOf(h *rulebook.Head) *version {
-	if h == nil {
-		return nil
-	}
-	return &version{h.From, days(h.RequiredFrom), h.Until, h.Edition, h.AppliesTo, h.Source}
 }
