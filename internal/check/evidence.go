@@ -43,31 +43,51 @@ func (m *market) gradeOfValue(rounding *rulebook.Head, q string) string {
 
 // weakest is the weakest grade among a claim's rule and all its condition rests on, and the rule that has it.
 func (m *market) weakest(c rulebook.Active[rulebook.Claim]) (grade, rule string) {
-	grade, rule = c.Head.Source.Evidence, c.ID
-	lower := func(g, id string) {
-		if id != "" && weaker(g, grade) {
-			grade, rule = g, id
-		}
+	w := weakest{m: m, grade: c.Head.Source.Evidence, rule: c.ID}
+	w.condition(c.Body.Condition)
+	return w.grade, w.rule
+}
+
+// A weakest keeps the lowest grade it has met.
+type weakest struct {
+	m           *market
+	grade, rule string
+}
+
+func (w *weakest) lower(grade, rule string) {
+	if rule != "" && weaker(grade, w.grade) {
+		w.grade, w.rule = grade, rule
 	}
-	c.Body.Condition.Walk(func(p *rulebook.Condition) {
+}
+
+func (w *weakest) condition(c *rulebook.Condition) {
+	c.Walk(func(p *rulebook.Condition) {
 		switch p.Op {
 		case rulebook.OpCompare:
-			for _, t := range p.Terms() {
-				lower(m.gradeOf(t.Name))
-				if p.As == "share of reference value" {
-					if r, ok := m.law.ReferenceOf(t.Name); ok {
-						lower(r.Head.Source.Evidence, r.ID)
-					}
-				}
-			}
-			if p.As == "share of energy" {
-				lower(m.gradeOf("energy"))
-			}
+			w.comparison(p)
 		case rulebook.OpMeets:
-			if other, ok := m.law.Claims.Get(rulebook.Name(p.Name)); ok {
-				lower(m.weakest(other))
+			if other, ok := w.m.claim(p.Name); ok {
+				w.lower(w.m.weakest(other))
+			}
+		case rulebook.OpHolds:
+			if named, ok := w.m.law.Conditions.Get(rulebook.Name(p.Name)); ok {
+				w.lower(named.Head.Source.Evidence, named.ID)
+				w.condition(named.Body.Condition)
 			}
 		}
 	})
-	return grade, rule
+}
+
+func (w *weakest) comparison(p *rulebook.Condition) {
+	for _, t := range p.Terms() {
+		w.lower(w.m.gradeOf(t.Name))
+		if p.As == "share of reference value" {
+			if r, ok := w.m.law.ReferenceOf(t.Name); ok {
+				w.lower(r.Head.Source.Evidence, r.ID)
+			}
+		}
+	}
+	if p.As == "share of energy" {
+		w.lower(w.m.gradeOf("energy"))
+	}
 }

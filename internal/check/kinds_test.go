@@ -165,3 +165,26 @@ func TestDailyIntake(t *testing.T) {
 		})
 	}
 }
+
+func TestClaimsSeeTheReferenceFoodThroughOthers(t *testing.T) {
+	b := smallMarket(t, map[string]string{
+		"conditions.json": `{"id":"xx/condition/less-fat","versions":[{"from":"2000-01-01","source":{"ref":"y","evidence":"memory","force":"law"},"condition":{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}}]}`,
+		"claims.json": `{"id":"xx/claim/reduced","versions":[{"from":"2000-01-01","source":{"ref":"y","evidence":"official text","force":"law"},"name":{"en":"reduced"},"about":["fat"],"needs reference food":true,"condition":{"holds":"xx/condition/less-fat"}}]},
+			{"id":"xx/claim/diet","versions":[{SOURCE,"name":{"en":"diet"},"about":["fat"],"condition":{"any":[{"of":{"fat":"1"},"per":"100 g","below":"1 g"},{"meets":"xx/claim/reduced"}]}}]}`})
+	for _, c := range []struct{ name, fat, more, verdict string }{
+		{"by itself", "0.9 g", `,"claims":[{"claim":"diet"}]`, "permitted"},
+		{"without a reference food", "3 g", `,"claims":[{"claim":"diet"}]`, "undetermined"},
+		{"25 % less than the reference food", "3 g", `,"claims":[{"claim":"diet","against":"r"}]`, "permitted"},
+		{"just not 25 % less", "3.01 g", `,"claims":[{"claim":"diet","against":"r"}]`, "refused"},
+		{"through a named condition", "3 g", `,"claims":[{"claim":"reduced","against":"r"}]`, "permitted"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"`+c.fat+`","PROCNT":"1 g","NACL":"0 g"}`, c.more+
+				`,"reference_foods":{"r":{"kind":"similar product","composition":{"per":"100 g","components":{"FAT":"4 g","PROCNT":"1 g","NACL":"0 g"}}}}`))
+			got := m.Claims[0]
+			if got.Verdict != c.verdict || got.Evidence != "memory" {
+				t.Errorf("%s from %s, want %s: %+v", got.Verdict, got.Evidence, c.verdict, got.Condition)
+			}
+		})
+	}
+}

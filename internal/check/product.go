@@ -328,10 +328,7 @@ func (p *product) Meets(id string) quantity.Truth {
 		return t
 	}
 	t := quantity.Open // a claim that is undecided or not in force on the date decides nothing
-	c, ok := p.m.law.Claims.Get(rulebook.Name(id))
-	if !ok || c.ID != id {
-		c, ok = p.m.law.HealthClaims.Get(rulebook.Name(id))
-	}
+	c, ok := p.m.claim(id)
 	switch {
 	case ok && c.Body.Prohibited:
 		t = quantity.No

@@ -193,6 +193,25 @@ func (v view) ClaimedAbout(subjects []string, onLabel bool) quantity.Truth {
 	return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return v.about[s] || s == "any" && len(v.about) > 0 }))
 }
 
+// Meets answers whether the food meets a claim of the law, one that compares beside the reference food asked with the claim judged.
+func (v view) Meets(id string) quantity.Truth {
+	if v.ref != nil {
+		if c, ok := v.claim(id); ok && c.Body.Against && c.Body.Condition != nil {
+			return v.truth(c.Body.Condition)
+		}
+	}
+	return v.subject.Meets(id)
+}
+
+// claim finds a claim by its identifier.
+func (m *market) claim(id string) (rulebook.Active[rulebook.Claim], bool) {
+	c, ok := m.law.Claims.Get(rulebook.Name(id))
+	if !ok || c.ID != id {
+		c, ok = m.law.HealthClaims.Get(rulebook.Name(id))
+	}
+	return c, ok
+}
+
 // Named is the active version of a condition that has a rule of its own.
 func (v view) Named(id string) (*rulebook.Condition, bool) {
 	c, ok := v.law.Conditions.Get(rulebook.Name(id))

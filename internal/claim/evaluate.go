@@ -19,7 +19,7 @@ type Subject interface {
 	Mass() quantity.Ratio
 	// Basis is the mass in g of "serving", "reference amount", "package" or of a volume; false when it is not known.
 	Basis(p rulebook.Per) (quantity.Ratio, bool)
-	// Meets answers whether the food meets a claim's condition.
+	// Meets answers whether the food, by itself, meets a claim's condition.
 	Meets(id string) quantity.Truth
 }
 
@@ -27,7 +27,8 @@ type Subject interface {
 type Context interface {
 	Product() Subject
 	Reference() (Subject, bool)
-	Name(quantity string) string // in words
+	Meets(id string) quantity.Truth // whether the product meets a claim's condition, beside the reference food if there is one
+	Name(quantity string) string    // in words
 	EnergyFactor(quantity string) (f quantity.Ratio, ok bool)
 	ReferenceValue(quantity string) (v quantity.Ratio, ok bool)
 	Declared(quantity, is string) quantity.Truth // "" asks whether the line stands
@@ -239,7 +240,7 @@ func (x evaluator) size(c *rulebook.Condition) quantity.Truth {
 
 func (x evaluator) meets(c *rulebook.Condition) quantity.Truth {
 	if c.Subject != "reference food" {
-		return x.Product().Meets(c.Name)
+		return x.Meets(c.Name)
 	}
 	ref, ok := x.Reference()
 	if !ok {

@@ -29,8 +29,11 @@ func (f food) Basis(p rulebook.Per) (quantity.Ratio, bool) {
 
 type world struct{ product, reference food }
 
-func (w world) Product() Subject                    { return w.product }
-func (w world) Reference() (Subject, bool)          { return w.reference, w.reference != nil }
+func (w world) Product() Subject           { return w.product }
+func (w world) Reference() (Subject, bool) { return w.reference, w.reference != nil }
+func (w world) Meets(id string) quantity.Truth {
+	return quantity.TruthOf(id == "x/claim/lower" && w.reference != nil)
+}
 func (w world) Name(q string) string                { return q }
 func (w world) Declared(_, _ string) quantity.Truth { return quantity.Open }
 func (w world) Fact(name, is string) quantity.Truth {
@@ -152,6 +155,7 @@ func TestConditions(t *testing.T) {
 		{"not more than the reference", `{"of":{"fat":"1"},"per":"100 g","not more than":"reference food"}`, world{bread, food{"fat": exactly(3, 0)}}, quantity.Yes},
 		{"less by an amount", `{"of":{"fat":"1"},"per":"100 g","less by":"2 g"}`, world{bread, food{"fat": exactly(5, 0)}}, quantity.Yes},
 		{"more by a share of the reference value", `{"of":{"fat":"1"},"as":"share of reference value","per":"100 g","more by":"10 %"}`, world{bread, food{"fat": exactly(1, 0)}}, quantity.Yes},
+		{"another claim that compares", `{"meets":"x/claim/lower"}`, world{bread, bread}, quantity.Yes},
 		{"no reference food", `{"of":{"fat":"1"},"per":"100 g","reduced by":"25 %"}`, world{product: bread}, quantity.Open},
 	} {
 		t.Run(c.name, func(t *testing.T) {

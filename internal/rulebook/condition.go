@@ -137,7 +137,7 @@ func (c *Condition) OfProduct() bool { return c != nil && c.ofProduct }
 func (c *Condition) asksProductOnly() bool {
 	switch c.Op {
 	case OpCompare:
-		return c.Subject == "" && !c.Relation.Relative()
+		return c.Subject == "" && !c.Relation.Relative() && !slices.ContainsFunc(c.Times, func(w Weight) bool { return w.If != nil && !w.If.asksProductOnly() })
 	case OpFact, OpAmount, OpSize, OpIngredient, OpUndecided:
 		return true
 	case OpAll, OpAny, OpNot, OpCount, OpWhen:
@@ -146,11 +146,7 @@ func (c *Condition) asksProductOnly() bool {
 	return false
 }
 
-// Relative tells whether the condition needs a reference food.
-func (c *Condition) Relative() bool {
-	found := false
-	c.Walk(func(p *Condition) {
-		found = found || p.Subject == "reference food" || p.Op == OpKind || p.Op == OpCompare && p.Relation.Relative()
-	})
-	return found
+// comparesFoods tells whether the condition itself, without its parts, needs a reference food.
+func (c *Condition) comparesFoods() bool {
+	return c.Subject == "reference food" || c.Op == OpKind || c.Op == OpCompare && c.Relation.Relative()
 }

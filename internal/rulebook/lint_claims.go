@@ -146,7 +146,7 @@ func (c *checker) claimsOf(kind string, rules []Rule[Claim]) {
 			c.bad(kind, id, field, "must have exactly one of condition, prohibited and undecided")
 		}
 		c.condition(kind, id, field+"/barred if", "barred/"+Name(id), cl.BarredIf)
-		if cl.Condition.Relative() != cl.Against {
+		if compares, reaches := c.relative(cl.Condition); compares && !cl.Against || cl.Against && !reaches {
 			c.bad(kind, id, field+"/needs reference food", "must be true exactly when the condition compares with one")
 		}
 		c.condition(kind, id, field+"/condition", node, cl.Condition)

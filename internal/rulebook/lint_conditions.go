@@ -98,6 +98,36 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 	})
 }
 
+// relative tells whether a condition compares with a reference food, by itself or through conditions that it points at; and whether it
+// does that at least through another claim, which may hold without one.
+func (c *checker) relative(cond *Condition) (compares, reaches bool) {
+	seen := map[string]bool{}
+	var look func(*Condition)
+	look = func(cond *Condition) {
+		cond.Walk(func(p *Condition) {
+			compares = compares || p.comparesFoods()
+			if p.Op == OpMeets && p.Subject == "" {
+				reaches = reaches || slices.ContainsFunc(slices.Concat(c.m.Claims, c.m.HealthClaims), func(r Rule[Claim]) bool {
+					return r.ID == p.Name && slices.ContainsFunc(r.Versions, func(v Version[Claim]) bool { return v.Body.Against })
+				})
+			}
+			if p.Op != OpHolds || seen[p.Name] {
+				return
+			}
+			seen[p.Name] = true
+			for i := range c.m.Conditions {
+				for j := range c.m.Conditions[i].Versions {
+					if c.m.Conditions[i].ID == p.Name {
+						look(c.m.Conditions[i].Versions[j].Body.Condition)
+					}
+				}
+			}
+		})
+	}
+	look(cond)
+	return compares, compares || reaches
+}
+
 func (c *checker) meets(kind, id, field, node string, p *Condition) {
 	same := func(r Rule[Claim]) bool { return r.ID == p.Name }
 	if !slices.ContainsFunc(c.m.Claims, same) && !slices.ContainsFunc(c.m.HealthClaims, same) {
