@@ -260,6 +260,9 @@ func (r Ratio) Cmp(s Ratio) int {
 			return c
 		}
 	}
+	if c, ok := cmpBounds(r, s); ok {
+		return c
+	}
 	x, y, _ := align(r, s)
 	if same {
 		return x.Cmp(y)

@@ -22,6 +22,9 @@ func (r Ratio) Round(step decimal.Decimal, ties Ties) decimal.Decimal {
 	if k, ok := r.round64(step, ties); ok {
 		return k
 	}
+	if k, ok := r.roundBounds(step); ok {
+		return k
+	}
 	n, d := r.fraction()
 	sn, sd := FromDecimal(step).fraction()
 	// r/step = (n·sd) / (d·sn)
