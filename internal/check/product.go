@@ -23,7 +23,6 @@ type product struct {
 type part struct {
 	amount   quantity.Linear
 	complete bool // found by a way whose data are complete
-	way      int
 }
 
 func newProduct(m *market, b *rollup.Batch) *product {
@@ -42,18 +41,33 @@ func (p *product) Quantity(name string) (quantity.Linear, bool) {
 	if e, ok := p.m.law.Energy.Get(name); ok {
 		return p.energy(name, &e.Body.Methods[0])
 	}
-	parts, ok := p.parts(name)
+	sum, ok := p.sumOfComponents(name)
 	if !ok {
-		return quantity.Linear{}, false
-	}
-	sum := quantity.Sum(func(yield func(quantity.Linear) bool) {
-		for i := range parts {
-			if !yield(parts[i].amount) {
-				return
-			}
+		parts, ok := p.parts(name)
+		if !ok {
+			return quantity.Linear{}, false
 		}
-	})
+		sum = quantity.Sum(func(yield func(quantity.Linear) bool) {
+			for i := range parts {
+				if !yield(parts[i].amount) {
+					return
+				}
+			}
+		})
+	}
 	p.totals[name] = sum
+	return sum, true
+}
+
+// sumOfComponents is a quantity that its definition sums from components in one way, for all leaves at once.
+func (p *product) sumOfComponents(name string) (sum quantity.Linear, ok bool) {
+	d, ok := p.m.law.Definitions.Get(name)
+	if !ok || len(d.Body.Ways) != 1 || d.Body.Ways[0].Sum == nil {
+		return sum, false
+	}
+	for _, part := range d.Body.Ways[0].Parts() {
+		sum = sum.Add(p.batch.Total(part.ID).Mul(part.Factor))
+	}
 	return sum, true
 }
 
@@ -115,7 +129,7 @@ func (p *product) resolve(d *rulebook.Definition, l *rollup.Leaf) (part, bool) {
 		if !ok {
 			return part{}, false
 		}
-		out = part{amount, complete, i}
+		out = part{amount, complete}
 		if complete {
 			break
 		}

@@ -14,6 +14,9 @@ type Variable struct {
 	Low, High Ratio
 	Central   Ratio
 	Typical   bool // Central is set
+
+	self uncertain // the variable as a form
+	one  [1]term
 }
 
 type term struct {
@@ -24,9 +27,27 @@ type term struct {
 // A Linear is an exact value plus multiples of variables. Because variables stay apart until the end, what is uncertain
 // in two places but is the same thing cancels instead of adding up.
 type Linear struct {
-	Known Ratio
+	Known     Ratio
+	uncertain *uncertain // nil where nothing is
+}
+
+type uncertain struct {
 	terms []term    // by index, no zero coefficients
 	ends  *[2]Ratio // least and greatest value, where somebody has worked them out
+}
+
+func (l Linear) terms() []term {
+	if l.uncertain == nil {
+		return nil
+	}
+	return l.uncertain.terms
+}
+
+func linear(known Ratio, terms []term) Linear {
+	if len(terms) == 0 {
+		return Linear{Known: known}
+	}
+	return Linear{known, &uncertain{terms: terms}}
 }
 
 // Exactly is a linear form without uncertainty.
@@ -37,24 +58,30 @@ func Of(v *Variable) Linear {
 	if v.Low.Cmp(v.High) == 0 {
 		return Linear{Known: v.Low}
 	}
-	return Linear{terms: []term{{v, FromInt(1)}}}
+	if v.self.terms == nil {
+		v.one[0] = term{v, FromInt(1)}
+		v.self.terms = v.one[:]
+	}
+	return Linear{uncertain: &v.self}
 }
 
 // Determined reports that nothing is uncertain.
-func (l Linear) Determined() bool { return len(l.terms) == 0 }
+func (l Linear) Determined() bool { return l.uncertain == nil }
 
 // Add is l + m.
 func (l Linear) Add(m Linear) Linear {
-	s := Linear{Known: l.Known.Add(m.Known)}
+	known := l.Known.Add(m.Known)
 	switch {
-	case len(m.terms) == 0:
-		s.terms = l.terms
-	case len(l.terms) == 0:
-		s.terms = m.terms
-	default:
-		s.terms = mergeTerms(l.terms, m.terms)
+	case m.uncertain == nil && m.Known.IsZero():
+		return l
+	case l.uncertain == nil && l.Known.IsZero():
+		return m
+	case m.uncertain == nil:
+		return linear(known, l.terms())
+	case l.uncertain == nil:
+		return linear(known, m.terms())
 	}
-	return s
+	return linear(known, mergeTerms(l.terms(), m.terms()))
 }
 
 func mergeTerms(a, b []term) []term {
@@ -78,23 +105,23 @@ func mergeTerms(a, b []term) []term {
 // Sum adds many forms at once; its cost is linear in their terms, but for one sort. What shares a denominator is added up first, so that
 // few sums need a new one.
 func Sum(forms iter.Seq[Linear]) Linear {
-	var s Linear
 	var known tally
+	var terms []term
 	sorted, last := true, 0
 	for l := range forms {
 		known.add(l.Known)
-		for _, t := range l.terms {
+		for _, t := range l.terms() {
 			sorted = sorted && t.v.Index > last
 			last = t.v.Index
-			s.terms = append(s.terms, t)
+			terms = append(terms, t)
 		}
 	}
-	s.Known = known.sum()
 	if !sorted {
-		s.terms = united(s.terms)
+		terms = united(terms)
 	}
-	if len(s.terms) > 0 {
-		s.ends = &[2]Ratio{s.end(true), s.end(false)}
+	s := linear(known.sum(), terms)
+	if s.uncertain != nil {
+		s.uncertain.ends = &[2]Ratio{s.end(true), s.end(false)}
 	}
 	return s
 }
@@ -161,14 +188,14 @@ func (l Linear) Mul(r Ratio) Linear {
 	if r.isOne() {
 		return l
 	}
-	s := Linear{Known: l.Known.Mul(r)}
-	if len(l.terms) > 0 {
-		s.terms = make([]term, len(l.terms))
-		for i, t := range l.terms {
-			s.terms[i] = term{t.v, t.c.Mul(r)}
-		}
+	if l.uncertain == nil {
+		return Linear{Known: l.Known.Mul(r)}
 	}
-	return s
+	terms := make([]term, len(l.terms()))
+	for i, t := range l.terms() {
+		terms[i] = term{t.v, t.c.Mul(r)}
+	}
+	return linear(l.Known.Mul(r), terms)
 }
 
 // Times is l multiplied by a decimal.
@@ -176,16 +203,22 @@ func (l Linear) Times(d decimal.Decimal) Linear { return l.Mul(FromDecimal(d)) }
 
 // Low is the least value over all variables, High the greatest.
 func (l Linear) Low() Ratio {
-	if l.ends != nil {
-		return l.ends[0]
+	switch {
+	case l.uncertain == nil:
+		return l.Known
+	case l.uncertain.ends != nil:
+		return l.uncertain.ends[0]
 	}
 	return l.end(true)
 }
 
 // High is the greatest value over all variables.
 func (l Linear) High() Ratio {
-	if l.ends != nil {
-		return l.ends[1]
+	switch {
+	case l.uncertain == nil:
+		return l.Known
+	case l.uncertain.ends != nil:
+		return l.uncertain.ends[1]
 	}
 	return l.end(false)
 }
@@ -193,7 +226,7 @@ func (l Linear) High() Ratio {
 func (l Linear) end(low bool) Ratio {
 	var s tally
 	s.add(l.Known)
-	for _, t := range l.terms {
+	for _, t := range l.terms() {
 		x := t.v.High
 		if low == (t.c.Sign() > 0) {
 			x = t.v.Low
@@ -210,7 +243,7 @@ func (l Linear) end(low bool) Ratio {
 func (l Linear) Central() (Ratio, bool) {
 	var s tally
 	s.add(l.Known)
-	for _, t := range l.terms {
+	for _, t := range l.terms() {
 		if !t.v.Typical {
 			return Ratio{}, false
 		}
@@ -221,8 +254,8 @@ func (l Linear) Central() (Ratio, bool) {
 
 // Variables lists what the form still depends on, in order.
 func (l Linear) Variables() []*Variable {
-	out := make([]*Variable, len(l.terms))
-	for i, t := range l.terms {
+	out := make([]*Variable, len(l.terms()))
+	for i, t := range l.terms() {
 		out[i] = t.v
 	}
 	return out

@@ -183,7 +183,7 @@ func (l *Leaf) share(per100 quantity.Ratio) quantity.Ratio {
 }
 
 func (l *Leaf) presumed(id food.ID, p Presumed) Amount {
-	a := Amount{How: ByPractice, Rule: p.Rule}
+	a := Amount{How: ByPractice}
 	if p.Of == 0 {
 		return a
 	}

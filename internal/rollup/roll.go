@@ -28,7 +28,9 @@ func Roll(p recipe.Part, o Options) (*Batch, *Fault) {
 		return nil, fault
 	}
 	for i, l := range b.Leaves {
-		l.Index = i
+		if l.Index = i; l.Ingredient != nil {
+			b.ingoing = b.ingoing.Add(l.Mass)
+		}
 	}
 	b.plausible()
 	return b, nil

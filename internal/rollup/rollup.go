@@ -65,6 +65,14 @@ type Batch struct {
 	den     *big.Int // of masses
 	fine    *big.Int // of fatty acids: a multiple of den; nil without profiles in per cent
 	owners  []Owner
+	totals  [food.Count + 1]*total
+	ingoing quantity.Ratio // g of ingredients, fat taken up included
+}
+
+// A total is what all leaves hold of a component, and the mass of those of which somebody knows.
+type total struct {
+	amount  quantity.Linear
+	covered quantity.Ratio
 }
 
 // An Owner says whose uncertainty a variable is.
@@ -138,8 +146,7 @@ const (
 // An Amount is a leaf's contribution to the batch, in base units.
 type Amount struct {
 	quantity.Linear
-	How  How
-	Rule string // for ByPractice
+	How How
 }
 
 // Variable makes a variable of the leaf's; what names it.
@@ -159,30 +166,32 @@ func (b *Batch) Owner(v *quantity.Variable) (Owner, bool) {
 }
 
 // Total is the batch's content of a component, in base units.
-func (b *Batch) Total(id food.ID) quantity.Linear {
-	return quantity.Sum(func(yield func(quantity.Linear) bool) {
+func (b *Batch) Total(id food.ID) quantity.Linear { return b.total(id).amount }
+
+// Coverage is the share of the ingoing mass whose content of a component somebody stated or practice presumes.
+func (b *Batch) Coverage(id food.ID) quantity.Ratio {
+	if b.ingoing.IsZero() {
+		return quantity.Ratio{}
+	}
+	return b.total(id).covered.Quo(b.ingoing)
+}
+
+func (b *Batch) total(id food.ID) *total {
+	if t := b.totals[id]; t != nil {
+		return t
+	}
+	t := &total{}
+	t.amount = quantity.Sum(func(yield func(quantity.Linear) bool) {
 		for _, l := range b.Leaves {
-			if !yield(l.Component(id).Linear) {
+			a := l.Component(id)
+			if l.Ingredient != nil && (a.How != Bounded || a.Determined()) {
+				t.covered = t.covered.Add(l.Mass)
+			}
+			if !yield(a.Linear) {
 				return
 			}
 		}
 	})
-}
-
-// Coverage is the share of the ingoing mass whose content of a component somebody stated or practice presumes.
-func (b *Batch) Coverage(id food.ID) quantity.Ratio {
-	var with, all quantity.Ratio
-	for _, l := range b.Leaves {
-		if l.Ingredient == nil {
-			continue
-		}
-		all = all.Add(l.Mass)
-		if a := l.Component(id); a.How != Bounded || a.Determined() {
-			with = with.Add(l.Mass)
-		}
-	}
-	if all.IsZero() {
-		return quantity.Ratio{}
-	}
-	return with.Quo(all)
+	b.totals[id] = t
+	return t
 }
