@@ -95,7 +95,6 @@ func (h *habits) presume(l *rollup.Leaf, id food.ID) (rollup.Presumed, bool) {
 }
 
 func (h *habits) note(l *rollup.Leaf, id food.ID, rule string, p *rulebook.Presumption) {
-	c, _ := food.ByID(id)
 	taken := p.Take
 	if p.Share != nil {
 		taken += " " + p.Share.String() + " of"
@@ -103,7 +102,7 @@ func (h *habits) note(l *rollup.Leaf, id food.ID, rule string, p *rulebook.Presu
 	if p.Of != "" {
 		taken += " " + p.Of
 	}
-	h.use(Presumed{Component: c.Tag, Ingredient: l.Path, Taken: taken, Reason: p.Reason, Rule: rule})
+	h.use(Presumed{Component: id.Tag(), Ingredient: l.Path, Taken: taken, Reason: p.Reason, Rule: rule})
 }
 
 func (h *habits) use(n Presumed) {
@@ -144,9 +143,7 @@ func littleTrans(limit *quantity.Amount, l *rollup.Leaf) bool {
 	if limit == nil {
 		return true
 	}
-	trans, _ := food.Lookup("FATRN")
-	fat, _ := food.Lookup("FAT")
-	most := l.Component(fat.ID).Low().Times(limit.Value.Shift(-2))
-	held := l.Component(trans.ID).High()
+	most := l.Component(food.Fat).Low().Times(limit.Value.Shift(-2))
+	held := l.Component(food.TransFat).High()
 	return held.Sign() > 0 && held.Cmp(most) <= 0
 }

@@ -292,8 +292,7 @@ func (m *market) process(l *rollup.Leaf) string {
 }
 
 func (m *market) mayBeHydrogenated(l *rollup.Leaf) bool {
-	trans, _ := food.Lookup("FATRN")
-	return m.product.originShare(l.Component(trans.ID).Linear, l, "industrial").High().Sign() > 0
+	return m.product.originShare(l.Component(food.TransFat).Linear, l, "industrial").High().Sign() > 0
 }
 
 // matches tells whether an ingredient has one of the processes and an iodine value on the side asked for.

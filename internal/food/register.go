@@ -11,6 +11,16 @@ import (
 // It may change between builds; the tagname is what lasts.
 type ID uint16
 
+// IDs of components that the roll-up speaks of itself; a test holds them to the register.
+const (
+	Water             ID = 1
+	Fat               ID = 6
+	FolicAcid         ID = 36
+	FoodFolate        ID = 37
+	FolateEquivalents ID = 38
+	TransFat          ID = 121
+)
+
 // Unit is the unit of a component's amounts, spelt as in the tables.
 type Unit string
 
@@ -109,6 +119,22 @@ func ByID(id ID) (Component, bool) {
 		return Component{}, false
 	}
 	return register[id-1].Component, true
+}
+
+// Tag is the component's tagname; empty for none.
+func (id ID) Tag() string {
+	if !id.valid() {
+		return ""
+	}
+	return register[id-1].Tag
+}
+
+// Unit is the unit of the component's amounts; empty for none.
+func (id ID) Unit() Unit {
+	if !id.valid() {
+		return ""
+	}
+	return register[id-1].Unit
 }
 
 // Components lists the register in the order of IDs.

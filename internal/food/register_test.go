@@ -258,3 +258,11 @@ func tenthMicrograms(id ID, n Number) int64 {
 	}
 	return m
 }
+
+func TestNamedIDs(t *testing.T) {
+	for tag, id := range map[string]ID{"WATER": Water, "FAT": Fat, "FOLAC": FolicAcid, "FOLFD": FoodFolate, "FOLDFE": FolateEquivalents, "FATRN": TransFat} {
+		if got := mustID(t, tag); got != id {
+			t.Errorf("%s is %d, want %d", tag, got, id)
+		}
+	}
+}

@@ -56,10 +56,9 @@ func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string) (*
 // tooMuch refuses more than 100 g of one component in 100 g; half a gram is left to rounding.
 func (l *Leaf) tooMuch() *Fault {
 	for id, ok := l.known.Next(0); ok; id, ok = l.known.Next(id) {
-		c, _ := food.ByID(id)
-		_, mass := c.Unit.GramExponent()
+		_, mass := id.Unit().GramExponent()
 		if low := l.entries[l.place[id]-1].low(); mass && low.Cmp(quantity.Scaled(1005, -1)) > 0 {
-			return &Fault{l.Pointer, "over-100", fmt.Sprintf("%s is %s g in 100 g of %s", c.Tag, low.Brief(2), l.Path)}
+			return &Fault{l.Pointer, "over-100", fmt.Sprintf("%s is %s g in 100 g of %s", id.Tag(), low.Brief(2), l.Path)}
 		}
 	}
 	return nil
@@ -67,14 +66,8 @@ func (l *Leaf) tooMuch() *Fault {
 
 // exponent is the power of ten from a component's unit to the base unit.
 func exponent(id food.ID) int32 {
-	c, _ := food.ByID(id)
-	e, _ := c.Unit.GramExponent()
+	e, _ := id.Unit().GramExponent()
 	return int32(e)
-}
-
-func tag(id food.ID) string {
-	c, _ := food.ByID(id)
-	return c.Tag
 }
 
 func (l *Leaf) set(id food.ID, s stated) {
@@ -167,7 +160,7 @@ func (l *Leaf) component(id food.ID) Amount {
 	if high.Sign() <= 0 {
 		return Amount{How: Bounded}
 	}
-	return Amount{Linear: quantity.Of(l.Variable(tag(id), quantity.Ratio{}, high, quantity.Ratio{}, false)), How: Bounded}
+	return Amount{Linear: quantity.Of(l.Variable(id.Tag(), quantity.Ratio{}, high, quantity.Ratio{}, false)), How: Bounded}
 }
 
 // scale brings a value per 100 g to the leaf's share of the batch.
@@ -175,7 +168,7 @@ func (l *Leaf) scale(id food.ID, s stated) quantity.Linear {
 	if s.ends == nil {
 		return quantity.Exactly(l.share(s.value))
 	}
-	return quantity.Of(l.Variable(tag(id), l.share(s.ends.low), l.share(s.ends.high), l.share(s.value), s.ends.typical))
+	return quantity.Of(l.Variable(id.Tag(), l.share(s.ends.low), l.share(s.ends.high), l.share(s.value), s.ends.typical))
 }
 
 func (l *Leaf) share(per100 quantity.Ratio) quantity.Ratio {
@@ -193,7 +186,7 @@ func (l *Leaf) presumed(id food.ID, p Presumed) Amount {
 		high := of.High()
 		a.Linear = quantity.Linear{}
 		if high.Sign() > 0 {
-			a.Linear = quantity.Of(l.Variable(tag(id), quantity.Ratio{}, high, quantity.Ratio{}, false))
+			a.Linear = quantity.Of(l.Variable(id.Tag(), quantity.Ratio{}, high, quantity.Ratio{}, false))
 		}
 	}
 	return a
@@ -227,8 +220,7 @@ func (l *Leaf) bound(id food.ID) quantity.Ratio {
 // mostPerGram is the most that 1 g can hold, in the component's base unit: fat yields the most energy of all food, and
 // 1 IU of vitamin D, the smallest, is 0.025 µg.
 func mostPerGram(id food.ID) int64 {
-	c, _ := food.ByID(id)
-	switch c.Unit {
+	switch id.Unit() {
 	case food.Kilocalorie:
 		return 10
 	case food.Kilojoule:

@@ -11,7 +11,6 @@ var proximates = []string{"WATER", "PROCNT", "FAT", "CHOCDF", "ASH", "ALC"}
 
 // plausible looks for what cannot be: it finds, it does not refuse, because official tables break these too.
 func (b *Batch) plausible() {
-	water, _ := food.Lookup("WATER")
 	for _, l := range b.Leaves {
 		if l.pure == 0 {
 			b.proximates(l)
@@ -19,7 +18,7 @@ func (b *Batch) plausible() {
 			b.acidsAgainstFat(l)
 		}
 	}
-	wet := b.Total(water.ID)
+	wet := b.Total(food.Water)
 	if wet.High().Sign() < 0 {
 		short := wet.High().Neg()
 		b.find(nil, "below-dry-matter", fmt.Sprintf("the finished food weighs less than the dry matter that went in: %s g more water is lost than there is", short.Brief(2)))
@@ -58,8 +57,7 @@ func (b *Batch) acidsAgainstFat(l *Leaf) {
 	for _, a := range l.Acids() {
 		sum = sum.Add(a.Triglyceride.Low())
 	}
-	fat, _ := food.Lookup("FAT")
-	most := l.Component(fat.ID).High()
+	most := l.Component(food.Fat).High()
 	if sum.Cmp(most.Mul(quantity.Scaled(105, -2))) > 0 {
 		b.find(l, "acids-over-fat", "the fatty acids, as triglycerides, are more than 5 % above the fat")
 	}
@@ -77,7 +75,7 @@ func (b *Batch) partsAgainstWholes(l *Leaf) {
 			}
 			part, most := l.entries[l.place[id]-1].low(), l.entries[l.place[whole]-1].high()
 			if part.Cmp(most.Mul(quantity.Scaled(105, -2)).Add(quantity.Scaled(5, -1))) > 0 {
-				b.find(l, "part-over-whole", fmt.Sprintf("%s, %s g, is part of %s, %s g, and more than it", tag(id), part.Brief(2), tag(whole), most.Brief(2)))
+				b.find(l, "part-over-whole", fmt.Sprintf("%s, %s g, is part of %s, %s g, and more than it", id.Tag(), part.Brief(2), whole.Tag(), most.Brief(2)))
 			}
 		}
 	}

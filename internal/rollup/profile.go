@@ -70,8 +70,7 @@ func (l *Leaf) base() quantity.Linear {
 		}
 		return quantity.Exactly(m)
 	}
-	fat, _ := food.Lookup("FAT")
-	return l.Component(fat.ID).Linear
+	return l.Component(food.Fat).Linear
 }
 
 func (l *Leaf) weighOut() []AcidAmount {

@@ -31,8 +31,7 @@ func (l *Leaf) kept(id food.ID, a quantity.Linear) quantity.Linear {
 // factor is a retention as a number from 0 to 1.
 func factor(r *recipe.Retention, id food.ID) (quantity.Ratio, bool) {
 	if r.Code == "" {
-		c, _ := food.ByID(id)
-		f, ok := r.Factors[c.Tag]
+		f, ok := r.Factors[id.Tag()]
 		return quantity.FromDecimal(f), ok
 	}
 	table, ok := food.RetentionCode(r.Code)
@@ -45,8 +44,7 @@ func factor(r *recipe.Retention, id food.ID) (quantity.Ratio, bool) {
 
 // isLipid tells whether a component leaves with the fat.
 func isLipid(id food.ID) bool {
-	fat, _ := food.Lookup("FAT")
-	return id == fat.ID || id.IsWithin(fat.ID)
+	return id == food.Fat || id.IsWithin(food.Fat)
 }
 
 // folateEquivalents is dietary folate equivalents under a retention code of the USDA table, which has no column for them:
@@ -54,20 +52,18 @@ func isLipid(id food.ID) bool {
 // What the recipe states of them itself stands.
 // Reference: USDA Table of Nutrient Retention Factors, Release 6, and the survey database built on it.
 func (l *Leaf) folateEquivalents(id food.ID) (Amount, bool) {
-	if c, _ := food.ByID(id); c.Tag != "FOLDFE" || !l.coded() {
+	if id != food.FolateEquivalents || !l.coded() {
 		return Amount{}, false
 	}
 	if _, stated := l.Ingredient.With["FOLDFE"]; stated {
 		return Amount{}, false
 	}
-	natural, _ := food.Lookup("FOLFD")
-	acid, _ := food.Lookup("FOLAC")
-	if !l.Knows(natural.ID) || !l.Knows(acid.ID) {
+	if !l.Knows(food.FoodFolate) || !l.Knows(food.FolicAcid) {
 		return Amount{}, false
 	}
 	f := food.FolateDFEFactor()
-	added := l.Component(acid.ID).Mul(quantity.Scaled(f.Mantissa, int32(f.Exponent)))
-	return Amount{Linear: l.Component(natural.ID).Add(added), How: Stated}, true
+	added := l.Component(food.FolicAcid).Mul(quantity.Scaled(f.Mantissa, int32(f.Exponent)))
+	return Amount{Linear: l.Component(food.FoodFolate).Add(added), How: Stated}, true
 }
 
 // coded tells whether a USDA retention code applies to the leaf.

@@ -146,12 +146,11 @@ func (r *rolled) water(b *Batch, mass quantity.Ratio, path string) {
 	if mass.IsZero() {
 		return
 	}
-	id, _ := food.Lookup("WATER")
 	name := "water taken up"
 	if mass.Sign() < 0 {
 		name = "water lost"
 	}
-	r.leaves = append(r.leaves, &Leaf{Path: join(path, "(water)"), Name: name, Mass: mass, batch: b, pure: id.ID})
+	r.leaves = append(r.leaves, &Leaf{Path: join(path, "(water)"), Name: name, Mass: mass, batch: b, pure: food.Water})
 	r.mass = r.mass.Add(mass)
 }
 
@@ -170,10 +169,9 @@ func (r *rolled) fat(b *Batch, c *recipe.Change, path, pointer string) *Fault {
 		r.leaves, r.mass, r.input = append(r.leaves, l), r.mass.Add(mass), r.input.Add(mass)
 		return nil
 	}
-	fat, _ := food.Lookup("FAT")
 	var total quantity.Ratio
 	for _, l := range r.leaves {
-		a := l.Component(fat.ID)
+		a := l.Component(food.Fat)
 		if !a.Determined() {
 			return &Fault{l.Pointer, "fat-loss-needs-fat", "fat is lost in cooking, but how much fat " + l.Path + " brings in is not stated exactly"}
 		}
