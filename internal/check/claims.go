@@ -14,11 +14,11 @@ import (
 func (m *market) claims() []Claim {
 	asked := m.asked()
 	out := make([]Claim, len(asked))
-	views := make([]view, len(asked))
+	views := make([]*view, len(asked))
 	bodies := make([]*rulebook.Claim, len(asked))
 	for i, a := range asked {
 		views[i] = m.as(m.product)
-		out[i], bodies[i] = m.verdict(a, &views[i])
+		out[i], bodies[i] = m.verdict(a, views[i])
 		if bodies[i] != nil && out[i].Verdict != Refused {
 			m.stand(bodies[i])
 		}
@@ -81,7 +81,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 		v.against = a.Against
 	}
 	if b.BarredIf != nil && v.truth(b.BarredIf) == quantity.Yes {
-		r := m.condition(claim.Evaluate(b.BarredIf, *v))
+		r := m.condition(claim.Evaluate(b.BarredIf, v))
 		out.Verdict, out.Why, out.Condition = Refused, "barred here: "+r.Says, &r
 		return out, nil
 	}
@@ -89,7 +89,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 		out.Verdict, out.Why = Undetermined, b.Undecided.In("en")
 		return out, b
 	}
-	r := claim.Evaluate(m.withStated(b, a), *v)
+	r := claim.Evaluate(m.withStated(b, a), v)
 	c := m.condition(r)
 	out.Condition = &c
 	truth := r.Truth
@@ -105,7 +105,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 		out.Verdict = Undetermined
 		out.Needs = needsOf(c)
 		if r.Truth == quantity.Yes {
-			barred := m.condition(claim.Evaluate(b.BarredIf, *v))
+			barred := m.condition(claim.Evaluate(b.BarredIf, v))
 			out.Why, out.Needs = "not determined whether the claim is barred here: "+barred.Says, needsOf(barred)
 		}
 	}

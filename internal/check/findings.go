@@ -44,7 +44,7 @@ func (m *market) judged(kind string, rules []rulebook.Active[rulebook.Limit]) []
 }
 
 // lacksSizesOnly tells whether a condition is open for nothing but a size of package, unit, serving or surface.
-func (v view) lacksSizesOnly(c *rulebook.Condition) bool {
+func (v *view) lacksSizesOnly(c *rulebook.Condition) bool {
 	needs := v.needsFor(c)
 	return len(needs) > 0 && !slices.ContainsFunc(needs, func(n string) bool { return !strings.HasPrefix(n, "the mass of") })
 }

@@ -9,7 +9,7 @@ import (
 )
 
 // formats are the shorter formats the law allows this product, in the order of the declaration.
-func (v view) formats(list []rulebook.Simplified) []Simplified {
+func (v *view) formats(list []rulebook.Simplified) []Simplified {
 	var out []Simplified
 	for i := range list {
 		if f, ok := v.format(&list[i]); ok {
@@ -20,7 +20,7 @@ func (v view) formats(list []rulebook.Simplified) []Simplified {
 }
 
 // format is one shorter format; false where it is not surely allowed, or would leave nothing out.
-func (v view) format(f *rulebook.Simplified) (Simplified, bool) {
+func (v *view) format(f *rulebook.Simplified) (Simplified, bool) {
 	if v.truth(f.Where) != quantity.Yes {
 		return Simplified{}, false
 	}
@@ -41,7 +41,7 @@ func (v view) format(f *rulebook.Simplified) (Simplified, bool) {
 }
 
 // insignificant lists what is counted and may go; false where too little is insignificant.
-func (v view) insignificant(f *rulebook.Simplified) (named []string, enough bool) {
+func (v *view) insignificant(f *rulebook.Simplified) (named []string, enough bool) {
 	truths := make([]quantity.Truth, len(f.Of))
 	for i, one := range f.Of {
 		truths[i] = v.truth(one.If)
@@ -53,7 +53,7 @@ func (v view) insignificant(f *rulebook.Simplified) (named []string, enough bool
 }
 
 // leftOut lists the quantities whose lines go: those that are named, and those that go without a word.
-func (v view) leftOut(f *rulebook.Simplified, named []string) []string {
+func (v *view) leftOut(f *rulebook.Simplified, named []string) []string {
 	out := slices.Clone(named)
 	for _, one := range f.Leaves {
 		if v.truth(one.If) == quantity.Yes && !v.stays(f, one.Quantity) {
@@ -70,13 +70,13 @@ func (v view) leftOut(f *rulebook.Simplified, named []string) []string {
 }
 
 // stays tells whether a line stands in a shorter format too: the format keeps it, or a claim or a condition raises it.
-func (v view) stays(f *rulebook.Simplified, q string) bool {
+func (v *view) stays(f *rulebook.Simplified, q string) bool {
 	l := v.lines[q]
 	return l.needed || slices.Contains(f.Keeps, q) || f.KeepsClaimed && v.about[q] || l.line.MandatoryIf != nil && v.truth(l.line.MandatoryIf) == quantity.Yes
 }
 
 // state writes what the label must then say, or may say.
-func (v view) state(out *Simplified, f *rulebook.Simplified, named []string) {
+func (v *view) state(out *Simplified, f *rulebook.Simplified, named []string) {
 	if len(f.Says) == 0 {
 		return
 	}
@@ -99,7 +99,7 @@ func (v view) state(out *Simplified, f *rulebook.Simplified, named []string) {
 }
 
 // termsOf are the first terms of quantities' lines.
-func (v view) termsOf(quantities []string) []string {
+func (v *view) termsOf(quantities []string) []string {
 	out := make([]string, len(quantities))
 	for i, q := range quantities {
 		out[i] = v.lines[q].line.Terms[v.language()][0]
@@ -108,7 +108,7 @@ func (v view) termsOf(quantities []string) []string {
 }
 
 // namesIn are the law's names of quantities in a language.
-func (v view) namesIn(quantities []string, lang string) []string {
+func (v *view) namesIn(quantities []string, lang string) []string {
 	out := make([]string, len(quantities))
 	for i, q := range quantities {
 		if d, ok := v.law.Definitions.Get(q); ok {

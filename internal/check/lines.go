@@ -101,7 +101,7 @@ func (m *market) openLines() {
 }
 
 // stands tells whether a line is in the declaration: by itself, or because one it belongs together with is.
-func (v view) stands(l *lineState) bool {
+func (v *view) stands(l *lineState) bool {
 	if v.standsAlone(l) {
 		return true
 	}
@@ -119,7 +119,7 @@ func (v view) stands(l *lineState) bool {
 }
 
 // standsAlone: mandatory, or raised by a condition or a claim.
-func (v view) standsAlone(l *lineState) bool {
+func (v *view) standsAlone(l *lineState) bool {
 	return l.needed || l.line.Presence == "mandatory" || l.line.MandatoryIf != nil && v.truth(l.line.MandatoryIf) == quantity.Yes
 }
 
@@ -127,10 +127,10 @@ func (v view) standsAlone(l *lineState) bool {
 func (c column) on(q quantity.Linear) quantity.Linear { return q.Mul(c.share) }
 
 // possible lists what a quantity may print as on the first column: one print when determined.
-func (v view) possible(q string) []declare.Printed { return v.on(v.subject, q).printed() }
+func (v *view) possible(q string) []declare.Printed { return v.on(v.subject, q).printed() }
 
 // on rounds a food's quantity on the first column; nothing where the law does not round it or the column has no mass.
-func (v view) on(p *product, q string) outcomes {
+func (v *view) on(p *product, q string) outcomes {
 	if len(v.columns) == 0 || !v.columns[0].known {
 		return nil
 	}
@@ -143,7 +143,7 @@ func (v view) on(p *product, q string) outcomes {
 }
 
 // unit is the unit in which a quantity is printed.
-func (v view) unit(q string) quantity.Unit {
+func (v *view) unit(q string) quantity.Unit {
 	name := ""
 	if l, ok := v.lines[q]; ok && l.line.Unit != "" {
 		name = l.line.Unit
@@ -159,7 +159,7 @@ func (v view) unit(q string) quantity.Unit {
 type outcomes []declare.Outcome
 
 // outcomes rounds both ends of a quantity's share. Rounding is monotonic, so the ends enclose what is between.
-func (v view) outcomes(r *rulebook.Rounding, q quantity.Linear, share quantity.Ratio, u quantity.Unit) outcomes {
+func (v *view) outcomes(r *rulebook.Rounding, q quantity.Linear, share quantity.Ratio, u quantity.Unit) outcomes {
 	out := outcomes(declare.Round(r.Bands, r.Ties, q.Low().Mul(share), u, v.truth))
 	if !q.Determined() {
 		out = append(out, declare.Round(r.Bands, r.Ties, q.High().Mul(share), u, v.truth)...)
@@ -214,7 +214,7 @@ func (m *market) table() Table {
 func (m *market) language() string { return m.law.Market.Languages[0] }
 
 // open tells whether an optional line's print is not determined on some column.
-func (v view) open(l *lineState) bool {
+func (v *view) open(l *lineState) bool {
 	q, ok := v.subject.Quantity(l.line.Quantity)
 	if !ok || q.Determined() || l.line.Presence == "forbidden" || v.stands(l) {
 		return false
@@ -227,7 +227,7 @@ func (v view) open(l *lineState) bool {
 	return slices.ContainsFunc(v.columns, func(c column) bool { return c.known && !v.outcomes(r.Body, q, c.share, u).determined() })
 }
 
-func (v view) reportLine(l *lineState) (Line, bool) {
+func (v *view) reportLine(l *lineState) (Line, bool) {
 	q, ok := v.subject.Quantity(l.line.Quantity)
 	if !ok || l.line.Presence == "forbidden" || l.line.ForbiddenIf != nil && v.truth(l.line.ForbiddenIf) == quantity.Yes {
 		return Line{}, false
@@ -259,7 +259,7 @@ func (v view) reportLine(l *lineState) (Line, bool) {
 }
 
 // bandNeeds lists what the open conditions of a rounding's bands lack.
-func (v view) bandNeeds(q string) []string {
+func (v *view) bandNeeds(q string) []string {
 	r, ok := v.law.RoundingOf(q)
 	if !ok {
 		return nil
@@ -285,7 +285,7 @@ func (v view) bandNeeds(q string) []string {
 }
 
 // unfolded puts a claim's condition in place of the question whether it is met, so that what is open in it can be told.
-func (v view) unfolded(c *rulebook.Condition) *rulebook.Condition {
+func (v *view) unfolded(c *rulebook.Condition) *rulebook.Condition {
 	if c.Op != rulebook.OpMeets || c.Subject != "" {
 		return c
 	}

@@ -354,7 +354,7 @@ func (p *product) Meets(id string) quantity.Truth {
 }
 
 // surelyMeets tells whether Meets would answer yes. Of most claims nobody asks more.
-func (p *product) surelyMeets(c rulebook.Active[rulebook.Claim], v view) bool {
+func (p *product) surelyMeets(c rulebook.Active[rulebook.Claim], v *view) bool {
 	if t, ok := p.meets[c.ID]; ok {
 		return t == quantity.Yes
 	}

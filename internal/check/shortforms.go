@@ -10,7 +10,7 @@ import (
 )
 
 // servings is how many servings the package holds, by the declaration's bands.
-func (v view) servings(d *rulebook.Declaration) *Servings {
+func (v *view) servings(d *rulebook.Declaration) *Servings {
 	s := d.Servings
 	if s == nil {
 		return nil

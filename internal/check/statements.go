@@ -12,8 +12,8 @@ import (
 )
 
 // accompany lists what must stand beside a permitted claim.
-func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
-	v.judged = b
+func (m *market) accompany(out *Claim, b *rulebook.Claim, v *view) {
+	v = v.judging(b)
 	out.Statements = append(out.Statements, v.statements(b.Statements, out.Rule, out)...)
 	out.Statements = append(out.Statements, v.disclosures(out)...)
 	for _, s := range out.Statements {
@@ -36,8 +36,8 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v view) {
 }
 
 // verdictBeside is the verdict that accompany leaves to a permitted claim, found without writing a statement.
-func (v view) verdictBeside(b *rulebook.Claim) string {
-	v.judged = b
+func (v *view) verdictBeside(b *rulebook.Claim) string {
+	v = v.judging(b)
 	verdict := Permitted
 	for _, d := range v.law.Disclosures.All {
 		switch t := v.level(d.Body); {
@@ -60,7 +60,7 @@ func (v view) verdictBeside(b *rulebook.Claim) string {
 }
 
 // level tells whether a disclosure level is exceeded where it counts.
-func (v view) level(d *rulebook.Disclosure) quantity.Truth {
+func (v *view) level(d *rulebook.Disclosure) quantity.Truth {
 	t := v.truth(d.When)
 	if t != quantity.No {
 		t = quantity.All(t, v.truth(d.Condition))
@@ -69,7 +69,7 @@ func (v view) level(d *rulebook.Disclosure) quantity.Truth {
 }
 
 // raisedBy lists the lines that stand because something is claimed about one of the subjects.
-func (v view) raisedBy(about []string) []string {
+func (v *view) raisedBy(about []string) []string {
 	var out []string
 	for _, l := range v.order {
 		raised := false
@@ -84,7 +84,7 @@ func (v view) raisedBy(about []string) []string {
 }
 
 // statements are those of a list whose conditions hold, or are open.
-func (v view) statements(list []rulebook.Statement, rule string, c *Claim) []Statement {
+func (v *view) statements(list []rulebook.Statement, rule string, c *Claim) []Statement {
 	var out []Statement
 	for _, s := range list {
 		t := quantity.Yes
@@ -106,7 +106,7 @@ func (v view) statements(list []rulebook.Statement, rule string, c *Claim) []Sta
 	return out
 }
 
-func (v view) statement(words rulebook.Words, place, rule string, c *Claim) Statement {
+func (v *view) statement(words rulebook.Words, place, rule string, c *Claim) Statement {
 	text, complete := v.fill(words.In(v.language()), c)
 	st := Statement{Text: text, Place: place, Presence: "mandatory", Rule: rule, open: !complete}
 	if len(words) > 1 {
@@ -119,7 +119,7 @@ func (v view) statement(words rulebook.Words, place, rule string, c *Claim) Stat
 }
 
 // disclosures are the levels that make any claim carry a statement, one statement naming all of them, or bar it.
-func (v view) disclosures(out *Claim) []Statement {
+func (v *view) disclosures(out *Claim) []Statement {
 	type group struct {
 		d     *rulebook.Disclosure
 		id    string
@@ -162,7 +162,7 @@ func (v view) disclosures(out *Claim) []Statement {
 }
 
 // bar refuses a claim by a level, or leaves it open where the level is.
-func (v view) bar(out *Claim, d rulebook.Active[rulebook.Disclosure], t quantity.Truth) {
+func (v *view) bar(out *Claim, d rulebook.Active[rulebook.Disclosure], t quantity.Truth) {
 	by := d.Body.Named.In("en") + " (" + d.Head.Source.Ref + ")"
 	switch {
 	case t == quantity.Yes:
@@ -174,7 +174,7 @@ func (v view) bar(out *Claim, d rulebook.Active[rulebook.Disclosure], t quantity
 }
 
 // needsFor is what would have to be known to decide a condition.
-func (v view) needsFor(c *rulebook.Condition) []string {
+func (v *view) needsFor(c *rulebook.Condition) []string {
 	return needsOf(v.condition(claim.Evaluate(c, v)))
 }
 
@@ -206,7 +206,7 @@ func joined(names []string, lang string) string {
 
 // fill replaces placeholders, and tells whether it could replace all: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and
 // {fat difference} by the change against it in per cent, {reference food} by its name.
-func (v view) fill(s string, c *Claim) (text string, complete bool) {
+func (v *view) fill(s string, c *Claim) (text string, complete bool) {
 	var out strings.Builder
 	complete = true
 	for {
@@ -226,7 +226,7 @@ func (v view) fill(s string, c *Claim) (text string, complete bool) {
 	}
 }
 
-func (v view) placeholder(name string, c *Claim) (text string, ok bool) {
+func (v *view) placeholder(name string, c *Claim) (text string, ok bool) {
 	switch {
 	case name == "reference food" && v.ref != nil:
 		text, ok = v.ref.batch.Leaves[0].Name, true
@@ -250,7 +250,7 @@ func (v view) placeholder(name string, c *Claim) (text string, ok bool) {
 }
 
 // printed is what a food's quantity prints as on the first column, where that is determined.
-func (v view) printed(p *product, q string) (string, bool) {
+func (v *view) printed(p *product, q string) (string, bool) {
 	l, ok := v.lines[q]
 	if !ok {
 		return "", false
@@ -263,7 +263,7 @@ func (v view) printed(p *product, q string) (string, bool) {
 }
 
 // amountOfQuantity is a quantity without a line of its own, to three figures on the first column.
-func (v view) amountOfQuantity(q string) (string, bool) {
+func (v *view) amountOfQuantity(q string) (string, bool) {
 	l, ok := v.subject.Quantity(q)
 	if !ok || !l.Determined() || len(v.columns) == 0 || !v.columns[0].known {
 		return "", false
@@ -275,7 +275,7 @@ func (v view) amountOfQuantity(q string) (string, bool) {
 
 // difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number. Of a range it is
 // the smallest change, so that what is stated is true at least.
-func (v view) difference(q string) (string, bool) {
+func (v *view) difference(q string) (string, bool) {
 	own, ok1 := v.subject.Quantity(q)
 	other, ok2 := v.ref.Quantity(q)
 	if !ok1 || !ok2 || other.Low().Sign() <= 0 {

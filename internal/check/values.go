@@ -10,7 +10,7 @@ import (
 )
 
 // value is a line on one column; settled tells whether it prints one thing only.
-func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
+func (v *view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 	u, unit := v.unit(l.line.Quantity), l.line.Unit
 	r, ok := v.law.RoundingOf(l.line.Quantity)
 	inUnit := func(r quantity.Ratio) quantity.Ratio { return r.In(u) }
@@ -51,12 +51,12 @@ func (v view) value(l *lineState, c column, x quantity.Linear) (Value, bool) {
 }
 
 // percentMust tells whether the per cent must stand beside a line's amount.
-func (v view) percentMust(l *rulebook.Line) bool {
+func (v *view) percentMust(l *rulebook.Line) bool {
 	return l.Percent != "optional" || v.surely(l.PercentIf)
 }
 
 // surely tells whether a line has a condition that holds.
-func (v view) surely(c *rulebook.Condition) bool { return c != nil && v.truth(c) == quantity.Yes }
+func (v *view) surely(c *rulebook.Condition) bool { return c != nil && v.truth(c) == quantity.Yes }
 
 func (o *Value) setExact(r quantity.Ratio) {
 	x := r.Exact()
@@ -68,7 +68,7 @@ func (o *Value) setExact(r quantity.Ratio) {
 }
 
 // print fills in what stands on the label: one text, or the range of texts that are possible.
-func (v view) print(out *Value, l *lineState, printed outcomes, amount bool, u quantity.Unit) {
+func (v *view) print(out *Value, l *lineState, printed outcomes, amount bool, u quantity.Unit) {
 	if len(printed) == 0 || !amount {
 		return
 	}
@@ -91,7 +91,7 @@ func (v view) print(out *Value, l *lineState, printed outcomes, amount bool, u q
 }
 
 // otherTexts is what a line prints in the languages where that differs from the first.
-func (v view) otherTexts(l *lineState, p declare.Printed, u quantity.Unit, first string) map[string]string {
+func (v *view) otherTexts(l *lineState, p declare.Printed, u quantity.Unit, first string) map[string]string {
 	var out map[string]string
 	numbers := l.rule.Body.Number
 	lang := v.language()
@@ -111,13 +111,13 @@ func (v view) otherTexts(l *lineState, p declare.Printed, u quantity.Unit, first
 	return out
 }
 
-func (v view) isEnergy(q string) bool {
+func (v *view) isEnergy(q string) bool {
 	_, ok := v.law.Energy.Get(q)
 	return ok
 }
 
 // energyAlternatives prints what the other lawful methods give, where it differs.
-func (v view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook.Rounding, u quantity.Unit) {
+func (v *view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook.Rounding, u quantity.Unit) {
 	e, _ := v.law.Energy.Get(l.line.Quantity)
 	for i := range e.Body.Methods[1:] {
 		method := &e.Body.Methods[i+1]
@@ -136,7 +136,7 @@ func (v view) energyAlternatives(out *Value, l *lineState, c column, r *rulebook
 }
 
 // percent is the per cent of the reference value, from the amount the law names first.
-func (v view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x quantity.Linear, printed outcomes) (*Percent, bool) {
+func (v *view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x quantity.Linear, printed outcomes) (*Percent, bool) {
 	rv, ok := v.ReferenceValue(l.line.Quantity)
 	if !ok {
 		return nil, true
@@ -186,7 +186,7 @@ func percentText(p declare.Printed) string {
 }
 
 // percentOf computes per cents from exact amounts or from declared ones.
-func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties quantity.Ties, x quantity.Linear, printed outcomes, per quantity.Ratio) (outcomes, bool) {
+func (v *view) percentOf(from string, l *lineState, p *rulebook.Percent, ties quantity.Ties, x quantity.Linear, printed outcomes, per quantity.Ratio) (outcomes, bool) {
 	zero := quantity.No
 	if p.ZeroIf != nil {
 		zero = v.truth(p.ZeroIf)
@@ -219,7 +219,7 @@ func (v view) percentOf(from string, l *lineState, p *rulebook.Percent, ties qua
 }
 
 // contributions is what each ingredient brings to a quantity on a column.
-func (v view) contributions(q string, c column, u quantity.Unit) []Contribution {
+func (v *view) contributions(q string, c column, u quantity.Unit) []Contribution {
 	var out []Contribution
 	for i, l := range v.subject.batch.Leaves {
 		amount, ok := v.subject.contribution(q, i)

@@ -23,10 +23,17 @@ type view struct {
 	judged  *rulebook.Claim // whose subjects count; nil where those of all that stand do
 }
 
-func (m *market) as(p *product) view { return view{market: m, subject: p} }
+func (m *market) as(p *product) *view { return &view{market: m, subject: p} }
+
+// judging is the view in which the subjects of one claim count.
+func (v *view) judging(b *rulebook.Claim) *view {
+	own := *v
+	own.judged = b
+	return &own
+}
 
 // truth decides a condition. What depends on the product alone is decided once.
-func (v view) truth(c *rulebook.Condition) quantity.Truth {
+func (v *view) truth(c *rulebook.Condition) quantity.Truth {
 	if !c.OfProduct() || v.subject != v.product {
 		return claim.Decide(c, v)
 	}
@@ -39,13 +46,13 @@ func (v view) truth(c *rulebook.Condition) quantity.Truth {
 }
 
 // Product is the food the condition speaks of.
-func (v view) Product() claim.Subject { return v.subject }
+func (v *view) Product() claim.Subject { return v.subject }
 
 // Reference is the food it is compared with.
-func (v view) Reference() (claim.Subject, bool) { return v.ref, v.ref != nil }
+func (v *view) Reference() (claim.Subject, bool) { return v.ref, v.ref != nil }
 
 // Name is a quantity in words.
-func (v view) Name(q string) string {
+func (v *view) Name(q string) string {
 	if d, ok := v.law.Definitions.Get(q); ok {
 		return d.Body.Name.In("en")
 	}
@@ -56,7 +63,7 @@ func (v view) Name(q string) string {
 }
 
 // EnergyFactor is kcal per g of a quantity: its own, or that of the quantity it counts as.
-func (v view) EnergyFactor(q string) (quantity.Ratio, bool) {
+func (v *view) EnergyFactor(q string) (quantity.Ratio, bool) {
 	e, ok := v.law.Energy.Get("energy")
 	if !ok {
 		return quantity.Ratio{}, false
@@ -76,7 +83,7 @@ func (v view) EnergyFactor(q string) (quantity.Ratio, bool) {
 const everybody = "general population"
 
 // population is for whom the food is made, as reference values name it.
-func (v view) population() string {
+func (v *view) population() string {
 	for _, p := range []string{"children 1 to 3", "infants", "pregnant or lactating"} {
 		if v.stated("intended for", p) == quantity.Yes {
 			return p
@@ -86,7 +93,7 @@ func (v view) population() string {
 }
 
 // ReferenceValue is the reference value of a quantity in base units.
-func (v view) ReferenceValue(q string) (quantity.Ratio, bool) {
+func (v *view) ReferenceValue(q string) (quantity.Ratio, bool) {
 	r, ok := v.law.ReferenceOf(q)
 	if !ok {
 		return quantity.Ratio{}, false
@@ -111,7 +118,7 @@ func (m *market) stated(name, is string) quantity.Truth {
 }
 
 // Fact compares a fact: as stated, else as the market's rules assume, which is noted.
-func (v view) Fact(name, is string) quantity.Truth {
+func (v *view) Fact(name, is string) quantity.Truth {
 	if name == "state" {
 		if s, ok := v.c.recipe.State.For(v.j); ok {
 			return quantity.TruthOf(s == is)
@@ -126,7 +133,7 @@ func (v view) Fact(name, is string) quantity.Truth {
 }
 
 // Has asks what a list holds: as stated, else as the market's rules assume of the whole list, which is noted.
-func (v view) Has(name, item string) quantity.Truth {
+func (v *view) Has(name, item string) quantity.Truth {
 	if f, ok := v.c.recipe.Facts[name]; ok {
 		return quantity.TruthOf(slices.Contains(f.List, item))
 	}
@@ -137,14 +144,14 @@ func (v view) Has(name, item string) quantity.Truth {
 }
 
 // Stated tells whether the recipe states a fact.
-func (v view) Stated(name string) bool {
+func (v *view) Stated(name string) bool {
 	_, ok := v.c.recipe.Facts[name]
 	return ok
 }
 
 // Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted. Of another food than the product
 // nothing was measured.
-func (v view) Measured(name string) (quantity.Ratio, bool) {
+func (v *view) Measured(name string) (quantity.Ratio, bool) {
 	if v.subject != nil && v.subject != v.product {
 		return quantity.Ratio{}, false
 	}
@@ -160,7 +167,7 @@ func (v view) Measured(name string) (quantity.Ratio, bool) {
 }
 
 // assume is what the market's rules take for a fact nobody stated.
-func (v view) assume(name string) (is string, ok bool) {
+func (v *view) assume(name string) (is string, ok bool) {
 	for _, a := range v.law.Market.Assumed {
 		if a.Fact == name {
 			v.assumed[name] = Assumed{a.Fact, a.Is, a.Why}
@@ -171,7 +178,7 @@ func (v view) assume(name string) (is string, ok bool) {
 }
 
 // ReferenceAmount tells whether the reference amount is at most one of the amounts in its own kind of unit.
-func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
+func (v *view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 	r, ok := v.referenceAmount()
 	if !ok {
 		return quantity.Open
@@ -185,7 +192,7 @@ func (v view) ReferenceAmount(atMost []quantity.Amount) quantity.Truth {
 }
 
 // ClaimedAbout tells whether a claim that stands is about one of the subjects; where one claim is judged, whether it is.
-func (v view) ClaimedAbout(subjects []string, onLabel bool) quantity.Truth {
+func (v *view) ClaimedAbout(subjects []string, onLabel bool) quantity.Truth {
 	if v.judged != nil && !onLabel {
 		own := v.judged.About
 		return quantity.TruthOf(slices.ContainsFunc(subjects, func(s string) bool { return slices.Contains(own, s) || s == "any" && len(own) > 0 }))
@@ -194,7 +201,7 @@ func (v view) ClaimedAbout(subjects []string, onLabel bool) quantity.Truth {
 }
 
 // Meets answers whether the food meets a claim of the law, one that compares beside the reference food asked with the claim judged.
-func (v view) Meets(id string) quantity.Truth {
+func (v *view) Meets(id string) quantity.Truth {
 	if v.ref != nil {
 		if c, ok := v.claim(id); ok && c.Body.Against && c.Body.Condition != nil {
 			return v.truth(c.Body.Condition)
@@ -213,7 +220,7 @@ func (m *market) claim(id string) (rulebook.Active[rulebook.Claim], bool) {
 }
 
 // Named is the active version of a condition that has a rule of its own.
-func (v view) Named(id string) (*rulebook.Condition, bool) {
+func (v *view) Named(id string) (*rulebook.Condition, bool) {
 	c, ok := v.law.Conditions.Get(rulebook.Name(id))
 	if !ok {
 		return nil, false
@@ -222,7 +229,7 @@ func (v view) Named(id string) (*rulebook.Condition, bool) {
 }
 
 // Size is the mass in g of the package, of the serving, or of one of the package's units, or the package's surface in cm².
-func (v view) Size(name string) (quantity.Ratio, bool) {
+func (v *view) Size(name string) (quantity.Ratio, bool) {
 	if name == "surface" {
 		p := v.c.recipe.Package
 		if p == nil || !p.Surface.IsPositive() {
@@ -240,7 +247,7 @@ func (v view) Size(name string) (quantity.Ratio, bool) {
 }
 
 // ReferenceKind tells whether the reference food is of one of the kinds.
-func (v view) ReferenceKind(kinds []string) quantity.Truth {
+func (v *view) ReferenceKind(kinds []string) quantity.Truth {
 	if v.ref == nil {
 		return quantity.Open
 	}
@@ -249,7 +256,7 @@ func (v view) ReferenceKind(kinds []string) quantity.Truth {
 
 // NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit. What is missing is the
 // process or the iodine value of the ingredients that leave it open.
-func (v view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing string) {
+func (v *view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing string) {
 	found := quantity.No
 	var open []string
 	for _, l := range v.subject.batch.Leaves {
@@ -273,7 +280,7 @@ func (v view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing str
 }
 
 // processed is open for an ingredient whose process nobody knows and that may hold industrial trans fatty acids.
-func (v view) processed(c *rulebook.Condition, l *rollup.Leaf) quantity.Truth {
+func (v *view) processed(c *rulebook.Condition, l *rollup.Leaf) quantity.Truth {
 	if v.process(l) == "" && v.mayBeHydrogenated(l) {
 		if c.IodineAbove != nil && iodineAbove(l, *c.IodineAbove) == quantity.No {
 			return quantity.No
@@ -324,7 +331,7 @@ func iodineAbove(l *rollup.Leaf, limit decimal.Decimal) quantity.Truth {
 }
 
 // Declared compares what a line prints on the first basis with "0", or asks whether the line stands.
-func (v view) Declared(q, is string) quantity.Truth {
+func (v *view) Declared(q, is string) quantity.Truth {
 	if is == "" {
 		l, ok := v.lines[q]
 		return quantity.TruthOf(ok && v.stands(l))
