@@ -47,13 +47,7 @@ func (p *product) Quantity(name string) (quantity.Linear, bool) {
 		if !ok {
 			return quantity.Linear{}, false
 		}
-		sum = quantity.Sum(func(yield func(quantity.Linear) bool) {
-			for i := range parts {
-				if !yield(parts[i].amount) {
-					return
-				}
-			}
-		})
+		sum = quantity.Sum(len(parts), func(i int) quantity.Linear { return parts[i].amount })
 	}
 	p.totals[name] = sum
 	return sum, true
@@ -234,13 +228,7 @@ func (p *product) From(name, origin string) (quantity.Linear, bool) {
 	if !ok {
 		return quantity.Linear{}, false
 	}
-	sum := quantity.Sum(func(yield func(quantity.Linear) bool) {
-		for i, l := range p.batch.Leaves {
-			if !yield(p.originShare(parts[i].amount, l, origin)) {
-				return
-			}
-		}
-	})
+	sum := quantity.Sum(len(parts), func(i int) quantity.Linear { return p.originShare(parts[i].amount, p.batch.Leaves[i], origin) })
 	p.from[key] = sum
 	return sum, true
 }

@@ -7,9 +7,9 @@ func (r Ratio) fraction() (n, d *big.Int) {
 	n, d = r.num(), r.den()
 	switch {
 	case r.e > 0:
-		n = new(big.Int).Mul(n, Pow10(r.e))
+		n = shifted(n, r.e)
 	case r.e < 0:
-		d = new(big.Int).Mul(d, Pow10(-r.e))
+		d = shifted(d, -r.e)
 	}
 	return n, d
 }

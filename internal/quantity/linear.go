@@ -1,7 +1,6 @@
 package quantity
 
 import (
-	"iter"
 	"slices"
 
 	"github.com/shopspring/decimal"
@@ -102,13 +101,14 @@ func mergeTerms(a, b []term) []term {
 	return append(append(out, a...), b...)
 }
 
-// Sum adds many forms at once; its cost is linear in their terms, but for one sort. What shares a denominator is added up first, so that
+// Sum adds n forms at once; its cost is linear in their terms, but for one sort. What shares a denominator is added up first, so that
 // few sums need a new one.
-func Sum(forms iter.Seq[Linear]) Linear {
+func Sum(n int, form func(i int) Linear) Linear {
 	var known tally
 	var terms []term
 	sorted, last := true, 0
-	for l := range forms {
+	for i := range n {
+		l := form(i)
 		known.add(l.Known)
 		for _, t := range l.terms() {
 			sorted = sorted && t.v.Index > last

@@ -149,9 +149,9 @@ func align(a, b Ratio) (x, y *big.Int, e int32) {
 	case a.e == b.e:
 		return a.num(), b.num(), a.e
 	case a.e > b.e:
-		return new(big.Int).Mul(a.num(), Pow10(a.e-b.e)), b.num(), b.e
+		return shifted(a.num(), a.e-b.e), b.num(), b.e
 	default:
-		return a.num(), new(big.Int).Mul(b.num(), Pow10(b.e-a.e)), a.e
+		return a.num(), shifted(b.num(), b.e-a.e), a.e
 	}
 }
 
@@ -176,7 +176,7 @@ func (r Ratio) Add(s Ratio) Ratio {
 	}
 	x, y, e := align(r, s)
 	if same {
-		return Over(new(big.Int).Add(x, y), e, r.d)
+		return Over(wideSum(x, y), e, r.d)
 	}
 	a, b := r.den(), s.den()
 	if a.CmpAbs(b) < 0 {
@@ -186,9 +186,7 @@ func (r Ratio) Add(s Ratio) Ratio {
 		k.Mul(k, y)
 		return Over(k.Add(k, x), e, a)
 	}
-	n := new(big.Int).Mul(x, b)
-	n.Add(n, new(big.Int).Mul(y, a))
-	return Over(n, e, new(big.Int).Mul(a, b))
+	return Over(wideSum(product(x, b), product(y, a)), e, product(a, b))
 }
 
 // Sub is r - s, exactly.
@@ -212,14 +210,20 @@ func (r Ratio) Mul(s Ratio) Ratio {
 	case d == nil:
 		d = s.d
 	case s.d != nil:
-		d = new(big.Int).Mul(d, s.d)
+		d = product(d, s.d)
 	}
 	if r.n == nil && s.n == nil {
 		if p, ok := mul64(r.s, s.s); ok {
 			return Ratio{s: p, d: d, e: r.e + s.e}
 		}
 	}
-	return Over(new(big.Int).Mul(r.num(), s.num()), r.e+s.e, d)
+	switch {
+	case s.n == nil:
+		return Over(times(r.num(), s.s), r.e+s.e, d)
+	case r.n == nil:
+		return Over(times(s.n, r.s), r.e+s.e, d)
+	}
+	return Over(product(r.n, s.n), r.e+s.e, d)
 }
 
 // Times is r multiplied by a decimal; the denominator stays shared.
@@ -234,7 +238,7 @@ func (r Ratio) Quo(s Ratio) Ratio {
 	if !sameDen(r.d, s.d) {
 		n = r.Mul(Over(s.den(), 0, nil))
 		if r.d != nil {
-			d = new(big.Int).Mul(d, r.d)
+			d = product(d, r.d)
 		}
 	}
 	if d.Sign() < 0 {
@@ -267,7 +271,7 @@ func (r Ratio) Cmp(s Ratio) int {
 	if same {
 		return x.Cmp(y)
 	}
-	return new(big.Int).Mul(x, s.den()).Cmp(new(big.Int).Mul(y, r.den()))
+	return product(x, s.den()).Cmp(product(y, r.den()))
 }
 
 func sign64(x, y int64) int {

@@ -28,8 +28,7 @@ func (r Ratio) Round(step decimal.Decimal, ties Ties) decimal.Decimal {
 	n, d := r.fraction()
 	sn, sd := FromDecimal(step).fraction()
 	// r/step = (n·sd) / (d·sn)
-	num := new(big.Int).Mul(n, sd)
-	den := new(big.Int).Mul(d, sn)
+	num, den := product(n, sd), product(d, sn)
 	k := nearest(num, den, ties)
 	return normal(decimal.NewFromBigInt(k, 0).Mul(step))
 }
@@ -113,9 +112,9 @@ func (r Ratio) magnitude() int32 {
 // cmpPow compares n/d with 10^e.
 func cmpPow(n, d *big.Int, e int32) int {
 	if e >= 0 {
-		return n.Cmp(new(big.Int).Mul(d, Pow10(e)))
+		return n.Cmp(shifted(d, e))
 	}
-	return new(big.Int).Mul(n, Pow10(-e)).Cmp(d)
+	return shifted(n, -e).Cmp(d)
 }
 
 // ShownDigits is how many significant digits Exact shows of a number that does not end before.
@@ -205,9 +204,9 @@ func (r Ratio) Shown() (d decimal.Decimal, complete bool) {
 	num, den := r.fraction()
 	e := r.magnitude() - ShownDigits + 1
 	if e < 0 {
-		num = new(big.Int).Mul(num, Pow10(-e))
+		num = shifted(num, -e)
 	} else {
-		den = new(big.Int).Mul(den, Pow10(e))
+		den = shifted(den, e)
 	}
 	q, m := new(big.Int).QuoRem(num, den, new(big.Int))
 	return normal(decimal.NewFromBigInt(q, e)), m.Sign() == 0

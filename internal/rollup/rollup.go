@@ -65,6 +65,7 @@ type Batch struct {
 	den     *big.Int // of masses
 	fine    *big.Int // of fatty acids: a multiple of den; nil without profiles in per cent
 	owners  []Owner
+	slab    []quantity.Variable // for the next ones
 	totals  [food.Count + 1]*total
 	ingoing quantity.Ratio // g of ingredients, fat taken up included
 }
@@ -80,6 +81,8 @@ type Owner struct {
 	Leaf *Leaf
 	What string // tagname, notation or a plain word
 }
+
+func (o Owner) String() string { return o.Leaf.Path + " (" + o.What + ")" }
 
 // A Leaf is one ingredient that is not itself a recipe, with its share of the batch.
 type Leaf struct {
@@ -153,7 +156,13 @@ type Amount struct {
 func (l *Leaf) Variable(what string, low, high, central quantity.Ratio, typical bool) *quantity.Variable {
 	b := l.batch
 	b.owners = append(b.owners, Owner{l, what})
-	return &quantity.Variable{Index: b.options.FirstVariable + len(b.owners), Low: low, High: high, Central: central, Typical: typical}
+	if len(b.slab) == 0 {
+		b.slab = make([]quantity.Variable, 64)
+	}
+	v := &b.slab[0]
+	b.slab = b.slab[1:]
+	*v = quantity.Variable{Index: b.options.FirstVariable + len(b.owners), Low: low, High: high, Central: central, Typical: typical}
+	return v
 }
 
 // Owner tells whose variable it is; false for another batch's.
@@ -181,16 +190,13 @@ func (b *Batch) total(id food.ID) *total {
 		return t
 	}
 	t := &total{}
-	t.amount = quantity.Sum(func(yield func(quantity.Linear) bool) {
-		for _, l := range b.Leaves {
-			a := l.Component(id)
-			if l.Ingredient != nil && (a.How != Bounded || a.Determined()) {
-				t.covered = t.covered.Add(l.Mass)
-			}
-			if !yield(a.Linear) {
-				return
-			}
+	t.amount = quantity.Sum(len(b.Leaves), func(i int) quantity.Linear {
+		l := b.Leaves[i]
+		a := l.Component(id)
+		if l.Ingredient != nil && (a.How != Bounded || a.Determined()) {
+			t.covered = t.covered.Add(l.Mass)
 		}
+		return a.Linear
 	})
 	b.totals[id] = t
 	return t
