@@ -85,8 +85,12 @@ func (b bound) quo(c bound, up bool) bound {
 	return p
 }
 
-func (b bounds) mul(c bounds) bounds { return bounds{b.low.mul(c.low, false), b.high.mul(c.high, true)} }
-func (b bounds) quo(c bounds) bounds { return bounds{b.low.quo(c.high, false), b.high.quo(c.low, true)} }
+func (b bounds) mul(c bounds) bounds {
+	return bounds{b.low.mul(c.low, false), b.high.mul(c.high, true)}
+}
+func (b bounds) quo(c bounds) bounds {
+	return bounds{b.low.quo(c.high, false), b.high.quo(c.low, true)}
+}
 
 func (b bound) less(c bound) bool { return b.e < c.e || b.e == c.e && b.m < c.m }
 
