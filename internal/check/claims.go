@@ -191,7 +191,7 @@ func (m *market) candidates(list []rulebook.Active[rulebook.Claim], asked []Clai
 	out := []Candidate{}
 	v := m.as(m.product)
 	for _, c := range list {
-		if c.Body.Condition == nil || c.Body.Against || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
+		if c.Body.Condition == nil || c.Body.Against || c.Body.NotOffered || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
 			continue
 		}
 		if c.Body.Prohibited || !m.product.surelyMeets(c, v) || c.Body.BarredIf != nil && v.truth(c.Body.BarredIf) != quantity.No {

@@ -188,3 +188,16 @@ func TestClaimsSeeTheReferenceFoodThroughOthers(t *testing.T) {
 		})
 	}
 }
+
+func TestClaimsThatAreNotOffered(t *testing.T) {
+	b := smallMarket(t, map[string]string{"claims.json": `{"id":"xx/claim/fresh","versions":[{SOURCE,"name":{"en":"fresh"},"about":[],"not offered":true,"condition":{"all":[]}}]},
+		{"id":"xx/claim/lean","versions":[{SOURCE,"name":{"en":"lean"},"about":[],"condition":{"all":[]}}]}`})
+	m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"0 g"}`, ""))
+	if len(m.AlsoPermitted) != 1 || m.AlsoPermitted[0].Claim != "xx/claim/lean" {
+		t.Errorf("also permitted: %+v", m.AlsoPermitted)
+	}
+	m = run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"0 g"}`, `,"claims":[{"claim":"fresh"}]`))
+	if m.Claims[0].Verdict != "permitted" {
+		t.Errorf("asked for, it is %s", m.Claims[0].Verdict)
+	}
+}

@@ -411,8 +411,11 @@ type findingCase struct {
 	Naming     []string          // parts of what is said of names
 	NotNamed   []string          `json:"not_named"` // parts that must not be said
 	Servings   string            // servings per package
-	LeaveOut   []string          `json:"leave_out"` // terms the simplified format leaves out
-	Simplified *bool             `json:"simplified"`
+	Simplified *bool             // whether a shorter format applies
+	Format     string            // name of the format meant, where several apply
+	LeaveOut   []string          `json:"leave_out"` // terms it leaves out
+	Keeps      []string          // terms it must not leave out
+	Says       *string           // part of its statement; "" is none
 }
 
 // Limits, servings, packages, names and simplified formats, written from the dossiers; sources stand in the files.
@@ -437,7 +440,10 @@ func TestFindingCases(t *testing.T) {
 				t.Errorf("something named says %q: %v", not, m.Naming)
 			}
 		}
-		shortFormCase(t, m.Declaration, c.Servings, c.LeaveOut, c.Simplified)
+		if s := m.Declaration.Servings; c.Servings != "" && (s == nil || s.Text != c.Servings) {
+			t.Errorf("servings per package are %+v, want %q", s, c.Servings)
+		}
+		shortFormCase(t, m.Declaration, c)
 	})
 }
 
@@ -450,17 +456,39 @@ func severityOf(m check.Market, code string) string {
 	return "none"
 }
 
-func shortFormCase(t *testing.T, d check.Table, servings string, leaveOut []string, simplified *bool) {
+// format is the shorter format of a name, or the first; nil where none applies.
+func format(d check.Table, name string) *check.Simplified {
+	list := d.OtherFormats
+	if d.Simplified != nil {
+		list = append([]check.Simplified{*d.Simplified}, list...)
+	}
+	i := slices.IndexFunc(list, func(f check.Simplified) bool { return name == "" || f.Name == name })
+	if i < 0 {
+		return nil
+	}
+	return &list[i]
+}
+
+func shortFormCase(t *testing.T, d check.Table, c findingCase) {
 	t.Helper()
-	if servings != "" && (d.Servings == nil || d.Servings.Text != servings) {
-		t.Errorf("servings per package are %+v, want %q", d.Servings, servings)
+	f := format(d, c.Format)
+	if c.Simplified != nil && *c.Simplified != (f != nil) {
+		t.Errorf("simplified format is %+v, want %v", f, *c.Simplified)
 	}
-	if simplified != nil && *simplified != (d.Simplified != nil) {
-		t.Errorf("simplified format is %+v, want %v", d.Simplified, *simplified)
+	if f == nil {
+		f = &check.Simplified{}
 	}
-	for _, want := range leaveOut {
-		if d.Simplified == nil || !slices.Contains(d.Simplified.LeaveOut, want) {
-			t.Errorf("the simplified format does not leave out %s: %+v", want, d.Simplified)
+	for _, want := range c.LeaveOut {
+		if !slices.Contains(f.LeaveOut, want) {
+			t.Errorf("the simplified format does not leave out %s: %+v", want, f)
 		}
+	}
+	for _, kept := range c.Keeps {
+		if slices.Contains(f.LeaveOut, kept) {
+			t.Errorf("the simplified format leaves out %s: %+v", kept, f)
+		}
+	}
+	if c.Says != nil && (*c.Says == "" && f.Says != "" || !strings.Contains(f.Says, *c.Says)) {
+		t.Errorf("the simplified format states %q, want %q", f.Says, *c.Says)
 	}
 }

@@ -254,6 +254,16 @@ func (v *view) ReferenceKind(kinds []string) quantity.Truth {
 	return quantity.TruthOf(slices.Contains(kinds, v.c.recipe.References[v.against].Kind))
 }
 
+// Category tells whether the recipe's category in this market is one of the names.
+func (v view) Category(names []string) quantity.Truth {
+	category, stated := v.c.recipe.Category.For(v.j)
+	r, ok := v.category(category)
+	if !stated || !ok {
+		return quantity.Open
+	}
+	return quantity.TruthOf(slices.Contains(names, r.Name()))
+}
+
 // NoIngredient holds when no ingredient has one of the processes and, where asked, an iodine value above the limit. What is missing is the
 // process or the iodine value of the ingredients that leave it open.
 func (v *view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing string) {

@@ -41,6 +41,7 @@ type Context interface {
 	Named(id string) (*rulebook.Condition, bool) // a condition that has a rule of its own
 	NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing string)
 	ReferenceKind(kinds []string) quantity.Truth // open without a reference food
+	Category(names []string) quantity.Truth      // open where no category is stated
 	// Size is the mass in g of the package, the serving or one unit, or the surface in cm².
 	Size(name string) (quantity.Ratio, bool)
 }
@@ -174,6 +175,8 @@ func (x evaluator) askTruth(c *rulebook.Condition) quantity.Truth {
 		return x.ClaimedAbout(c.About, c.Label)
 	case rulebook.OpUndecided:
 		return quantity.Open
+	case rulebook.OpCategory:
+		return x.Category(c.Kinds)
 	default:
 		t, _ := x.NoIngredient(c)
 		return t
@@ -193,6 +196,8 @@ func (x evaluator) lacks(c *rulebook.Condition) string {
 		return "the reference food"
 	case rulebook.OpUndecided:
 		return c.Why.In("en")
+	case rulebook.OpCategory:
+		return "the category"
 	case rulebook.OpMeets:
 		if _, ok := x.Reference(); c.Subject == "reference food" && !ok {
 			return "the reference food"

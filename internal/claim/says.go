@@ -98,6 +98,8 @@ func atomSays(c *rulebook.Condition, x Context) string {
 		return s
 	case rulebook.OpKind:
 		return "the reference food is " + list(c.Kinds)
+	case rulebook.OpCategory:
+		return "the category is " + list(c.Kinds)
 	case rulebook.OpUndecided:
 		return c.Why.In("en")
 	case rulebook.OpAbout:

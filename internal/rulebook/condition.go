@@ -29,6 +29,7 @@ const (
 	OpCount      Op = "count"
 	OpWhen       Op = "when"
 	OpUndecided  Op = "undecided"
+	OpCategory   Op = "category is"
 )
 
 // A Condition is a legal condition as data: a comparison of a linear form, or a combination of conditions. It is
@@ -66,8 +67,8 @@ type Condition struct {
 	// OpAmount: at most one of these, each in its own unit. OpAbout: subjects. OpKind: kinds of reference food.
 	Amounts []quantity.Amount
 	About   []string
-	Label   bool // OpAbout: of all claims on the label, not of the one judged
-	Kinds   []string
+	Label   bool     // OpAbout: of all claims on the label, not of the one judged
+	Kinds   []string // of OpCategory: names of reference amounts
 
 	// OpIngredient
 	Process     []string
@@ -138,7 +139,7 @@ func (c *Condition) asksProductOnly() bool {
 	switch c.Op {
 	case OpCompare:
 		return c.Subject == "" && !c.Relation.Relative() && !slices.ContainsFunc(c.Times, func(w Weight) bool { return w.If != nil && !w.If.asksProductOnly() })
-	case OpFact, OpAmount, OpSize, OpIngredient, OpUndecided:
+	case OpFact, OpAmount, OpSize, OpIngredient, OpUndecided, OpCategory:
 		return true
 	case OpAll, OpAny, OpNot, OpCount, OpWhen:
 		return !slices.ContainsFunc(c.Parts, func(p *Condition) bool { return !p.asksProductOnly() })

@@ -39,6 +39,7 @@ var forms = []form{
 	{"size of", OpSize, []string{"as"}, true},
 	{"reference food is", OpKind, nil, false},
 	{"undecided", OpUndecided, nil, false},
+	{"category is", OpCategory, nil, false},
 }
 
 var countForm = form{"of", OpCount, []string{string(AtLeast)}, false}
@@ -153,7 +154,7 @@ func (r *conditionReader) place(name string) any {
 		return &r.amount
 	case "no ingredient":
 		return &r.ingredient
-	case "reference food is":
+	case "reference food is", "category is":
 		return &r.Kinds
 	}
 	return r.placeCompared(name)

@@ -37,6 +37,7 @@ func TestConditionsAreWrittenAsTheyAreRead(t *testing.T) {
 		`{"fact":"alcohol by volume","above":"1.2 %"}`,
 		`{"fact":"nutrients added as such","has":"vitamin-d"}`,
 		`{"fact":"glycidyl esters","stated":true}`,
+		`{"category is":["sugar"]}`,
 		`{"undecided":{"en":"data cannot tell"}}`,
 		`{"reference amount":{"at most":["30 g","2 tbsp"]}}`,
 		`{"claimed about":["fatty acids","cholesterol"]}`,

@@ -72,8 +72,8 @@ func (c *Condition) listed() []member {
 		return []member{{"claimed on the label about", c.About}}
 	case c.Op == OpAbout:
 		return []member{{string(OpAbout), c.About}}
-	case c.Op == OpKind:
-		return []member{{string(OpKind), c.Kinds}}
+	case c.Op == OpKind, c.Op == OpCategory:
+		return []member{{string(c.Op), c.Kinds}}
 	}
 	return []member{{string(OpHolds), c.Name}}
 }

@@ -93,9 +93,10 @@ func (r *Rule[T]) byStart() map[string]*Version[T] {
 	}
 	for i := range r.Versions {
 		v := &r.Versions[i]
-		key := v.From + " " + v.Edition
+		start := v.From + " " + v.Edition + strings.Join(v.Editions, " ")
+		key := start
 		for n := 2; out[key] != nil; n++ {
-			key = v.From + " " + v.Edition + " " + strconv.Itoa(n)
+			key = start + " " + strconv.Itoa(n)
 		}
 		out[key] = v
 	}

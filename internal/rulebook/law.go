@@ -212,7 +212,7 @@ func (s *selection) pick(n int, head func(int) *Head) int {
 	best, oldest := -1, -1
 	for i := range n {
 		h := head(i)
-		if h.From > s.date || h.Until != "" && h.Until <= s.date || h.Edition != "" && h.Edition != s.edition {
+		if h.From > s.date || h.Until != "" && h.Until <= s.date || !h.holdsOn(s.edition) {
 			continue
 		}
 		if oldest < 0 || h.From < head(oldest).From {

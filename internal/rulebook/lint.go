@@ -135,8 +135,13 @@ func (c *checker) editions() {
 		}
 	}
 	each(c.m, func(kind, id string, h *Head) {
-		if !known[h.Edition] {
-			c.bad(kind, id, "edition", "%q is no edition of jurisdiction.json", h.Edition)
+		for _, e := range slices.Concat(h.Editions, []string{h.Edition}) {
+			if !known[e] {
+				c.bad(kind, id, "edition", "%q is no edition of jurisdiction.json", e)
+			}
+		}
+		if h.Edition != "" && len(h.Editions) > 0 {
+			c.bad(kind, id, "editions", "stands beside edition")
 		}
 	})
 }

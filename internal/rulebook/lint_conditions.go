@@ -86,6 +86,8 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 			}
 		case OpUndecided:
 			c.words(kind, id, field+"/undecided", p.Why)
+		case OpCategory:
+			c.categories(kind, id, field, p.Kinds)
 		case OpKind:
 			if len(p.Kinds) == 0 {
 				bad("reference food is compared with no kind")
@@ -96,6 +98,17 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 			}
 		}
 	})
+}
+
+func (c *checker) categories(kind, id, field string, names []string) {
+	if len(names) == 0 {
+		c.bad(kind, id, field, "the category is compared with none")
+	}
+	for _, name := range names {
+		if !slices.ContainsFunc(c.m.ReferenceAmounts, func(r Rule[ReferenceAmount]) bool { return Name(r.ID) == name }) {
+			c.bad(kind, id, field, "%q is no category of this market", name)
+		}
+	}
 }
 
 // relative tells whether a condition compares with a reference food, by itself or through conditions that it points at; and whether it

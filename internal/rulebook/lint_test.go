@@ -76,6 +76,8 @@ func TestLintRefuses(t *testing.T) {
 		{"a reference food for nothing", map[string]string{"xx/claims.json": oneRule("xx/claim/c", `"name":{"en":"c"},"about":[],"needs reference food":true,"condition":{"of":{"fat":"1"},"per":"100 g","below":"1 g"}`)}, "needs reference food"},
 		{"two relations", claim(`{"of":{"fat":"1"},"per":"100 g","at most":"3 g","at least":"1 g"}`), "both"},
 		{"no condition", map[string]string{"xx/claims.json": oneRule("xx/claim/c", `"name":{"en":"c"},"about":[]`)}, "exactly one of condition"},
+		{"an unknown category", claim(`{"category is":["sugar"]}`), "no category of this market"},
+		{"edition beside editions", map[string]string{"xx/claims.json": oneRule("xx/claim/c", `"edition":"a","editions":["a","b"],"name":{"en":"c"},"about":[],"prohibited":true`)}, "beside edition"},
 		{"a weight without a fact", claim(`{"of":{"fat":"1"},"per":"100 g","times":[{"fact":""}],"at most":"3 g"}`), "names a fact"},
 		{"a weight capped in grams", claim(`{"of":{"fat":"1"},"per":"100 g","times":[{"fact":"x","at most":"1 g"}],"at most":"3 g"}`), "in per cent"},
 		{"a fact that is not stated", claim(`{"fact":"x","stated":false}`), `under "not"`},
@@ -136,6 +138,22 @@ func TestEditionByDateAndTransition(t *testing.T) {
 	}
 	if _, ok := b.At("zz", "2020-01-01", rulebook.WhenRequired, sales(quantity.Open)); ok {
 		t.Error("an unknown market has a law")
+	}
+}
+
+func TestVersionsOfSeveralEditions(t *testing.T) {
+	b, err := rulebook.Load(smallSet(map[string]string{"xx/claims.json": `{"jurisdiction":"xx","rules":[{"id":"xx/claim/c","versions":[
+		{"from":"2000-01-01","editions":["a","b"],` + source + `,"name":{"en":"both"},"about":[],"prohibited":true},
+		{"from":"2000-01-01","edition":"c",` + source + `,"name":{"en":"c"},"about":[],"prohibited":true}]}]}`,
+		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[{"edition":"a","from":"2000-01-01","until":"2010-01-01",` + source + `},{"edition":"b","from":"2010-01-01","until":"2020-01-01",` + source + `},{"edition":"c","from":"2020-01-01",` + source + `}],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`}))
+	if err != nil {
+		t.Fatal(err)
+	}
+	for on, want := range map[string]string{"2009-12-31": "both", "2010-01-01": "both", "2020-01-01": "c"} {
+		law, _ := b.At("xx", on, rulebook.WhenRequired, sales(quantity.Open))
+		if c, ok := law.Claims.Get("c"); !ok || c.Body.Name["en"] != want {
+			t.Errorf("on %s the version %+v holds, want %q", on, c.Body, want)
+		}
 	}
 }
 

@@ -7,6 +7,8 @@
 package rulebook
 
 import (
+	"slices"
+
 	"github.com/go-json-experiment/json"
 	"github.com/shopspring/decimal"
 
@@ -43,8 +45,17 @@ type Head struct {
 	RequiredFrom []Required `json:"required_from,omitzero"`
 	Until        string     `json:"until,omitzero"`
 	Edition      string     `json:"edition,omitzero"`
+	Editions     []string   `json:"editions,omitzero"`   // where it holds on labels of several, instead of Edition
 	AppliesTo    string     `json:"applies_to,omitzero"` // one of AppliesTo
 	Source       Source     `json:"source"`
+}
+
+// holdsOn tells whether the version holds on labels of an edition.
+func (h *Head) holdsOn(edition string) bool {
+	if len(h.Editions) > 0 {
+		return slices.Contains(h.Editions, edition)
+	}
+	return h.Edition == "" || h.Edition == edition
 }
 
 // Attachments a version's dates can have: what must have happened by then. Empty means labelled.
@@ -318,54 +329,6 @@ func (w *Weight) Of(percent quantity.Ratio) quantity.Ratio {
 	return f
 }
 
-// A Declaration is the table of a market: lines in order, statements under it, how numbers look.
-type Declaration struct {
-	Title      Words             `json:"title"`
-	Number     map[string]Number `json:"number"` // by language
-	Lines      []Line            `json:"lines"`
-	Together   [][]string        `json:"together,omitzero"` // lines that all stand once one of them does
-	Simplified []Simplified      `json:"simplified,omitzero"`
-	Servings   *Servings         `json:"servings per package,omitzero"`
-	Statements []Statement       `json:"statements,omitzero"`
-}
-
-// A Simplified is a shorter form of the declaration that a law allows, or what of it may be repeated elsewhere.
-type Simplified struct {
-	Name    Words           `json:"name"`
-	Where   *Condition      `json:"where,omitzero"`
-	Needed  int             `json:"at least,omitzero"`   // so many of Of must be insignificant
-	Of      []Insignificant `json:"of,omitzero"`         // counted, and left out
-	Leaves  []Insignificant `json:"leaves out,omitzero"` // left out without being counted or named
-	Shows   []string        `json:"shows,omitzero"`      // these lines alone stand
-	Repeats bool            `json:"repeats,omitzero"`    // Shows may be repeated beside the whole table
-	Keeps   []string        `json:"keeps,omitzero"`      // lines that stay in any case
-	// KeepsClaimed keeps the lines of what a claim on the label is about.
-	KeepsClaimed bool       `json:"keeps claimed,omitzero"`
-	Says         Words      `json:"says,omitzero"`    // with {names} of what of Of is left out; empty where nothing need be said
-	SaysIf       *Condition `json:"says if,omitzero"` // where Says must stand; elsewhere it may
-}
-
-// Insignificant says when a quantity counts as insignificant; always without a condition.
-type Insignificant struct {
-	Quantity string     `json:"quantity"`
-	If       *Condition `json:"if,omitzero"`
-}
-
-// Servings is how many servings a package holds, rounded by its own bands of plain numbers.
-type Servings struct {
-	Bands []CountBand `json:"bands"`
-	Text  Words       `json:"text"`         // "{n} servings per container"
-	One   Words       `json:"one,omitzero"` // for a single serving; Text where absent
-	About Words       `json:"about"`        // "about {n}", where the number was rounded
-}
-
-// A CountBand is a step of a rounded count.
-type CountBand struct {
-	Below   *decimal.Decimal `json:"below,omitzero"`
-	AtMost  *decimal.Decimal `json:"at most,omitzero"`
-	Nearest decimal.Decimal  `json:"nearest"`
-}
-
 // A Named is a condition that other rules point at.
 type Named struct {
 	Condition *Condition `json:"condition"`
@@ -385,49 +348,6 @@ type IngredientTest struct {
 	Process     []string         `json:"process"`
 	IodineAbove *decimal.Decimal `json:"iodine value above,omitzero"`
 	IodineUpTo  *decimal.Decimal `json:"iodine value at most,omitzero"`
-}
-
-// A Number is how numbers look in a language.
-type Number struct {
-	Decimal       string `json:"decimal"`
-	TrailingZeros bool   `json:"trailing zeros,omitzero"`
-	Unit          string `json:"unit"`      // "{} g" with {} for number and the unit following: "{n} {u}"
-	LessThan      string `json:"less than"` // "less than {n} {u}"
-}
-
-// A Line is one line of a declaration.
-type Line struct {
-	Quantity    string     `json:"quantity"`
-	Component   string     `json:"component"` // INFOODS tagname nearest to the line
-	Terms       Terms      `json:"terms"`
-	Level       int        `json:"level,omitzero"`
-	Unit        string     `json:"unit,omitzero"`       // "" shows no amount
-	ShownUnit   Words      `json:"shown unit,omitzero"` // how the unit is printed, where not as itself
-	NoAmountIf  *Condition `json:"no amount if,omitzero"`
-	Percent     string     `json:"percent"`                       // "shown", "optional" or "none"
-	PercentIf   *Condition `json:"percent mandatory if,omitzero"` // raises an optional per cent
-	NoPercentIf *Condition `json:"percent none if,omitzero"`
-	Presence    string     `json:"presence"` // "mandatory", "optional" or "forbidden"
-	MandatoryIf *Condition `json:"mandatory if,omitzero"`
-	ForbiddenIf *Condition `json:"forbidden if,omitzero"`
-	LeaveOutIf  *Condition `json:"leave out if,omitzero"`
-	LeftOut     Words      `json:"left out says,omitzero"`
-
-	first map[string]string
-}
-
-// FirstTerms are the preferred terms by language, where there is more than one language. Never change them.
-func (l *Line) FirstTerms() map[string]string { return l.first }
-
-// Terms are the words a line may carry, by language, the preferred first.
-type Terms map[string][]string
-
-// A Statement is text that must or may stand somewhere.
-type Statement struct {
-	If       *Condition `json:"if,omitzero"`
-	Text     Words      `json:"text"`
-	Place    string     `json:"place,omitzero"`
-	Presence string     `json:"presence,omitzero"` // "mandatory" (default) or "optional"
 }
 
 // A ReferenceAmount is the amount of a category customarily eaten at one time.
@@ -451,7 +371,8 @@ type Claim struct {
 	NeedsLines []string    `json:"mandatory lines,omitzero"`
 	Stated     *Stated     `json:"stated,omitzero"`
 	Wordings   Wordings    `json:"wordings,omitzero"`
-	Prohibited bool        `json:"prohibited,omitzero"` // the law names the claim in order to forbid it
+	NotOffered bool        `json:"not offered,omitzero"` // judged when asked for, and not listed unasked
+	Prohibited bool        `json:"prohibited,omitzero"`  // the law names the claim in order to forbid it
 }
 
 // Stated checks the number in a claim against the exact value: a claim of "30 %" less must be true.
