@@ -35,9 +35,21 @@ func (p Problem) Error() string {
 	return where + ": " + p.Says
 }
 
+// Files are the files of a rule set by their paths, such as "us/claims.json".
+type Files map[string][]byte
+
 // Load reads a rule set and refuses it, with every problem, if lint finds any.
 func Load(fsys fs.FS) (*Book, error) {
-	book, problems := Lint(fsys)
+	files, err := ReadFiles(fsys)
+	if err != nil {
+		return nil, err
+	}
+	return files.Load()
+}
+
+// Load is the book of the files. It refuses them, with every problem, if lint finds any, and a file that has no place in a set.
+func (f Files) Load() (*Book, error) {
+	book, problems := f.lint()
 	if len(problems) > 0 {
 		errs := make([]error, len(problems))
 		for i, p := range problems {
@@ -50,11 +62,16 @@ func Load(fsys fs.FS) (*Book, error) {
 
 // Lint reads a rule set and lists every problem. The book is usable only when there is none.
 func Lint(fsys fs.FS) (*Book, []Problem) {
-	l := &loader{book: &Book{markets: map[string]*Rules{}}}
-	files, err := readFiles(fsys)
+	files, err := ReadFiles(fsys)
 	if err != nil {
 		return nil, []Problem{{Says: err.Error()}}
 	}
+	return files.lint()
+}
+
+func (f Files) lint() (*Book, []Problem) {
+	l := &loader{book: &Book{markets: map[string]*Rules{}}}
+	files := f.sorted()
 	l.book.Digest = digest(files)
 	l.decodeAll(files)
 	if len(l.problems) == 0 {
@@ -69,10 +86,17 @@ type ruleFile struct {
 	data []byte
 }
 
-// readFiles reads the files that belong to a set, in the order of their names.
-func readFiles(fsys fs.FS) ([]ruleFile, error) {
-	var files []ruleFile
-	total := 0
+func (f Files) sorted() []ruleFile {
+	out := make([]ruleFile, 0, len(f))
+	for _, name := range sorted(f) {
+		out = append(out, ruleFile{name, f[name]})
+	}
+	return out
+}
+
+// ReadFiles reads the files that belong to a set; words/ and what is no .json are passed over.
+func ReadFiles(fsys fs.FS) (Files, error) {
+	files, total := Files{}, 0
 	err := fs.WalkDir(fsys, ".", func(p string, d fs.DirEntry, err error) error {
 		if err != nil || d.IsDir() || path.Ext(p) != ".json" || strings.HasPrefix(p, "words/") {
 			return err
@@ -91,10 +115,9 @@ func readFiles(fsys fs.FS) ([]ruleFile, error) {
 		if total += len(b); len(b) > MaxFile || total > MaxSet {
 			return tooLarge(p)
 		}
-		files = append(files, ruleFile{p, b})
+		files[p] = b
 		return nil
 	})
-	slices.SortFunc(files, func(a, b ruleFile) int { return strings.Compare(a.name, b.name) })
 	return files, err
 }
 
@@ -154,7 +177,7 @@ func (l *loader) reader(f ruleFile) func(*loader) {
 	switch {
 	case f.name == "set.json":
 		return l.book.readSet(f)
-	case strings.Contains(dir, "/") || dir == ".":
+	case !plainName(dir) || path.Ext(f.name) != ".json" || !fs.ValidPath(f.name):
 		l.problem(f.name, "", "", "is not at <jurisdiction>/<kind>.json")
 		return nil
 	case dir == practice:
@@ -206,3 +229,9 @@ func (l *loader) decode(file string, b []byte, to any) bool {
 	}
 	return true
 }
+
+// Digest is "sha256:" and the digest of all files with their names.
+func (f Files) Digest() string { return digest(f.sorted()) }
+
+// Names lists the paths in order.
+func (f Files) Names() []string { return sorted(f) }

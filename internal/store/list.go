@@ -1,0 +1,38 @@
+package store
+
+import (
+	"context"
+	"errors"
+	"io"
+	"slices"
+	"strings"
+	"time"
+
+	"gocloud.dev/blob"
+)
+
+// A Stored is a set that lies in the store.
+type Stored struct {
+	Digest string    `json:"digest"`
+	Bytes  int64     `json:"bytes"` // of the archive
+	At     time.Time `json:"at"`    // when it was stored, as the bucket says
+}
+
+// List is every set of the store, the oldest first. It reads none of them.
+func List(ctx context.Context, b *blob.Bucket) ([]Stored, error) {
+	out := []Stored{}
+	for it := b.List(&blob.ListOptions{Prefix: setsPrefix}); ; {
+		object, err := it.Next(ctx)
+		if errors.Is(err, io.EOF) {
+			slices.SortStableFunc(out, func(a, b Stored) int { return a.At.Compare(b.At) })
+			return out, nil
+		}
+		if err != nil {
+			return nil, err
+		}
+		digest := "sha256:" + strings.TrimSuffix(strings.TrimPrefix(object.Key, setsPrefix), setName)
+		if key, err := setKey(digest); err == nil && key == object.Key {
+			out = append(out, Stored{digest, object.Size, object.ModTime.UTC()})
+		}
+	}
+}
