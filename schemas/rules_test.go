@@ -101,7 +101,7 @@ func TestEveryRuleFileFitsItsSchema(t *testing.T) {
 
 const (
 	source  = `"source":{"ref":"x","evidence":"memory","force":"law"}`
-	market  = `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`
+	market  = `{"jurisdiction":"xx","name":"X","languages":["en"],"and":{"en":"and"},"editions":[],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`
 	fatOnly = `{"jurisdiction":"xx","rules":[{"id":"xx/quantity/fat","versions":[{"from":"2000-01-01","name":{"en":"fat"},"unit":"g","ways":[{"sum":{"FAT":"1"}}],` + source + `}]}]}`
 )
 

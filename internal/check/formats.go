@@ -83,7 +83,7 @@ func (v *view) state(out *Simplified, f *rulebook.Simplified, named []string) {
 	texts := map[string]string{}
 	for _, lang := range v.law.Market.Languages {
 		if says, ok := f.Says[lang]; ok {
-			texts[lang] = strings.ReplaceAll(says, "{names}", joined(v.namesIn(named, lang), lang))
+			texts[lang] = strings.ReplaceAll(says, "{names}", joined(v.namesIn(named, lang), lang, v.law.Market.And.In(lang)))
 		}
 	}
 	out.Says, out.Named = texts[v.language()], v.namesIn(named, v.language())

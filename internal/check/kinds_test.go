@@ -20,7 +20,7 @@ func smallMarket(t *testing.T, files map[string]string) *rulebook.Book {
 	rules := func(list ...string) string { return `{"jurisdiction":"xx","rules":[` + strings.Join(list, ",") + `]}` }
 	set := map[string]string{
 		"set.json": `{"version":"1"}`,
-		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[],"assumed":[],"unlisted_claims":null,
+		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"and":{"en":"and"},"editions":[],"assumed":[],"unlisted_claims":null,
 			"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`,
 		"xx/definitions.json": rules(quantity("fat", "FAT"), quantity("protein", "PROCNT"), quantity("salt", "NACL")),
 		"xx/energy.json": rules(`{"id":"xx/energy/energy","versions":[{` + source + `,"name":{"en":"energy"},"unit":"kcal",
@@ -31,7 +31,10 @@ func smallMarket(t *testing.T, files map[string]string) *rulebook.Book {
 		"xx/declaration.json": rules(declaration("")),
 	}
 	for name, s := range files {
-		set["xx/"+name] = strings.ReplaceAll(rules(s), "SOURCE", source)
+		if name != "jurisdiction.json" {
+			s = rules(s)
+		}
+		set["xx/"+name] = s
 	}
 	fsys := fstest.MapFS{}
 	for name, s := range set {
@@ -199,5 +202,68 @@ func TestClaimsThatAreNotOffered(t *testing.T) {
 	m = run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"0 g"}`, `,"claims":[{"claim":"fresh"}]`))
 	if m.Claims[0].Verdict != "permitted" {
 		t.Errorf("asked for, it is %s", m.Claims[0].Verdict)
+	}
+}
+
+func TestNoDeclarationRequired(t *testing.T) {
+	b := smallMarket(t, map[string]string{"declaration.json": declaration(`,"required unless":{"all":[{"fact":"prepacked","is":"no"},{"not":{"claimed on the label about":["any"]}}]},"not required says":{"en":"sold loose"}`),
+		"claims.json": `{"id":"xx/claim/fat-free","versions":[{SOURCE,"name":{"en":"fat free"},"about":["fat"],"condition":{"of":{"fat":"1"},"per":"100 g","below":"0.5 g"}}]}`})
+	for _, c := range []struct{ name, more, says, presence string }{
+		{"loose", `,"facts":{"prepacked":false}`, "sold loose", "optional"},
+		{"prepacked", `,"facts":{"prepacked":true}`, "", "mandatory"},
+		{"loose with a claim", `,"facts":{"prepacked":false},"claims":[{"claim":"fat-free"}]`, "", "mandatory"},
+		{"nobody says", "", "sold loose", "mandatory"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			d := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"0 g","PROCNT":"1 g","NACL":"0 g"}`, c.more)).Declaration
+			says := ""
+			if n := d.NotRequired; n != nil {
+				says = n.Says
+				if n.Open != (c.presence == "mandatory") || n.Open != (len(n.Needs) > 0) {
+					t.Errorf("it is %+v", n)
+				}
+			}
+			if says != c.says || d.Lines[0].Presence != c.presence {
+				t.Errorf("%q with lines that are %s, want %q and %s", says, d.Lines[0].Presence, c.says, c.presence)
+			}
+		})
+	}
+}
+
+// A second column stands by a condition on the package, on labels of one edition.
+func TestBasesByCondition(t *testing.T) {
+	page := func(edition string) string {
+		return `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[{"edition":"new","from":"2020-01-01","source":{"ref":"x","evidence":"memory","force":"law"}}],"assumed":[],"unlisted_claims":null,
+		"bases":[{"per":"serving","presence":"mandatory"},{"per":"package","presence":"mandatory","edition":"` + edition + `","if":{"size of":"package","as":"share of reference amount","at least":"200 %"}}],"gaps":[],"caution":"c"}`
+	}
+	for _, c := range []struct {
+		name, edition, net, on string
+		want                   []string
+	}{
+		{"twice the reference amount", "new", "60 g", "2026-01-01", []string{"serving", "package"}},
+		{"just below", "new", "59 g", "2026-01-01", []string{"serving"}},
+		{"before the edition", "new", "60 g", "2019-12-31", []string{"serving"}},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			b := smallMarket(t, map[string]string{"jurisdiction.json": page(c.edition)})
+			m := run(t, b, "xx", c.on, "", dish(`{"FAT":"10 g","PROCNT":"1 g","NACL":"0 g"}`, `,"reference_amount":{"default":"30 g"},"serving":{"default":{"amount":"30 g"}},"package":{"net":"`+c.net+`"}`))
+			var got []string
+			for _, basis := range m.Declaration.Bases {
+				got = append(got, basis.ID)
+			}
+			if !slices.Equal(got, c.want) {
+				t.Errorf("the bases are %v, want %v", got, c.want)
+			}
+		})
+	}
+}
+
+func TestDisclosuresThatMayStand(t *testing.T) {
+	b := smallMarket(t, map[string]string{
+		"disclosure.json": `{"id":"xx/disclosure/diet","versions":[{SOURCE,"quantity":"fat","named":{"en":"fat"},"condition":{"all":[]},"effect":"statement","presence":"optional","statement":{"en":"Eat a varied diet."}}]}`,
+		"claims.json":     `{"id":"xx/claim/fat-free","versions":[{SOURCE,"name":{"en":"fat free"},"about":["fat"],"condition":{"of":{"fat":"1"},"per":"100 g","below":"0.5 g"}}]}`})
+	got := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"0 g","PROCNT":"1 g","NACL":"0 g"}`, `,"claims":[{"claim":"fat-free"}]`)).Claims[0]
+	if got.Verdict != "permitted" || len(got.Statements) != 1 || got.Statements[0].Presence != "optional" {
+		t.Errorf("%s with %+v", got.Verdict, got.Statements)
 	}
 }

@@ -37,9 +37,10 @@ func (l *lineState) text(p declare.Printed, u quantity.Unit, lang string) string
 // openColumns settles the bases. A liquid is declared per 100 mL where a solid is per 100 g.
 func (m *market) openColumns(out *Market) {
 	liquid := m.liquid()
-	for _, b := range m.law.Market.DefaultBases {
+	for i := range m.law.Market.DefaultBases {
+		b := &m.law.Market.DefaultBases[i]
 		per := b.Per
-		if per == "100 mL" {
+		if per == "100 mL" || !m.hasBasis(b) {
 			continue
 		}
 		if per == "100 g" && liquid {
@@ -64,9 +65,21 @@ func (m *market) openColumns(out *Market) {
 	}
 }
 
+// hasBasis tells whether a basis belongs to the market's label of this edition and product.
+func (m *market) hasBasis(b *rulebook.BasisRule) bool {
+	if b.Edition != "" && b.Edition != m.law.Edition {
+		return false
+	}
+	v := m.as(m.product)
+	return b.If == nil || v.truth(b.If) == quantity.Yes
+}
+
 func missingBasis(per string) string {
-	if per == "serving" {
+	switch per {
+	case "serving":
 		return "state a serving or a category, and a density where it is a volume"
+	case "package", "unit":
+		return "state the package's net quantity and number of units, and a density where it is a volume"
 	}
 	return "state a density"
 }
@@ -203,12 +216,37 @@ func (m *market) table() Table {
 	if d, ok := m.law.Declaration(); ok {
 		t.Title, t.Rule = d.Body.Title.In(m.language()), d.ID
 		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
-		t.Servings = v.servings(d.Body)
+		t.Servings, t.NotRequired = v.servings(d.Body), v.required(d.Body)
+		t.free()
 		if f := v.formats(d.Body.Simplified); len(f) > 0 {
 			t.Simplified, t.OtherFormats = &f[0], f[1:]
 		}
 	}
 	return t
+}
+
+// required tells why the law might ask for no declaration; nil where it asks for one.
+func (v *view) required(d *rulebook.Declaration) *NotRequired {
+	if d.RequiredUnless == nil {
+		return nil
+	}
+	switch v.truth(d.RequiredUnless) {
+	case quantity.Yes:
+		return &NotRequired{Says: d.NotRequired.In(v.language())}
+	case quantity.Open:
+		return &NotRequired{Says: d.NotRequired.In(v.language()), Open: true, Needs: v.needsFor(d.RequiredUnless)}
+	}
+	return nil
+}
+
+// free makes every line optional where the law asks for no declaration.
+func (t *Table) free() {
+	if t.NotRequired == nil || t.NotRequired.Open {
+		return
+	}
+	for i := range t.Lines {
+		t.Lines[i].Presence = "optional"
+	}
 }
 
 func (m *market) language() string { return m.law.Market.Languages[0] }

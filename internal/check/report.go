@@ -75,9 +75,18 @@ type Table struct {
 	NotKnown   []OpenLine  `json:"not_known"` // optional lines whose value is not determined
 	Statements []Statement `json:"statements"`
 	Servings   *Servings   `json:"servings_per_package,omitzero"`
-	Simplified *Simplified `json:"simplified_format,omitzero"`
+	// NotRequired is set where the law might ask for no declaration.
+	NotRequired *NotRequired `json:"not_required,omitzero"`
+	Simplified  *Simplified  `json:"simplified_format,omitzero"`
 	// OtherFormats are further shorter formats, and what may be repeated elsewhere.
 	OtherFormats []Simplified `json:"other_formats,omitzero"`
+}
+
+// NotRequired says why the law asks for no declaration, which may be given all the same. Open is set where that is not determined.
+type NotRequired struct {
+	Says  string   `json:"says"`
+	Open  bool     `json:"open,omitzero"`
+	Needs []string `json:"needs,omitzero"`
 }
 
 // Servings is how many servings the package holds.

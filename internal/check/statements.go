@@ -124,7 +124,7 @@ func (v *view) disclosures(out *Claim) []Statement {
 		d     *rulebook.Disclosure
 		id    string
 		truth quantity.Truth
-		names []string
+		names []rulebook.Words
 		needs []string // what would settle it
 	}
 	var groups []*group
@@ -141,7 +141,7 @@ func (v *view) disclosures(out *Claim) []Statement {
 		if i < 0 {
 			groups, i = append(groups, &group{d: d.Body, id: d.ID, truth: t}), len(groups)
 		}
-		groups[i].names = append(groups[i].names, d.Body.Named.In("en"))
+		groups[i].names = append(groups[i].names, d.Body.Named)
 		if t == quantity.Open {
 			groups[i].needs = union(groups[i].needs, v.needsFor(d.Body.When), v.needsFor(d.Body.Condition))
 		}
@@ -150,10 +150,11 @@ func (v *view) disclosures(out *Claim) []Statement {
 	for _, g := range groups {
 		words := rulebook.Words{}
 		for lang, s := range g.d.Statement {
-			words[lang] = strings.ReplaceAll(s, "{names}", joined(g.names, lang))
+			words[lang] = strings.ReplaceAll(s, "{names}", v.listed(g.names, lang))
 		}
 		st := v.statement(words, g.d.Place, g.id, out)
-		if g.truth == quantity.Open {
+		st.Presence = cmp.Or(g.d.Presence, st.Presence)
+		if g.truth == quantity.Open && g.d.Presence != "optional" {
 			st.Presence, st.needs = "open", g.needs
 		}
 		list = append(list, st)
@@ -188,20 +189,26 @@ func union(list []string, more ...[]string) []string {
 	return list
 }
 
-// and is the word before the last of several names, by language. From memory.
-var and = map[string]string{"en": "and", "fr": "et", "de": "und", "es": "y", "it": "e", "pt": "e", "nl": "en", "pl": "i"}
-
-// joined lists names in words; only English has a comma before the last of three.
-func joined(names []string, lang string) string {
-	if len(names) < 2 {
-		return strings.Join(names, "")
+// joined lists names in words, the word and before the last; only English has a comma there too.
+func joined(names []string, lang, and string) string {
+	if len(names) < 2 || and == "" {
+		return strings.Join(names, ", ")
 	}
 	comma := ""
 	if len(names) > 2 && lang == "en" {
 		comma = ","
 	}
 	last := len(names) - 1
-	return strings.Join(names[:last], ", ") + comma + " " + cmp.Or(and[lang], ",") + " " + names[last]
+	return strings.Join(names[:last], ", ") + comma + " " + and + " " + names[last]
+}
+
+// listed lists names in a language of the market.
+func (m *market) listed(names []rulebook.Words, lang string) string {
+	out := make([]string, len(names))
+	for i, n := range names {
+		out[i] = n.In(lang)
+	}
+	return joined(out, lang, m.law.Market.And.In(lang))
 }
 
 // fill replaces placeholders, and tells whether it could replace all: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and

@@ -62,9 +62,9 @@ func (v *view) Name(q string) string {
 	return strings.ReplaceAll(q, "-", " ")
 }
 
-// EnergyFactor is kcal per g of a quantity: its own, or that of the quantity it counts as.
-func (v *view) EnergyFactor(q string) (quantity.Ratio, bool) {
-	e, ok := v.law.Energy.Get("energy")
+// EnergyFactor is kcal or kJ per g of a quantity: its own, or that of the quantity it counts as.
+func (v *view) EnergyFactor(q, energy string) (quantity.Ratio, bool) {
+	e, ok := v.law.Energy.Get(energy)
 	if !ok {
 		return quantity.Ratio{}, false
 	}
@@ -255,7 +255,7 @@ func (v *view) ReferenceKind(kinds []string) quantity.Truth {
 }
 
 // Category tells whether the recipe's category in this market is one of the names.
-func (v view) Category(names []string) quantity.Truth {
+func (v *view) Category(names []string) quantity.Truth {
 	category, stated := v.c.recipe.Category.For(v.j)
 	r, ok := v.category(category)
 	if !stated || !ok {
@@ -284,7 +284,7 @@ func (v *view) NoIngredient(c *rulebook.Condition) (t quantity.Truth, missing st
 		if c.IodineAbove != nil {
 			what = "the process or the iodine value of "
 		}
-		missing = what + joined(open, "en")
+		missing = what + joined(open, "en", "and")
 	}
 	return found.Not(), missing
 }

@@ -1,6 +1,8 @@
 package claim
 
 import (
+	"strings"
+
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rulebook"
 )
@@ -85,8 +87,8 @@ func measure(c *rulebook.Condition, per rulebook.Per, s Subject, product bool, x
 	}
 	out := side{num: num, scale: quantity.FromInt(1), den: quantity.Exactly(s.Mass())}
 	switch c.As {
-	case "share of energy":
-		return share(num, s, "energy")
+	case "share of energy", "share of energy in kJ":
+		return share(num, s, energyOf(c))
 	case "share of fatty acids":
 		return share(num, s, "fatty-acids")
 	case "share of fat":
@@ -100,6 +102,14 @@ func measure(c *rulebook.Condition, per rulebook.Per, s Subject, product bool, x
 		out.den = quantity.Exactly(s.Mass().Mul(v))
 	}
 	return out.per(per, s)
+}
+
+// energyOf is the energy a share is of: that in kcal, unless the condition asks for kJ.
+func energyOf(c *rulebook.Condition) string {
+	if c.As == "share of energy in kJ" {
+		return "energy-kj"
+	}
+	return "energy"
 }
 
 func share(num quantity.Linear, s Subject, of string) side {
@@ -154,8 +164,8 @@ func weighted(c *rulebook.Condition, s Subject, x Context) (quantity.Linear, str
 			return sum, "the quantity " + name
 		}
 		k := t.Factor
-		if c.As == "share of energy" {
-			f, ok := x.EnergyFactor(name)
+		if strings.HasPrefix(c.As, "share of energy") {
+			f, ok := x.EnergyFactor(name, energyOf(c))
 			if !ok {
 				return sum, "an energy factor of " + x.Name(name)
 			}

@@ -27,9 +27,9 @@ type Subject interface {
 type Context interface {
 	Product() Subject
 	Reference() (Subject, bool)
-	Meets(id string) quantity.Truth // whether the product meets a claim's condition, beside the reference food if there is one
-	Name(quantity string) string    // in words
-	EnergyFactor(quantity string) (f quantity.Ratio, ok bool)
+	Meets(id string) quantity.Truth                                   // whether the product meets a claim's condition, beside the reference food if there is one
+	Name(quantity string) string                                      // in words
+	EnergyFactor(quantity, energy string) (f quantity.Ratio, ok bool) // per g, in the unit of the energy
 	ReferenceValue(quantity string) (v quantity.Ratio, ok bool)
 	Declared(quantity, is string) quantity.Truth // "" asks whether the line stands
 	Fact(name, is string) quantity.Truth
@@ -225,6 +225,9 @@ func (x evaluator) fact(c *rulebook.Condition) quantity.Truth {
 // size compares package, serving or unit with a mass, a volume or a share of the reference amount.
 func (x evaluator) size(c *rulebook.Condition) quantity.Truth {
 	size, ok := x.Size(c.Name)
+	if c.Stated {
+		return quantity.TruthOf(ok)
+	}
 	if !ok {
 		return quantity.Open
 	}

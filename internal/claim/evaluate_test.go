@@ -57,7 +57,9 @@ func (w world) Measured(name string) (quantity.Ratio, bool) {
 func (w world) Size(name string) (quantity.Ratio, bool) {
 	return quantity.FromInt(60), name == "package"
 }
-func (w world) EnergyFactor(string) (quantity.Ratio, bool)       { return quantity.FromInt(9), true }
+func (w world) EnergyFactor(_, energy string) (quantity.Ratio, bool) {
+	return quantity.FromInt(map[string]int64{"energy": 9, "energy-kj": 37}[energy]), true
+}
 func (w world) ReferenceValue(string) (quantity.Ratio, bool)     { return quantity.FromInt(20), true }
 func (w world) ReferenceAmount([]quantity.Amount) quantity.Truth { return quantity.Yes }
 func (w world) ClaimedAbout([]string, bool) quantity.Truth       { return quantity.No }
@@ -85,7 +87,7 @@ func somewhere(i int, low, high int64) quantity.Linear {
 
 var (
 	water = food{"fat": {}, "mono": {}, "fatty-acids": {}, "energy": {}}
-	bread = food{"fat": exactly(3, 0), "mono": exactly(1, 0), "fatty-acids": exactly(28, -1), "energy": exactly(250, 0)}
+	bread = food{"fat": exactly(3, 0), "mono": exactly(1, 0), "fatty-acids": exactly(28, -1), "energy": exactly(250, 0), "energy-kj": exactly(1000, 0)}
 	hazy  = food{"fat": somewhere(1, 2, 4), "mono": somewhere(2, 0, 1), "fatty-acids": exactly(3, 0), "energy": exactly(100, 0)}
 )
 
@@ -105,6 +107,8 @@ func TestConditions(t *testing.T) {
 		{"per 100 kcal", `{"of":{"fat":"1"},"per":"100 kcal","at most":"1.2 g"}`, world{product: bread}, quantity.Yes},
 		{"share of energy: 27 of 250", `{"of":{"fat":"1"},"as":"share of energy","at most":"10.8 %"}`, world{product: bread}, quantity.Yes},
 		{"share of energy, just under", `{"of":{"fat":"1"},"as":"share of energy","at most":"10.79 %"}`, world{product: bread}, quantity.No},
+		{"share of energy in kJ: 111 of 1000", `{"of":{"fat":"1"},"as":"share of energy in kJ","at most":"11.1 %"}`, world{product: bread}, quantity.Yes},
+		{"share of energy in kJ, just under", `{"of":{"fat":"1"},"as":"share of energy in kJ","at most":"11.09 %"}`, world{product: bread}, quantity.No},
 		{"share of fatty acids: 1 of 2.8", `{"of":{"mono":"1"},"as":"share of fatty acids","at least":"35.7 %"}`, world{product: bread}, quantity.Yes},
 		{"share of reference value: 3 of 20", `{"of":{"fat":"1"},"as":"share of reference value","per":"100 g","at least":"15 %"}`, world{product: bread}, quantity.Yes},
 		{"sum with weights", `{"of":{"fat":"1","mono":"-1"},"per":"100 g","at most":"2 g"}`, world{product: bread}, quantity.Yes},
@@ -148,6 +152,8 @@ func TestConditions(t *testing.T) {
 		{"a package below twice the reference amount", `{"size of":"package","as":"share of reference amount","below":"200 %"}`, world{product: bread}, quantity.No},
 		{"a package by mass", `{"size of":"package","at most":"60 g"}`, world{product: bread}, quantity.Yes},
 		{"a serving as a share of the package", `{"size of":"package","as":"share of serving","at least":"200 %"}`, world{product: bread}, quantity.Yes},
+		{"a size that is stated", `{"size of":"package","stated":true}`, world{product: bread}, quantity.Yes},
+		{"a size that is not stated", `{"size of":"surface","stated":true}`, world{product: bread}, quantity.No},
 		{"a named condition", `{"holds":"x/condition/solid"}`, world{product: bread}, quantity.Yes},
 		{"a named condition that is not in force", `{"holds":"x/condition/other"}`, world{product: bread}, quantity.No},
 		{"a unit nobody weighed", `{"size of":"unit","at most":"60 g"}`, world{product: bread}, quantity.Open},

@@ -91,6 +91,9 @@ func atomSays(c *rulebook.Condition, x Context) string {
 	case rulebook.OpAmount:
 		return amountSays(c)
 	case rulebook.OpSize:
+		if c.Stated {
+			return "the " + c.Name + " is stated"
+		}
 		s := "the " + c.Name + " is " + string(c.Relation) + " " + c.Threshold.String()
 		if of, ok := strings.CutPrefix(c.As, "share of "); ok {
 			s += " of the " + of

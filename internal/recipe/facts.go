@@ -93,6 +93,7 @@ var Facts = []FactRule{
 	{Name: "unit is usually divided", Kind: YesNo, Says: "the unit is divided for eating, such as a cake, a pie or a pizza"},
 	{Name: "two thirds of the nutrients reach the daily value", Kind: YesNo, Says: "two thirds at least of the vitamins and minerals present at 2 per cent of the daily value or more reach 100 per cent"},
 	{Name: "polydextrose or erythritol added", Kind: OneOf, Values: []string{"polydextrose", "erythritol", "both", "no"}, Says: "whether polydextrose or erythritol is added"},
+	{Name: "reference food representative of its type", Kind: YesNo, Says: "the value of the reference food stands for its type of food, as a market leader's or the maker's own regular product's does"},
 	{Name: "food group", Kind: OneOf, Values: []string{"vegetable", "fruit", "grain", "dairy", "game meat", "seafood", "egg", "beans, peas or lentils", "nuts, seeds or soy", "oil", "oil-based spread", "oil-based dressing",
 		"mixed product", "encouraged foods with nothing but water", "water, tea or coffee"}, Says: "which food group the food belongs to, where a claim has limits by group"},
 	{Name: "saturated fat not inherent in seafood, nuts, seeds or soy", Kind: Measure, Unit: "%", Says: "share of the food's saturated fat that does not come with seafood, nuts, seeds or soy"},

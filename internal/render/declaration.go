@@ -21,6 +21,7 @@ func (p *page) declaration(m *check.Market, o Options) {
 	}
 	p.legend(marks)
 	p.blank()
+	p.notRequired(d.NotRequired)
 	p.servings(d.Servings, o)
 	p.open(d.Lines, o)
 	p.additions(d, o)

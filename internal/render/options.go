@@ -69,6 +69,16 @@ func (p *page) notKnown(d *check.Table) {
 	p.run("Optional lines without enough data", s+".")
 }
 
+func (p *page) notRequired(n *check.NotRequired) {
+	switch {
+	case n == nil:
+	case n.Open:
+		p.run("Whether a declaration is required is not determined", sentence(n.Says)+" It would have to be known: "+strings.Join(n.Needs, ", ")+".")
+	default:
+		p.run("No declaration is required", sentence(n.Says))
+	}
+}
+
 func (p *page) servings(s *check.Servings, o Options) {
 	if s == nil {
 		return

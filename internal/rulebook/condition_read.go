@@ -36,7 +36,7 @@ var forms = []form{
 	{"claimed on the label about", OpAbout, nil, false},
 	{"holds", OpHolds, nil, false},
 	{"no ingredient", OpIngredient, nil, false},
-	{"size of", OpSize, []string{"as"}, true},
+	{"size of", OpSize, []string{"as", "stated"}, true},
 	{"reference food is", OpKind, nil, false},
 	{"undecided", OpUndecided, nil, false},
 	{"category is", OpCategory, nil, false},
@@ -252,10 +252,10 @@ func (r *conditionReader) compare(f form) error {
 	return nil
 }
 
-// asked lists what a fact is asked besides a comparison.
+// asked lists what a fact or a size is asked besides a comparison.
 func (r *conditionReader) asked() (out []string) {
 	for _, name := range r.members {
-		if r.Op == OpFact && (name == "is" || name == "has" || name == "stated") {
+		if r.Op == OpFact && (name == "is" || name == "has") || name == "stated" {
 			out = append(out, name)
 		}
 	}

@@ -44,6 +44,7 @@ func TestConditionsAreWrittenAsTheyAreRead(t *testing.T) {
 		`{"claimed on the label about":["energy"]}`,
 		`{"size of":"package","as":"share of reference amount","below":"200 %"}`,
 		`{"size of":"surface","below":"258 cm2"}`,
+		`{"size of":"surface","stated":true}`,
 		`{"holds":"us/condition/disqualifying-level"}`,
 		`{"reference food is":["own regular product"]}`,
 		`{"no ingredient":{"process":["hydrogenated"],"iodine value above":"4"}}`,

@@ -45,15 +45,11 @@ func (c *Condition) members() []member {
 	case OpMeets:
 		return c.some(member{"meets", c.Name}, member{"subject", c.Subject})
 	case OpFact:
-		out := c.some(member{"fact", c.Name}, member{"is", c.Is}, member{"has", c.Has})
-		if c.Stated {
-			out = append(out, member{"stated", true})
-		}
-		return append(out, c.related()...)
+		return append(c.some(member{"fact", c.Name}, member{"is", c.Is}, member{"has", c.Has}), c.statedOrRelated()...)
 	case OpUndecided:
 		return []member{{string(OpUndecided), c.Why}}
 	case OpSize:
-		return append(c.some(member{string(OpSize), c.Name}, member{"as", c.As}), c.related()...)
+		return append(c.some(member{string(OpSize), c.Name}, member{"as", c.As}), c.statedOrRelated()...)
 	case OpCompare:
 		return c.compareMembers()
 	case OpIngredient:
@@ -87,6 +83,13 @@ func (c *Condition) some(key member, more ...member) []member {
 		}
 	}
 	return out
+}
+
+func (c *Condition) statedOrRelated() []member {
+	if c.Stated {
+		return []member{{"stated", true}}
+	}
+	return c.related()
 }
 
 func (c *Condition) related() []member {

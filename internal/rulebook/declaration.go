@@ -11,6 +11,9 @@ type Declaration struct {
 	Simplified []Simplified      `json:"simplified,omitzero"`
 	Servings   *Servings         `json:"servings per package,omitzero"`
 	Statements []Statement       `json:"statements,omitzero"`
+	// RequiredUnless says where the law asks for no declaration; NotRequired says so in words.
+	RequiredUnless *Condition `json:"required unless,omitzero"`
+	NotRequired    Words      `json:"not required says,omitzero"`
 }
 
 // A Simplified is a shorter form of the declaration that a law allows, or what of it may be repeated elsewhere.

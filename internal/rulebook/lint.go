@@ -114,8 +114,10 @@ func (c *checker) market() {
 		c.bad("jurisdiction", "", "caution", "is missing")
 	}
 	c.editions()
+	c.page()
 	c.dims, c.deps = map[string]quantity.Dimension{}, map[string][]string{}
 	c.quantities()
+	c.bases()
 	c.references()
 	c.roundings()
 	c.declarations()
@@ -123,6 +125,28 @@ func (c *checker) market() {
 	c.limits()
 	c.naming()
 	c.cycles()
+}
+
+// page checks words and bases of jurisdiction.json.
+func (c *checker) page() {
+	for _, lang := range c.m.Market.Languages {
+		if c.m.Market.And != nil && c.m.Market.And[lang] == "" {
+			c.bad("jurisdiction", "", "and", "has no word in %q", lang)
+		}
+	}
+}
+
+func (c *checker) bases() {
+	for i := range c.m.Market.DefaultBases {
+		b := &c.m.Market.DefaultBases[i]
+		if _, err := ParsePer(b.Per); err != nil {
+			c.bad("jurisdiction", "", "bases", "%v", err)
+		}
+		if b.Edition != "" && !slices.ContainsFunc(c.m.Market.Editions, func(e Edition) bool { return e.Edition == b.Edition }) {
+			c.bad("jurisdiction", "", "bases", "%q is no edition", b.Edition)
+		}
+		c.condition("jurisdiction", "", "bases/if", "basis", b.If)
+	}
 }
 
 func (c *checker) editions() {

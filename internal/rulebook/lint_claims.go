@@ -27,6 +27,10 @@ func (c *checker) declarations() {
 			c.line(id, field+at, line)
 		}
 		c.shortForms(id, field, d, seen)
+		c.condition("declaration", id, field+"/required unless", "required", d.RequiredUnless)
+		if (d.RequiredUnless != nil) != (len(d.NotRequired) > 0) {
+			bad("/not required says", "goes with required unless")
+		}
 		for _, group := range d.Together {
 			for _, q := range group {
 				if !seen[q] {
@@ -177,6 +181,9 @@ func (c *checker) limits() {
 		c.quantity("disclosure", id, field+"/quantity", d.Quantity, quantity.NoDimension)
 		if d.Effect != "statement" && d.Effect != "bars" {
 			c.bad("disclosure", id, field+"/effect", "%q is neither statement nor bars", d.Effect)
+		}
+		if d.Presence != "" && (d.Presence != "mandatory" && d.Presence != "optional" || d.Effect != "statement") {
+			c.bad("disclosure", id, field+"/presence", "%q of a statement is neither mandatory nor optional", d.Presence)
 		}
 		if d.Condition == nil {
 			c.bad("disclosure", id, field+"/condition", "is missing")

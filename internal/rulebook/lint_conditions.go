@@ -42,7 +42,7 @@ func ParsePer(s string) (Per, error) {
 }
 
 // Shares are the denominators a comparison can name besides bases.
-var Shares = []string{"share of energy", "share of fatty acids", "share of fat", "share of reference value"}
+var Shares = []string{"share of energy", "share of energy in kJ", "share of fatty acids", "share of fat", "share of reference value"}
 
 func (c *checker) depend(from, on string) {
 	if !slices.Contains(c.deps[from], on) {
@@ -167,6 +167,7 @@ func (c *checker) size(kind, id, field string, p *Condition) {
 	}
 	dim := p.Threshold.Unit.Dimension()
 	switch {
+	case p.Stated:
 	case p.Name == "surface" && p.As == "" && dim == quantity.Area:
 	case p.Name == "surface":
 		c.bad(kind, id, field, "a surface is compared with cm2, not with %s", p.Threshold)

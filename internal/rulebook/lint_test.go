@@ -15,7 +15,7 @@ const source = `"source":{"ref":"x","evidence":"memory","force":"law"}`
 func smallSet(files map[string]string) fstest.MapFS {
 	set := map[string]string{
 		"set.json":             `{"version":"1"}`,
-		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[{"edition":"a","from":"2000-01-01","until":"2021-01-01",` + source + `},{"edition":"b","from":"2016-01-01","required_from":[{"date":"2020-01-01","when":{"fact":"annual food sales","is":"10 million or more"}},{"date":"2021-01-01"}],` + source + `}],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`,
+		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"and":{"en":"and"},"editions":[{"edition":"a","from":"2000-01-01","until":"2021-01-01",` + source + `},{"edition":"b","from":"2016-01-01","required_from":[{"date":"2020-01-01","when":{"fact":"annual food sales","is":"10 million or more"}},{"date":"2021-01-01"}],` + source + `}],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`,
 		"xx/definitions.json":  `{"jurisdiction":"xx","rules":[{"id":"xx/quantity/fat","versions":[{"from":"2000-01-01","name":{"en":"fat"},"unit":"g","ways":[{"sum":{"FAT":"1"}}],` + source + `}]}]}`,
 	}
 	for name, s := range files {
@@ -145,7 +145,7 @@ func TestVersionsOfSeveralEditions(t *testing.T) {
 	b, err := rulebook.Load(smallSet(map[string]string{"xx/claims.json": `{"jurisdiction":"xx","rules":[{"id":"xx/claim/c","versions":[
 		{"from":"2000-01-01","editions":["a","b"],` + source + `,"name":{"en":"both"},"about":[],"prohibited":true},
 		{"from":"2000-01-01","edition":"c",` + source + `,"name":{"en":"c"},"about":[],"prohibited":true}]}]}`,
-		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[{"edition":"a","from":"2000-01-01","until":"2010-01-01",` + source + `},{"edition":"b","from":"2010-01-01","until":"2020-01-01",` + source + `},{"edition":"c","from":"2020-01-01",` + source + `}],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`}))
+		"xx/jurisdiction.json": `{"jurisdiction":"xx","name":"X","languages":["en"],"and":{"en":"and"},"editions":[{"edition":"a","from":"2000-01-01","until":"2010-01-01",` + source + `},{"edition":"b","from":"2010-01-01","until":"2020-01-01",` + source + `},{"edition":"c","from":"2020-01-01",` + source + `}],"assumed":[],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`}))
 	if err != nil {
 		t.Fatal(err)
 	}

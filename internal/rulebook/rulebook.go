@@ -86,6 +86,7 @@ type Market struct {
 	Jurisdiction string      `json:"jurisdiction"`
 	Name         string      `json:"name"`
 	Languages    []string    `json:"languages"`
+	And          Words       `json:"and,omitzero"` // the word before the last of several names
 	Editions     []Edition   `json:"editions"`
 	Assumed      []Assumed   `json:"assumed"`
 	Unlisted     *Unlisted   `json:"unlisted_claims"`
@@ -119,10 +120,12 @@ type Unlisted struct {
 	Source  Source `json:"source"`
 }
 
-// A BasisRule names a basis on which the declaration is given.
+// A BasisRule names a basis on which the declaration is given, on labels of an edition or where a condition holds.
 type BasisRule struct {
-	Per      string `json:"per"`
-	Presence string `json:"presence"` // "mandatory" or "optional"
+	Per      string     `json:"per"`
+	Presence string     `json:"presence"` // "mandatory" or "optional"
+	Edition  string     `json:"edition,omitzero"`
+	If       *Condition `json:"if,omitzero"`
 }
 
 // A Definition says what a law counts as a quantity, by the first way whose data are complete.
@@ -395,6 +398,7 @@ type Disclosure struct {
 	Effect    string     `json:"effect"`    // "statement" or "bars"
 	Statement Words      `json:"statement,omitzero"`
 	Place     string     `json:"place,omitzero"`
+	Presence  string     `json:"presence,omitzero"` // of the statement: "mandatory" (default) or "optional"
 }
 
 // A Limit must hold for the product to be sold.
