@@ -3,6 +3,7 @@ module gramlaw
 go 1.26.8
 
 require (
+	github.com/aws/aws-lambda-go v1.55.1
 	github.com/getkin/kin-openapi v0.153.0
 	github.com/go-json-experiment/json v1.27.2
 	github.com/johannesboyne/gofakes3 v1.2.0
@@ -10,6 +11,7 @@ require (
 	github.com/santhosh-tekuri/jsonschema/v5 v5.3.1
 	github.com/shopspring/decimal v1.6.0
 	gocloud.dev v0.49.0
+	go.yaml.in/yaml/v3 v3.0.6
 	golang.org/x/text v0.44.0
 )
 
