@@ -10,8 +10,8 @@ require (
 	github.com/rogpeppe/go-internal v1.16.0
 	github.com/santhosh-tekuri/jsonschema/v5 v5.3.1
 	github.com/shopspring/decimal v1.6.0
-	gocloud.dev v0.49.0
 	go.yaml.in/yaml/v3 v3.0.6
+	gocloud.dev v0.49.0
 	golang.org/x/text v0.44.0
 )
 
