@@ -2,7 +2,6 @@ package check_test
 
 import (
 	"encoding/json"
-	"fmt"
 	"os"
 	"path/filepath"
 	"slices"
@@ -304,6 +303,7 @@ type claimCase struct {
 	Statements                            []string
 	NotStatements                         []string `json:"not_statements"` // parts that no statement may hold
 	Printable                             *bool
+	tableCase
 }
 
 // Every claim just under, at and just over its thresholds, written from the dossiers; sources stand in the files.
@@ -318,7 +318,8 @@ func judgeClaim(t *testing.T, b *rulebook.Book, j string, c claimCase) {
 			asked[k] = v
 		}
 	}
-	got := c.report(t, b, j, asked).Claims[0]
+	m := c.report(t, b, j, asked)
+	got := m.Claims[0]
 	if got.Verdict != c.Verdict {
 		why, _ := json.MarshalIndent(got, "", " ")
 		t.Errorf("verdict %s, want %s\n%s", got.Verdict, c.Verdict, why)
@@ -336,73 +337,10 @@ func judgeClaim(t *testing.T, b *rulebook.Book, j string, c claimCase) {
 			t.Errorf("a statement holds %q: %v", not, got.Statements)
 		}
 	}
+	c.look(t, m)
 	if c.Printable != nil && got.Printable != *c.Printable {
 		t.Errorf("printable is %v", got.Printable)
 	}
-}
-
-type labelCase struct {
-	caseHead
-	Basis    string
-	Declared map[string]struct{ Text, Percent, Presence string }
-	Absent   []string // quantities that no line may declare
-}
-
-// The dossiers' published sample labels and worked examples, from values to print.
-func TestLabelCases(t *testing.T) {
-	eachCase(t, "labels", func(t *testing.T, b *rulebook.Book, j string, c labelCase) {
-		m := c.report(t, b, j)
-		for q, want := range c.Declared {
-			line, value, err := printedLine(m, q, c.Basis)
-			if err != nil {
-				t.Error(err)
-				continue
-			}
-			if want.Text != "" && value.Text != want.Text {
-				t.Errorf("%s prints %q, want %q (exact %v)", q, value.Text, want.Text, deref(value.Exact))
-			}
-			if got := percentOf(value); want.Percent != "" && got != want.Percent {
-				t.Errorf("%s has per cent %q, want %q", q, got, want.Percent)
-			}
-			if want.Presence != "" && line.Presence != want.Presence {
-				t.Errorf("%s is %s, want %s", q, line.Presence, want.Presence)
-			}
-		}
-		for _, q := range c.Absent {
-			if line, _, err := printedLine(m, q, ""); err == nil {
-				t.Errorf("%s stands in the declaration, %s", q, line.Presence)
-			}
-		}
-	})
-}
-
-// percentOf is the per cent beside a value, "none" where there is none.
-func percentOf(v check.Value) string {
-	if v.PercentReference == nil {
-		return "none"
-	}
-	return v.PercentReference.Text
-}
-
-func deref(s *string) string {
-	if s == nil {
-		return "open"
-	}
-	return *s
-}
-
-func printedLine(m check.Market, q, basis string) (check.Line, check.Value, error) {
-	for _, l := range m.Declaration.Lines {
-		if l.Quantity != q {
-			continue
-		}
-		for _, v := range l.Values {
-			if basis == "" || v.Basis == basis {
-				return l, v, nil
-			}
-		}
-	}
-	return check.Line{}, check.Value{}, fmt.Errorf("the declaration has no line for %s", q)
 }
 
 type findingCase struct {
@@ -416,12 +354,13 @@ type findingCase struct {
 	LeaveOut   []string          `json:"leave_out"` // terms it leaves out
 	Keeps      []string          // terms it must not leave out
 	Says       *string           // part of its statement; "" is none
+	Claims     []string          // names of claims that the label makes
 }
 
 // Limits, servings, packages, names and simplified formats, written from the dossiers; sources stand in the files.
 func TestFindingCases(t *testing.T) {
 	eachCase(t, "findings", func(t *testing.T, b *rulebook.Book, j string, c findingCase) {
-		m := c.report(t, b, j)
+		m := c.report(t, b, j, claimed(c.Claims)...)
 		for code, want := range c.Findings {
 			if got := severityOf(m, code); got != want {
 				t.Errorf("%s is %s, want %s", code, got, want)
@@ -454,41 +393,4 @@ func severityOf(m check.Market, code string) string {
 		}
 	}
 	return "none"
-}
-
-// format is the shorter format of a name, or the first; nil where none applies.
-func format(d check.Table, name string) *check.Simplified {
-	list := d.OtherFormats
-	if d.Simplified != nil {
-		list = append([]check.Simplified{*d.Simplified}, list...)
-	}
-	i := slices.IndexFunc(list, func(f check.Simplified) bool { return name == "" || f.Name == name })
-	if i < 0 {
-		return nil
-	}
-	return &list[i]
-}
-
-func shortFormCase(t *testing.T, d check.Table, c findingCase) {
-	t.Helper()
-	f := format(d, c.Format)
-	if c.Simplified != nil && *c.Simplified != (f != nil) {
-		t.Errorf("simplified format is %+v, want %v", f, *c.Simplified)
-	}
-	if f == nil {
-		f = &check.Simplified{}
-	}
-	for _, want := range c.LeaveOut {
-		if !slices.Contains(f.LeaveOut, want) {
-			t.Errorf("the simplified format does not leave out %s: %+v", want, f)
-		}
-	}
-	for _, kept := range c.Keeps {
-		if slices.Contains(f.LeaveOut, kept) {
-			t.Errorf("the simplified format leaves out %s: %+v", kept, f)
-		}
-	}
-	if c.Says != nil && (*c.Says == "" && f.Says != "" || !strings.Contains(f.Says, *c.Says)) {
-		t.Errorf("the simplified format states %q, want %q", f.Says, *c.Says)
-	}
 }

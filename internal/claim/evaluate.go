@@ -176,7 +176,11 @@ func (x evaluator) askTruth(c *rulebook.Condition) quantity.Truth {
 	case rulebook.OpUndecided:
 		return quantity.Open
 	case rulebook.OpCategory:
-		return x.Category(c.Kinds)
+		t := x.Category(c.Kinds)
+		if c.Stated && t == quantity.Open {
+			return quantity.No
+		}
+		return t
 	default:
 		t, _ := x.NoIngredient(c)
 		return t

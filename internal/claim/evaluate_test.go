@@ -67,8 +67,10 @@ func (w world) Named(id string) (*rulebook.Condition, bool) {
 	return &rulebook.Condition{Op: rulebook.OpFact, Name: "state", Is: "solid"}, id == "x/condition/solid"
 }
 func (w world) NoIngredient(*rulebook.Condition) (quantity.Truth, string) { return quantity.Yes, "" }
-func (w world) Category(names []string) quantity.Truth                    { return quantity.TruthOf(names[0] == "bread") }
-func (w world) ReferenceKind([]string) quantity.Truth                     { return quantity.Open }
+func (w world) Category(names []string) quantity.Truth {
+	return map[string]quantity.Truth{"bread": quantity.Yes, "sugar": quantity.No}[names[0]]
+}
+func (w world) ReferenceKind([]string) quantity.Truth { return quantity.Open }
 
 func parse(t *testing.T, s string) *rulebook.Condition {
 	t.Helper()
@@ -141,6 +143,8 @@ func TestConditions(t *testing.T) {
 		{"weighed by one of two facts, nobody knows which", `{"of":{"fat":"1"},"times":[{"fact":"high score","if":{"fact":"x","is":"y"}},{"fact":"score"}],"per":"100 g","at most":"9 g"}`, world{product: bread}, quantity.Open},
 		{"weighed against a food whose facts nobody knows", `{"of":{"fat":"1"},"times":[{"fact":"score"}],"per":"100 g","increased by":"25 %"}`, world{bread, bread}, quantity.Open},
 		{"the category", `{"category is":["bread"]}`, world{product: bread}, quantity.Yes},
+		{"a category nobody stated", `{"category is":["soup"]}`, world{product: bread}, quantity.Open},
+		{"a category nobody stated, asked for as stated", `{"category is":["soup"],"stated":true}`, world{product: bread}, quantity.No},
 		{"another category", `{"category is":["sugar"]}`, world{product: bread}, quantity.No},
 		{"a list that holds it", `{"fact":"nutrients added as such","has":"iron"}`, world{product: bread}, quantity.Yes},
 		{"a list without it", `{"fact":"nutrients added as such","has":"zinc"}`, world{product: bread}, quantity.No},

@@ -59,7 +59,7 @@ type Condition struct {
 	Name   string // line, rule id or fact
 	Is     string
 	Has    string // OpFact: what a list must hold
-	Stated bool   // OpFact, OpSize: whether the recipe states it at all
+	Stated bool   // OpFact, OpSize: whether the recipe states it at all; OpCategory: no where none is stated
 
 	// OpUndecided: why data cannot decide it
 	Why Words

@@ -39,7 +39,7 @@ var forms = []form{
 	{"size of", OpSize, []string{"as", "stated"}, true},
 	{"reference food is", OpKind, nil, false},
 	{"undecided", OpUndecided, nil, false},
-	{"category is", OpCategory, nil, false},
+	{"category is", OpCategory, []string{"stated"}, false},
 }
 
 var countForm = form{"of", OpCount, []string{string(AtLeast)}, false}

@@ -38,6 +38,7 @@ func TestConditionsAreWrittenAsTheyAreRead(t *testing.T) {
 		`{"fact":"nutrients added as such","has":"vitamin-d"}`,
 		`{"fact":"glycidyl esters","stated":true}`,
 		`{"category is":["sugar"]}`,
+		`{"category is":["sugar"],"stated":true}`,
 		`{"undecided":{"en":"data cannot tell"}}`,
 		`{"reference amount":{"at most":["30 g","2 tbsp"]}}`,
 		`{"claimed about":["fatty acids","cholesterol"]}`,

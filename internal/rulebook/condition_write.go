@@ -69,7 +69,7 @@ func (c *Condition) listed() []member {
 	case c.Op == OpAbout:
 		return []member{{string(OpAbout), c.About}}
 	case c.Op == OpKind, c.Op == OpCategory:
-		return []member{{string(c.Op), c.Kinds}}
+		return append([]member{{string(c.Op), c.Kinds}}, c.statedOrRelated()...)
 	}
 	return []member{{string(OpHolds), c.Name}}
 }
