@@ -50,6 +50,7 @@ func verbs() []verb {
 		{"check", "check recipes against the rules of markets", checkUsage, runCheck, func() *flags { return checkFlags(&checkOptions{}) }},
 		{"coverage", "tell what the rule set covers and what it lacks", coverageUsage, runCoverage, func() *flags { return coverageFlags(&coverageOptions{}) }},
 		{"foods", "search the open food table, or show one food of it", foodsUsage, runFoods, func() *flags { return foodsFlags(&foodsOptions{}) }},
+		{"serve", "answer over HTTP on this machine", serveUsage, runServe, func() *flags { return serveFlags(&serveOptions{}) }},
 	}
 }
 

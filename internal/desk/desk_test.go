@@ -44,7 +44,9 @@ func status() {
 	}
 }
 
-func TestMain(m *testing.M) { testscript.Main(m, map[string]func(){"status": status}) }
+func TestMain(m *testing.M) {
+	testscript.Main(m, map[string]func(){"status": status, "http": httpClient})
+}
 
 // The scripts of testdata run against the invented market there; RULES= in a script takes the embedded rules.
 func TestScripts(t *testing.T) {
@@ -59,6 +61,7 @@ func TestScripts(t *testing.T) {
 	testscript.Run(t, testscript.Params{Dir: "testdata", RequireExplicitExec: true, RequireUniqueNames: true, Setup: func(e *testscript.Env) error {
 		e.Setenv("RULES", dir)
 		e.Setenv("DEMO", demo)
+		e.Setenv("ADDRESS", freeAddress(t))
 		return nil
 	}})
 }

@@ -207,7 +207,9 @@ func trials(method, path string) map[string]trial {
 		"200": {target: here, body: body, headers: ok},
 		"304": {target: here, headers: []string{"If-None-Match: *"}},
 		"400": {target: with("nonsense=1"), body: body, headers: ok},
-		"404": {target: func(s string) string { return strings.NewReplacer("/us", "/zz", "sr:08120", "sr:99999", "recipe.schema", "x", "/busy", "/x").Replace(s) }},
+		"404": {target: func(s string) string {
+			return strings.NewReplacer("/us", "/zz", "sr:08120", "sr:99999", "recipe.schema", "x", "/busy", "/x").Replace(s)
+		}},
 		"405": {target: here, method: other, body: body, headers: ok},
 		"406": {target: here, body: body, headers: append(ok, "Accept: image/png")},
 		"408": {target: here, body: late, headers: ok},
