@@ -125,6 +125,9 @@ func faultyDocument(faults recipe.Faults) *Problem {
 			}
 		}
 	}
+	if len(faults) > recipe.MaxFaults+1 {
+		faults = append(faults[:recipe.MaxFaults:recipe.MaxFaults], recipe.Fault{Code: recipe.MoreFaults, Says: "the document has more faults; the first ones are listed"})
+	}
 	p := problem(k, "")
 	for _, f := range faults {
 		p.Faults = append(p.Faults, Fault{Pointer: &f.Pointer, Code: f.Code, Says: f.Says})
