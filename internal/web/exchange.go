@@ -142,7 +142,6 @@ func (x *exchange) body(most int64) ([]byte, *Problem) {
 	}
 	doc, err := io.ReadAll(http.MaxBytesReader(x.w, x.r.Body, most))
 	x.record.bytesIn = int64(len(doc))
-	http.NewResponseController(x.w).SetReadDeadline(time.Time{}) // it has arrived; a deadline that passes now would cancel the work
 	var over *http.MaxBytesError
 	switch {
 	case errors.As(err, &over):
@@ -152,6 +151,7 @@ func (x *exchange) body(most int64) ([]byte, *Problem) {
 	case err != nil:
 		return nil, problem(badRequest, "The body broke off.").with("Connection", "close")
 	}
+	http.NewResponseController(x.w).SetReadDeadline(time.Time{}) // it has arrived; a deadline that passes now would cancel the work
 	return doc, nil
 }
 
