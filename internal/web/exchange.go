@@ -151,7 +151,6 @@ func (x *exchange) body(most int64) ([]byte, *Problem) {
 	case err != nil:
 		return nil, problem(badRequest, "The body broke off.").with("Connection", "close")
 	}
-	http.NewResponseController(x.w).SetReadDeadline(time.Time{}) // it has arrived; a deadline that passes now would cancel the work
 	return doc, nil
 }
 
