@@ -34,8 +34,7 @@ func observe(t *testing.T) *observed {
 		t.Fatal(err)
 	}
 	out := &observed{}
-	set := web.Rules{Book: book}
-	h, err := web.New(web.Options{Rules: func() web.Rules { return set }, Now: time.Now, Metrics: &out.metrics})
+	h, err := web.New(web.Options{Rules: web.Always(web.Rules{Book: book}), Now: time.Now, Metrics: &out.metrics})
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -3,7 +3,7 @@
 package main
 
 import (
-	"fmt"
+	"context"
 	"log/slog"
 	"os"
 	"time"
@@ -11,14 +11,12 @@ import (
 	"github.com/aws/aws-lambda-go/lambda"
 
 	"gramlaw/internal/gateway"
-	"gramlaw/internal/rulebook"
 	"gramlaw/internal/web"
-	"gramlaw/rules"
 )
 
 func main() {
 	log := slog.New(slog.NewJSONHandler(os.Stdout, nil))
-	a, err := adapter(log)
+	a, err := adapter(context.Background(), log)
 	if err != nil {
 		log.Error("the function cannot start", "cause", err.Error())
 		os.Exit(1)
@@ -26,17 +24,14 @@ func main() {
 	lambda.Start(a)
 }
 
-func adapter(log *slog.Logger) (*gateway.Adapter, error) {
-	if url := os.Getenv("GRAMLAW_RULES"); url != "" {
-		return nil, fmt.Errorf("GRAMLAW_RULES is %q; only the rule set that the program carries can be used", url)
-	}
-	book, err := rulebook.Load(rules.FS)
+// adapter is the service before Lambda's events. Rules are loaded here, while the environment starts.
+func adapter(ctx context.Context, log *slog.Logger) (*gateway.Adapter, error) {
+	rules, err := source(ctx, os.Getenv("GRAMLAW_RULES"), log)
 	if err != nil {
 		return nil, err
 	}
-	set := web.Rules{Book: book, Loaded: time.Now()}
 	service, err := web.New(web.Options{
-		Rules: func() web.Rules { return set }, Now: time.Now, Version: os.Getenv("GRAMLAW_VERSION"), Log: log, Metrics: os.Stdout,
+		Rules: rules, Now: time.Now, Version: os.Getenv("GRAMLAW_VERSION"), Log: log, Metrics: os.Stdout,
 		Limits: web.Limits{Answer: gateway.MaxResponse},
 	})
 	if err != nil {

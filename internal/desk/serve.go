@@ -71,7 +71,7 @@ func (c *call) serve(l net.Listener, o *serveOptions) error {
 		log = slog.New(slog.NewJSONHandler(c.stderr, nil))
 	}
 	rules := web.Rules{Book: c.book, Loaded: c.env.Now()}
-	options := web.Options{Rules: func() web.Rules { return rules }, Now: c.env.Now, Version: web.Build(), Log: log}
+	options := web.Options{Rules: web.Always(rules), Now: c.env.Now, Version: web.Build(), Log: log}
 	if o.metrics {
 		options.Metrics = c.stdout
 	}

@@ -7,6 +7,7 @@ package web
 
 import (
 	"cmp"
+	"context"
 	"errors"
 	"io"
 	"log/slog"
@@ -26,12 +27,19 @@ type Rules struct {
 
 // Options are what the service takes from outside. Rules and Now are needed.
 type Options struct {
-	Rules   func() Rules     // asked once a request, so that a newer set can take over between two; never without a Book
+	// Rules is asked once a request, by its id, so that a newer set can take over between two requests or be tried on a share of them. It
+	// never gives one without a Book. Always gives the same one.
+	Rules   func(ctx context.Context, requestID string) Rules
 	Now     func() time.Time // the clock; the labelling date is its day in UTC where a request names none
 	Version string           // of the program, for /health and the logs
 	Log     *slog.Logger     // nil logs nothing
 	Metrics io.Writer        // one line a request in the embedded metric format; nil writes none
 	Limits  Limits
+}
+
+// Always gives one set to every request.
+func Always(set Rules) func(context.Context, string) Rules {
+	return func(context.Context, string) Rules { return set }
 }
 
 // Limits bound what one request, one client and all of them can take. A zero takes the default.
