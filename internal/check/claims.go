@@ -1,6 +1,7 @@
 package check
 
 import (
+	"cmp"
 	"slices"
 	"strings"
 
@@ -63,7 +64,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 		out.Verdict, out.Why = Undetermined, "the rule set does not cover this market on "+m.law.Date
 		return out, nil
 	}
-	rule, ok := m.find(a)
+	rule, ok := m.find(&a)
 	if !ok {
 		m.unlisted(&out, a)
 		return out, nil
@@ -112,8 +113,8 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	return out, b
 }
 
-// find reads a claim by its shared name, or by words that equal a listed wording.
-func (m *market) find(a recipe.Claim) (rulebook.Active[rulebook.Claim], bool) {
+// find reads a claim by its shared name, or by words that equal a listed wording; a number in the words becomes the stated one.
+func (m *market) find(a *recipe.Claim) (rulebook.Active[rulebook.Claim], bool) {
 	if a.Text == "" {
 		if c, ok := m.law.Claims.Get(a.Claim); ok {
 			return c, true
@@ -126,7 +127,8 @@ func (m *market) find(a recipe.Claim) (rulebook.Active[rulebook.Claim], bool) {
 			if a.Language != "" && lang != a.Language {
 				continue
 			}
-			if slices.ContainsFunc(words, func(w string) bool { return folded(w) == want }) {
+			if i := slices.IndexFunc(words, func(w string) bool { return fits(w, want) }); i >= 0 {
+				a.Stated = cmp.Or(a.Stated, numberIn(words[i], want))
 				return c, true
 			}
 		}
@@ -151,34 +153,6 @@ func (m *market) unlisted(out *Claim, a recipe.Claim) {
 			out.Why += "; did you mean “" + near + "”?"
 		}
 	}
-}
-
-// withStated adds to a claim's condition that the number in the claim be true.
-func (m *market) withStated(b *rulebook.Claim, a recipe.Claim) *rulebook.Condition {
-	if a.Stated == nil || b.Stated == nil {
-		return b.Condition
-	}
-	c := &rulebook.Condition{Op: rulebook.OpCompare, Of: b.Stated.Of, Threshold: *a.Stated}
-	per := b.Stated.Per
-	if per == "" {
-		per = m.law.Market.DefaultBases[0].Per
-	}
-	c.Per = []string{per}
-	switch b.Stated.As {
-	case "reduction":
-		c.Relation = rulebook.ReducedBy
-		if a.Stated.Unit != quantity.PerCent {
-			c.Relation = rulebook.LessBy
-		}
-	case "increase":
-		c.Relation = rulebook.IncreasedBy
-		if a.Stated.Unit != quantity.PerCent {
-			c.Relation = rulebook.MoreBy
-		}
-	default:
-		c.Relation = rulebook.AtLeast
-	}
-	return &rulebook.Condition{Op: rulebook.OpAll, Parts: []*rulebook.Condition{b.Condition, c.Prepare()}}
 }
 
 // alsoPermitted lists claims nobody asked for that the product meets on its own.

@@ -267,3 +267,31 @@ func TestDisclosuresThatMayStand(t *testing.T) {
 		t.Errorf("%s with %+v", got.Verdict, got.Statements)
 	}
 }
+
+// A number in a claim must be true, stated beside it or read from its words.
+func TestNumbersInClaims(t *testing.T) {
+	claim := func(as, wording string) string {
+		return `{"id":"xx/claim/c","versions":[{SOURCE,"name":{"en":"c"},"about":["fat"],"condition":{"all":[]},"stated":{"of":{"fat":"1"},"as":"` + as + `"},"wordings":{"en":["` + wording + `"]}}]}`
+	}
+	for _, c := range []struct{ name, as, fat, asked, verdict string }{
+		{"97 % free of 3 g", "free share", "3 g", `"claim":"c","stated":"97 %"`, "permitted"},
+		{"97 % free of 3.01 g", "free share", "3.01 g", `"claim":"c","stated":"97 %"`, "refused"},
+		{"free by grams", "free share", "3 g", `"claim":"c","stated":"97 g"`, "undetermined"},
+		{"at most 3 g", "at most", "3 g", `"claim":"c","stated":"3 g"`, "permitted"},
+		{"at most 3 g of 3.01 g", "at most", "3.01 g", `"claim":"c","stated":"3 g"`, "refused"},
+		{"declared 3.1 g", "declared amount", "3.12 g", `"claim":"c","stated":"3100 mg"`, "permitted"},
+		{"declared 3.1 g, said 3 g", "declared amount", "3.12 g", `"claim":"c","stated":"3 g"`, "refused"},
+		{"an amount by volume", "amount", "3 g", `"claim":"c","stated":"3 mL"`, "undetermined"},
+		{"the number in the words", "free share", "3 g", `"text":"97% Fat-Free"`, "permitted"},
+		{"the number in the words, too high", "free share", "3 g", `"text":"98 percent fat-free"`, "refused"},
+		{"words without their number", "free share", "3 g", `"text":"all fat-free"`, "unread"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			b := smallMarket(t, map[string]string{"claims.json": claim(c.as, "{number} fat-free")})
+			got := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"`+c.fat+`","PROCNT":"1 g","NACL":"0 g"}`, `,"claims":[{`+c.asked+`}]`)).Claims[0]
+			if got.Verdict != c.verdict {
+				t.Errorf("%s, want %s: %+v", got.Verdict, c.verdict, got.Condition)
+			}
+		})
+	}
+}

@@ -107,12 +107,12 @@ func (v *view) statements(list []rulebook.Statement, rule string, c *Claim) []St
 }
 
 func (v *view) statement(words rulebook.Words, place, rule string, c *Claim) Statement {
-	text, complete := v.fill(words.In(v.language()), c)
+	text, complete := v.fill(words.In(v.language()), v.language(), c)
 	st := Statement{Text: text, Place: place, Presence: "mandatory", Rule: rule, open: !complete}
 	if len(words) > 1 {
 		st.Texts = map[string]string{}
 		for _, lang := range sortedKeys(words) {
-			st.Texts[lang], _ = v.fill(words[lang], c)
+			st.Texts[lang], _ = v.fill(words[lang], lang, c)
 		}
 	}
 	return st
@@ -212,8 +212,8 @@ func (m *market) listed(names []rulebook.Words, lang string) string {
 }
 
 // fill replaces placeholders, and tells whether it could replace all: {fat} by the declared amount, {fat of reference food} by the reference food's, {difference} and
-// {fat difference} by the change against it in per cent, {reference food} by its name.
-func (v *view) fill(s string, c *Claim) (text string, complete bool) {
+// {fat difference} by the change against it in per cent, {reference food} by its name; numbers as the language writes them.
+func (v *view) fill(s, lang string, c *Claim) (text string, complete bool) {
 	var out strings.Builder
 	complete = true
 	for {
@@ -223,7 +223,7 @@ func (v *view) fill(s string, c *Claim) (text string, complete bool) {
 			out.WriteString(s)
 			return out.String(), complete
 		}
-		part, ok := v.placeholder(s[i+1:j], c)
+		part, ok := v.placeholder(s[i+1:j], lang, c)
 		if !ok {
 			part, complete = "("+s[i+1:j]+")", false
 		}
@@ -233,7 +233,7 @@ func (v *view) fill(s string, c *Claim) (text string, complete bool) {
 	}
 }
 
-func (v *view) placeholder(name string, c *Claim) (text string, ok bool) {
+func (v *view) placeholder(name, lang string, c *Claim) (text string, ok bool) {
 	switch {
 	case name == "reference food" && v.ref != nil:
 		text, ok = v.ref.batch.Leaves[0].Name, true
@@ -241,23 +241,23 @@ func (v *view) placeholder(name string, c *Claim) (text string, ok bool) {
 		text = differenceIn(c.Condition)
 		ok = text != ""
 	case strings.HasSuffix(name, " of reference food") && v.ref != nil:
-		text, ok = v.printed(v.ref, strings.TrimSuffix(name, " of reference food"))
+		text, ok = v.printed(v.ref, strings.TrimSuffix(name, " of reference food"), lang)
 	case name == "reference amount":
 		var r recipe.ReferenceAmount
 		r, ok = v.referenceAmount()
-		text = r.Amount.String()
+		text = v.inLanguage(r.Amount.String(), lang)
 	case strings.HasPrefix(name, "amount of "):
-		text, ok = v.amountOfQuantity(strings.TrimPrefix(name, "amount of "))
+		text, ok = v.amountOfQuantity(strings.TrimPrefix(name, "amount of "), lang)
 	case strings.HasSuffix(name, " difference") && v.ref != nil:
 		text, ok = v.difference(strings.TrimSuffix(name, " difference"))
 	default:
-		text, ok = v.printed(v.subject, name)
+		text, ok = v.printed(v.subject, name, lang)
 	}
 	return text, ok
 }
 
 // printed is what a food's quantity prints as on the first column, where that is determined.
-func (v *view) printed(p *product, q string) (string, bool) {
+func (v *view) printed(p *product, q, lang string) (string, bool) {
 	l, ok := v.lines[q]
 	if !ok {
 		return "", false
@@ -266,18 +266,30 @@ func (v *view) printed(p *product, q string) (string, bool) {
 	if !o.determined() {
 		return "", false
 	}
-	return l.text(o[0].Printed, v.unit(q), v.language()), true
+	if _, known := l.rule.Body.Number[lang]; !known {
+		lang = v.language()
+	}
+	return l.text(o[0].Printed, v.unit(q), lang), true
+}
+
+// inLanguage writes a number's decimal sign as the label of a language does.
+func (v *view) inLanguage(s, lang string) string {
+	d, ok := v.law.Declaration()
+	if !ok || d.Body.Number[lang].Decimal == "" {
+		return s
+	}
+	return strings.Replace(s, ".", d.Body.Number[lang].Decimal, 1)
 }
 
 // amountOfQuantity is a quantity without a line of its own, to three figures on the first column.
-func (v *view) amountOfQuantity(q string) (string, bool) {
+func (v *view) amountOfQuantity(q, lang string) (string, bool) {
 	l, ok := v.subject.Quantity(q)
 	if !ok || !l.Determined() || len(v.columns) == 0 || !v.columns[0].known {
 		return "", false
 	}
 	u := v.unit(q)
 	amount := v.columns[0].on(l).Known.In(u)
-	return amount.RoundFigures(3, quantity.TiesUp).String() + " " + u.String(), true
+	return v.inLanguage(amount.RoundFigures(3, quantity.TiesUp).String()+" "+u.String(), lang), true
 }
 
 // difference is the change of a quantity against the reference food per mass, in per cent cut to a whole number. Of a range it is

@@ -171,8 +171,11 @@ func (c *checker) stated(id, field string, s *Stated) {
 	for _, q := range sorted(s.Of) {
 		c.quantity("claims", id, field+"/of", q, quantity.NoDimension)
 	}
-	if s.As != "reduction" && s.As != "increase" && s.As != "amount" {
-		c.bad("claims", id, field+"/as", "%q is none of reduction, increase, amount", s.As)
+	if !slices.Contains(StatedAs, s.As) {
+		c.bad("claims", id, field+"/as", "%q is none of %s", s.As, strings.Join(StatedAs, ", "))
+	}
+	if s.As == "declared amount" && len(s.Of) != 1 {
+		c.bad("claims", id, field+"/of", "only one quantity has a declared amount")
 	}
 }
 

@@ -381,10 +381,14 @@ type Claim struct {
 // Stated checks the number in a claim against the exact value: a claim of "30 %" less must be true.
 type Stated struct {
 	Of map[string]decimal.Decimal `json:"of"`
-	As string                     `json:"as"` // "reduction" or "amount"
+	As string                     `json:"as"` // one of StatedAs
 	// Per is the basis of a stated amount.
 	Per string `json:"per,omitzero"`
 }
+
+// StatedAs is what a stated number can be: a reduction or increase against the reference food (%, or an amount), the least or the most that
+// the food holds, the amount that the line prints, or what of 100 g is free of the quantity ("97 % fat free").
+var StatedAs = []string{"reduction", "increase", "amount", "at most", "declared amount", "free share"}
 
 // Wordings are the listed words of a claim by language.
 type Wordings map[string][]string
