@@ -157,25 +157,47 @@ func (m *market) unlisted(out *Claim, a recipe.Claim) {
 
 // alsoPermitted lists claims nobody asked for that the product meets on its own.
 func (m *market) alsoPermitted(asked []Claim) []Candidate {
-	out := m.candidates(m.law.Claims.All, asked, false)
-	return append(out, m.candidates(m.law.HealthClaims.All, asked, true)...)
-}
-
-func (m *market) candidates(list []rulebook.Active[rulebook.Claim], asked []Claim, health bool) []Candidate {
 	out := []Candidate{}
 	v := m.as(m.product)
-	for _, c := range list {
-		if c.Body.Condition == nil || c.Body.Against || c.Body.NotOffered || slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == c.ID }) {
+	known := make([]decided, len(m.law.Needs))
+	for i := range m.law.Offers {
+		o := &m.law.Offers[i]
+		if !v.meetsAll(o.Needs, known) || o.Body.BarredIf != nil && v.truth(o.Body.BarredIf) != quantity.No {
 			continue
 		}
-		if c.Body.Prohibited || !m.product.surelyMeets(c, v) || c.Body.BarredIf != nil && v.truth(c.Body.BarredIf) != quantity.No {
+		if slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == o.ID }) {
 			continue
 		}
-		if verdict := v.verdictBeside(c.Body); verdict == Permitted || verdict == WithStatement {
-			out = append(out, Candidate{Claim: c.ID, Name: c.Body.Name.In("en"), Verdict: verdict, Health: health})
+		if verdict := v.verdictBeside(o.Body); verdict == Permitted || verdict == WithStatement {
+			out = append(out, Candidate{Claim: o.ID, Name: o.Body.Name.In("en"), Verdict: verdict, Health: o.Health})
 		}
 	}
 	return out
+}
+
+// decided is what is known of a need.
+type decided uint8
+
+const (
+	unasked decided = iota
+	holds
+	fails // does not hold, or is open
+)
+
+// meetsAll tells whether all needs hold, of which each is decided once.
+func (v *view) meetsAll(needs []int, known []decided) bool {
+	for _, n := range needs {
+		if known[n] == unasked {
+			known[n] = fails
+			if claim.Surely(v.law.Needs[n], v) {
+				known[n] = holds
+			}
+		}
+		if known[n] == fails {
+			return false
+		}
+	}
+	return true
 }
 
 // printability takes back what a claim cannot print: a line it makes mandatory lacks data.

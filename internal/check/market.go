@@ -29,6 +29,7 @@ type market struct {
 	assumed map[string]Assumed
 	about   map[string]bool // subjects of the claims that stand
 	truths  map[*rulebook.Condition]quantity.Truth
+	eaters  string // population, once asked
 	lines   map[string]*lineState
 	order   []*lineState
 	columns []column

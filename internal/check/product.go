@@ -3,7 +3,6 @@ package check
 import (
 	"slices"
 
-	"gramlaw/internal/claim"
 	"gramlaw/internal/quantity"
 	"gramlaw/internal/rollup"
 	"gramlaw/internal/rulebook"
@@ -17,6 +16,7 @@ type product struct {
 	totals map[string]quantity.Linear
 	meets  map[string]quantity.Truth
 	from   map[string]quantity.Linear
+	bases  map[string]basis
 }
 
 // A part is one leaf's contribution to a quantity.
@@ -26,8 +26,8 @@ type part struct {
 }
 
 func newProduct(m *market, b *rollup.Batch) *product {
-	return &product{m: m, batch: b, leaves: map[string][]part{}, totals: map[string]quantity.Linear{},
-		meets: map[string]quantity.Truth{}, from: map[string]quantity.Linear{}}
+	return &product{m: m, batch: b, leaves: make(map[string][]part, 64), totals: make(map[string]quantity.Linear, 96),
+		meets: map[string]quantity.Truth{}, from: map[string]quantity.Linear{}, bases: map[string]basis{}}
 }
 
 // Mass is the batch's mass in g.
@@ -281,6 +281,27 @@ func (p *product) ruminant(l *rollup.Leaf) (quantity.Ratio, bool) {
 
 // Basis is the mass in g of a basis.
 func (p *product) Basis(per rulebook.Per) (quantity.Ratio, bool) {
+	if per.Name == "" {
+		if g, ok := per.Grams(); ok {
+			return g, true
+		}
+		return p.m.grams(per.Amount, nil)
+	}
+	b, ok := p.bases[per.Name]
+	if !ok {
+		b.grams, b.known = p.named(per)
+		p.bases[per.Name] = b
+	}
+	return b.grams, b.known
+}
+
+// basis is the mass of a named basis, where it is known.
+type basis struct {
+	grams quantity.Ratio
+	known bool
+}
+
+func (p *product) named(per rulebook.Per) (quantity.Ratio, bool) {
 	switch per.Name {
 	case "serving":
 		s, grams, ok := p.m.serving()
@@ -308,7 +329,7 @@ func (p *product) Basis(per rulebook.Per) (quantity.Ratio, bool) {
 	case "daily intake":
 		return p.dailyIntake()
 	}
-	return p.m.grams(per.Amount, nil)
+	return quantity.Ratio{}, false
 }
 
 // dailyIntake is what the law takes for a day's intake: as the recipe states it, as the category tells, else the reference amount.
@@ -339,14 +360,6 @@ func (p *product) Meets(id string) quantity.Truth {
 	}
 	p.meets[id] = t
 	return t
-}
-
-// surelyMeets tells whether Meets would answer yes. Of most claims nobody asks more.
-func (p *product) surelyMeets(c rulebook.Active[rulebook.Claim], v *view) bool {
-	if t, ok := p.meets[c.ID]; ok {
-		return t == quantity.Yes
-	}
-	return claim.Surely(c.Body.Condition, v)
 }
 
 // reference builds the subject of a reference food; false when there is none of that name.

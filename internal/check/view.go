@@ -83,13 +83,18 @@ func (v *view) EnergyFactor(q, energy string) (quantity.Ratio, bool) {
 const everybody = "general population"
 
 // population is for whom the food is made, as reference values name it.
-func (v *view) population() string {
+func (m *market) population() string {
+	if m.eaters != "" {
+		return m.eaters
+	}
+	m.eaters = everybody
 	for _, p := range []string{"children 1 to 3", "infants", "pregnant or lactating"} {
-		if v.stated("intended for", p) == quantity.Yes {
-			return p
+		if m.stated("intended for", p) == quantity.Yes {
+			m.eaters = p
+			break
 		}
 	}
-	return everybody
+	return m.eaters
 }
 
 // ReferenceValue is the reference value of a quantity in base units.
@@ -98,8 +103,7 @@ func (v *view) ReferenceValue(q string) (quantity.Ratio, bool) {
 	if !ok {
 		return quantity.Ratio{}, false
 	}
-	a, ok := r.Body.Amounts[v.population()]
-	return a.Ratio(), ok
+	return r.Body.Amount(v.population())
 }
 
 // stated compares a fact the recipe states.

@@ -125,7 +125,7 @@ func (s side) per(p rulebook.Per, food Subject) side {
 	if p == (rulebook.Per{}) {
 		return s
 	}
-	amount := p.Amount.Ratio()
+	amount := p.Base()
 	of := p.Quantity
 	switch p.Amount.Unit.Dimension() {
 	case quantity.EnergyKcal:

@@ -238,7 +238,7 @@ func (x evaluator) size(c *rulebook.Condition) quantity.Truth {
 	if c.Name == "surface" {
 		return sign(c.Relation, quantity.Exactly(size.Sub(c.Limit())))
 	}
-	per := rulebook.Per{Amount: c.Threshold}
+	per := rulebook.PerAmount(c.Threshold)
 	share := quantity.FromInt(1)
 	if of, ok := strings.CutPrefix(c.As, "share of "); ok {
 		per, share = rulebook.Per{Name: of}, quantity.FromDecimal(c.Threshold.Value.Shift(-2))

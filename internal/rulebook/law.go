@@ -56,6 +56,9 @@ type Law struct {
 	Naming           List[Naming]
 	Conditions       List[Named]
 
+	Offers []Offer      // claims that need no asking
+	Needs  []*Condition // what they need
+
 	roundingOf  map[string]int // quantity -> index in Roundings
 	referenceOf map[string]int
 	spoken      map[string]bool // components of definitions
@@ -148,6 +151,7 @@ func (l *Law) index() {
 	for i, r := range l.References.All {
 		l.referenceOf[r.Body.Quantity] = i
 	}
+	l.offers()
 	l.spoken = map[string]bool{}
 	for _, d := range l.Definitions.All {
 		for i := range d.Body.Ways {

@@ -15,6 +15,16 @@ type Per struct {
 	Name     string          // "serving", "reference amount", "package", "unit", "daily intake"; else ""
 	Amount   quantity.Amount // otherwise: 100 g, 100 mL, 100 kcal, 1 MJ as 1000 kJ
 	Quantity string          // "fat" in "100 g fat"; "" is the food
+
+	base quantity.Ratio // Amount in base units
+}
+
+// Base is the amount in base units.
+func (p *Per) Base() quantity.Ratio { return p.base }
+
+// Grams is the mass of an amount of the food; false for a volume, for energy and for what has a name.
+func (p *Per) Grams() (quantity.Ratio, bool) {
+	return p.base, p.Quantity == "" && p.Name == "" && p.Amount.Unit.Dimension() == quantity.Mass
 }
 
 // ParsePer reads a basis: "serving", "reference amount", "package", "unit", "daily intake", "100 g", "50 g", "100 mL", "100 kcal", "1 MJ",
@@ -24,7 +34,7 @@ func ParsePer(s string) (Per, error) {
 	case "serving", "reference amount", "package", "unit", "daily intake":
 		return Per{Name: s}, nil
 	case "1 MJ":
-		return Per{Amount: quantity.Amount{Value: decimal.New(1000, 0), Unit: quantity.Kilojoule}}, nil
+		return PerAmount(quantity.Amount{Value: decimal.New(1000, 0), Unit: quantity.Kilojoule}), nil
 	}
 	words := strings.SplitN(s, " ", 3)
 	if len(words) < 2 {
@@ -34,12 +44,15 @@ func ParsePer(s string) (Per, error) {
 	if err != nil || !a.Value.IsPositive() || a.Unit.Dimension() == quantity.Percent {
 		return Per{}, fmt.Errorf("%q is no basis", s)
 	}
-	p := Per{Amount: a}
+	p := PerAmount(a)
 	if len(words) == 3 {
 		p.Quantity = strings.ReplaceAll(words[2], " ", "-")
 	}
 	return p, nil
 }
+
+// PerAmount is an amount as a basis.
+func PerAmount(a quantity.Amount) Per { return Per{Amount: a, base: a.Ratio()} }
 
 // Shares are the denominators a comparison can name besides bases.
 var Shares = []string{"share of energy", "share of energy in kJ", "share of fatty acids", "share of fat", "share of reference value"}

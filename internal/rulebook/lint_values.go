@@ -135,9 +135,9 @@ func (c *checker) references() {
 		if len(r.Amounts) == 0 {
 			c.bad("reference_values", id, field+"/amounts", "is empty")
 		}
-		r.texts = make(map[string]string, len(r.Amounts))
+		r.texts, r.ratios = make(map[string]string, len(r.Amounts)), make(map[string]quantity.Ratio, len(r.Amounts))
 		for who, a := range r.Amounts {
-			r.texts[who] = a.String()
+			r.texts[who], r.ratios[who] = a.String(), a.Ratio()
 			if a.Unit.Dimension() != c.dims[r.Quantity] {
 				c.bad("reference_values", id, field+"/amounts/"+who, "%s does not fit the quantity %s", a, r.Quantity)
 			}

@@ -227,11 +227,18 @@ type Reference struct {
 	Quantity string                     `json:"quantity"`
 	Amounts  map[string]quantity.Amount `json:"amounts"` // by the values of the fact "intended for"
 
-	texts map[string]string
+	texts  map[string]string
+	ratios map[string]quantity.Ratio
 }
 
 // Text is a population's amount as text.
 func (r *Reference) Text(population string) string { return r.texts[population] }
+
+// Amount is a population's amount in base units.
+func (r *Reference) Amount(population string) (quantity.Ratio, bool) {
+	a, ok := r.ratios[population]
+	return a, ok
+}
 
 // A Rounding turns exact values of some quantities into declared ones.
 type Rounding struct {
