@@ -60,8 +60,7 @@ func (v *view) surely(c *rulebook.Condition) bool { return c != nil && v.truth(c
 
 func (o *Value) setExact(r quantity.Ratio) {
 	x := r.Exact()
-	s := x.Decimal.String()
-	o.Exact, o.Truncated = &s, x.Truncated
+	o.Exact, o.Truncated = &x.Text, x.Truncated
 	if x.Truncated {
 		o.Ratio = []string{x.Num, x.Den}
 	}

@@ -140,6 +140,21 @@ func cmpBounds(r, s Ratio) (int, bool) {
 	return c * r.Sign(), c != 0
 }
 
+// magnitude is the power of ten of the leading digit of what is between; false where the bounds have different ones.
+func (b bounds) magnitude() (int32, bool) {
+	k := (b.low.e + 63) * 30103 / 100_000 // log10(2), one off at most
+	for _, k := range []int{k - 1, k, k + 1} {
+		if k < -mostPower || k >= mostPower {
+			continue
+		}
+		at, above := powerBounds[mostPower+k], powerBounds[mostPower+k+1]
+		if !b.low.less(at.high) && b.high.less(above.low) {
+			return int32(k), true
+		}
+	}
+	return 0, false
+}
+
 // nearest is the whole number nearest to a bound below 2^62, halves up; half tells that the bound is just half-way.
 func (b bound) nearest() (k uint64, half bool) {
 	switch shift := -b.e; {

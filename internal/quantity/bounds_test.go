@@ -100,3 +100,20 @@ func roundedRational(x *big.Rat, step decimal.Decimal, ties Ties) decimal.Decima
 	}
 	return decimal.NewFromBigInt(whole, 0).Mul(step)
 }
+
+// The leading digit of wide ratios is that of the digits themselves.
+func TestWideMagnitudes(t *testing.T) {
+	rnd := rand.New(rand.NewPCG(5, 6))
+	for range 20_000 {
+		d := bigOf(rnd, 65+rnd.IntN(500))
+		near := Over(new(big.Int).Mul(d, Pow10(int32(rnd.IntN(12)))), int32(rnd.IntN(20)-10), d) // a power of ten
+		for _, r := range []Ratio{near, near.Sub(Over(one, -40, d)), near.Add(Over(one, -40, d)), Over(bigOf(rnd, 1+rnd.IntN(600)), int32(rnd.IntN(20)-10), d)} {
+			e := r.magnitude()
+			x := rational(r)
+			power := func(e int32) *big.Rat { return rational(Scaled(1, e)) }
+			if x.Cmp(power(e)) < 0 || x.Cmp(power(e+1)) >= 0 {
+				t.Fatalf("%v has its leading digit at 10^%d", r, e)
+			}
+		}
+	}
+}

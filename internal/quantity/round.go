@@ -95,6 +95,11 @@ func (r Ratio) RoundFigures(figures int, ties Ties) decimal.Decimal {
 
 // magnitude is the power of ten of the leading digit.
 func (r Ratio) magnitude() int32 {
+	if b, ok := r.bounds(); ok {
+		if e, ok := b.magnitude(); ok {
+			return e
+		}
+	}
 	n, d := r.fraction()
 	n = new(big.Int).Abs(n)
 	// log10(2) is a little above 30102/100000, so the first guess is at most one off either way.
@@ -122,52 +127,71 @@ const ShownDigits = 20
 
 // An Exact is a ratio as a decimal: complete, or its first 20 significant digits with the ratio beside it.
 type Exact struct {
-	Decimal   decimal.Decimal
+	Text      string
 	Truncated bool
-	Num, Den  string // set when truncated
+	Num, Den  string // in lowest terms, set when truncated
 }
 
 // Exact writes the ratio out.
 func (r Ratio) Exact() Exact {
-	d, complete := r.Shown()
-	x := Exact{Decimal: d, Truncated: !complete}
+	text, complete := r.text()
+	x := Exact{Text: text, Truncated: !complete}
 	if !complete {
-		n, d := r.fraction()
-		g := new(big.Int).GCD(nil, nil, new(big.Int).Abs(n), d)
-		x.Num, x.Den = new(big.Int).Quo(n, g).String(), new(big.Int).Quo(d, g).String()
+		x.Num, x.Den = r.terms()
 	}
 	return x
 }
 
-// Text is Shown as text, without big integers where words suffice.
-func (r Ratio) Text() string {
-	if s, ok := r.text64(); ok {
-		return s
+// terms are numerator and denominator in lowest terms.
+func (r Ratio) terms() (num, den string) {
+	if n, d, ok := r.fraction64(); ok {
+		a, b := n, d
+		for b != 0 {
+			a, b = b, a%b
+		}
+		return strconv.FormatUint(n/a, 10), strconv.FormatUint(d/a, 10)
 	}
-	d, _ := r.Shown()
-	return d.String()
+	n, d := r.fraction()
+	g := new(big.Int).GCD(nil, nil, new(big.Int).Abs(n), d)
+	if g.Cmp(one) != 0 {
+		n, d = new(big.Int).Quo(n, g), new(big.Int).Quo(d, g)
+	}
+	return n.String(), d.String()
 }
 
-// text64 divides digit by digit in words.
-func (r Ratio) text64() (string, bool) {
-	if r.n != nil || r.d != nil && !r.d.IsInt64() || r.s < 0 {
-		return "", false
+// Text is Shown as text, without big integers where words suffice.
+func (r Ratio) Text() string {
+	s, _ := r.text()
+	return s
+}
+
+func (r Ratio) text() (s string, complete bool) {
+	if n, d, ok := r.fraction64(); ok {
+		return text64(n, d)
 	}
-	num, den, ok := uint64(r.s), int64(1), true
+	d, complete := r.Shown()
+	return d.String(), complete
+}
+
+// fraction64 is a ratio that is not negative as two words, with room for a digit more; false where it does not fit.
+func (r Ratio) fraction64() (num, den uint64, ok bool) {
+	if r.n != nil || r.d != nil && !r.d.IsInt64() || r.s < 0 {
+		return 0, 0, false
+	}
+	n, d, ok := r.s, int64(1), true
 	if r.d != nil {
-		den = r.d.Int64()
+		d = r.d.Int64()
 	}
 	if r.e >= 0 {
-		var n int64
-		n, ok = shift64(r.s, r.e)
-		num = uint64(n)
+		n, ok = shift64(n, r.e)
 	} else {
-		den, ok = shift64(den, -r.e)
+		d, ok = shift64(d, -r.e)
 	}
-	if !ok || den > math.MaxInt64/10 {
-		return "", false
-	}
-	d := uint64(den)
+	return uint64(n), uint64(d), ok && d <= math.MaxInt64/10
+}
+
+// text64 divides digit by digit.
+func text64(num, d uint64) (text string, complete bool) {
 	out := strconv.AppendUint(make([]byte, 0, 44), num/d, 10)
 	rest := num % d
 	if rest == 0 {
@@ -193,7 +217,7 @@ func (r Ratio) text64() (string, bool) {
 	if out[len(out)-1] == '.' {
 		out = out[:len(out)-1]
 	}
-	return string(out), true
+	return string(out), rest == 0
 }
 
 // Shown is the ratio as a decimal, complete or cut after 20 significant digits.

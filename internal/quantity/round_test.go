@@ -60,14 +60,14 @@ func TestRoundFigures(t *testing.T) {
 
 func TestExactShowsTwentyDigits(t *testing.T) {
 	x := FromInt(2).Quo(FromInt(3)).Exact()
-	if x.Decimal.String() != "0.66666666666666666666" || !x.Truncated || x.Num != "2" || x.Den != "3" {
+	if x.Text != "0.66666666666666666666" || !x.Truncated || x.Num != "2" || x.Den != "3" {
 		t.Errorf("two thirds show as %+v", x)
 	}
 	whole := FromDecimal(dec(t, "0.033")).Exact()
-	if whole.Decimal.String() != "0.033" || whole.Truncated {
+	if whole.Text != "0.033" || whole.Truncated {
 		t.Errorf("0.033 shows as %+v", whole)
 	}
-	if s := FromInt(1).Quo(FromInt(8)).Exact(); s.Decimal.String() != "0.125" || s.Truncated {
+	if s := FromInt(1).Quo(FromInt(8)).Exact(); s.Text != "0.125" || s.Truncated {
 		t.Errorf("an eighth shows as %+v", s)
 	}
 }
