@@ -28,7 +28,7 @@ type Predicate struct {
 	// Carbons is "12", "20+" or "4-10".
 	Carbons string `json:"carbons,omitempty"`
 	// Every is true for a total of all fatty acids, and then stands alone.
-	Every bool `json:"every,omitempty"`
+	Every bool `json:"every,omitzero"`
 }
 
 var errEmptyPredicate = errors.New("predicate says nothing; write {\"every\": true} for the total of all fatty acids")
