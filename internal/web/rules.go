@@ -73,6 +73,11 @@ func getMarket(x *exchange) *Problem {
 	if p := faultyParameters(badOn, badTransition); p != nil {
 		return p
 	}
+	done, p := x.gate.work(x.r.Context()) // half a megabyte is written: as much work as a check
+	if p != nil {
+		return p
+	}
+	defer done()
 	law := x.law(on, t)
 	page := marketRules{
 		Rules: x.ruleSet(), Jurisdiction: m.Jurisdiction, Name: m.Name, Languages: m.Languages, On: on, Transition: string(t), Edition: law.Edition,
@@ -103,6 +108,11 @@ func getChanges(x *exchange) *Problem {
 	if p := faultyParameters(badFrom, badTo, badTransition); p != nil {
 		return p
 	}
+	done, p := x.gate.work(x.r.Context())
+	if p != nil {
+		return p
+	}
+	defer done()
 	was, is := x.law(from, t), x.law(to, t)
 	return x.replyJSON(marketChanges{
 		Rules: x.ruleSet(), Jurisdiction: m.Jurisdiction, From: from, To: to, Transition: string(t), EditionWas: was.Edition, EditionIs: is.Edition,
