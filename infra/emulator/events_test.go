@@ -105,6 +105,10 @@ func TestEvents(t *testing.T) {
 					t.Errorf("problem %+v, headers %v", d, r.Headers)
 				}
 			}
+			var sent struct{ RequestContext struct{ RequestID string } }
+			if err := json.Unmarshal(event(t, c.event), &sent); err != nil || r.Headers["X-Request-Id"] != sent.RequestContext.RequestID {
+				t.Errorf("the request %v is answered as %v, %v", sent, r.Headers["X-Request-Id"], err)
+			}
 			if gzipped := strings.Contains(c.event, "gzip"); r.Base64 != gzipped {
 				t.Errorf("base64 is %v, %v", r.Base64, r.Headers)
 			}

@@ -69,11 +69,11 @@ func secure(h http.Header, id string) {
 	h.Set("Cache-Control", "no-store")
 }
 
-// requestID takes the client's id where it is short and plain, else makes one.
+// requestID takes the client's id where it is short and plain, else makes one. The signs of base64 are plain: gateways make such ids.
 func requestID(r *http.Request) string {
 	const most = 64
 	plain := func(c rune) bool {
-		return c >= 'a' && c <= 'z' || c >= 'A' && c <= 'Z' || c >= '0' && c <= '9' || c == '-' || c == '_' || c == '.'
+		return c >= 'a' && c <= 'z' || c >= 'A' && c <= 'Z' || c >= '0' && c <= '9' || strings.ContainsRune("-_.=+/", c)
 	}
 	id := r.Header.Get("X-Request-Id")
 	if id != "" && len(id) <= most && !strings.ContainsFunc(id, func(c rune) bool { return !plain(c) }) {

@@ -19,6 +19,7 @@ func TestRequestIDs(t *testing.T) {
 		taken      bool
 	}{
 		{"plain", "Job-17_a.b", true},
+		{"of a gateway", "JKJaX+Pv/cESHA=", true},
 		{"none", "", false},
 		{"64 long", strings.Repeat("a", 64), true},
 		{"65 long", strings.Repeat("a", 65), false},
