@@ -129,7 +129,7 @@ func (c *checker) perMarket() map[string][]string {
 	r := c.recipe
 	return map[string][]string{
 		"serving": sortedKeys(r.Serving), "category": sortedKeys(r.Category), "reference_amount": sortedKeys(r.ReferenceAmount),
-		"state": sortedKeys(r.State), "density": sortedKeys(r.Density),
+		"state": sortedKeys(r.State), "density": sortedKeys(r.Density), "declares": sortedKeys(r.Declares),
 	}
 }
 

@@ -74,7 +74,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 	out.Source, out.Force, out.Evidence = sourceOf(rule.Head)
 	out.Evidence, out.Weakest = v.weakest(rule)
 	if b.Prohibited {
-		out.Verdict, out.Why = Refused, "the law names this claim in order to forbid it"
+		out.Verdict, out.Why = Refused, cmp.Or(b.ProhibitedSays.In("en"), "the law names this claim in order to forbid it")
 		return out, nil
 	}
 	if a.Against != "" {

@@ -295,3 +295,28 @@ func TestNumbersInClaims(t *testing.T) {
 		})
 	}
 }
+
+func TestLinesTheMakerWants(t *testing.T) {
+	salt := `{"quantity":"salt","component":"NACL","terms":{"en":["salt"]},"unit":"g","percent":"none","presence":"optional"}`
+	protein := `{"quantity":"protein","component":"PROCNT","terms":{"en":["protein"]},"unit":"g","percent":"none","presence":"optional"}`
+	fat := `{"quantity":"fat","component":"FAT","terms":{"en":["fat"]},"unit":"g","percent":"none","presence":"optional","mandatory if":{"declared":"salt"}}`
+	b := smallMarket(t, map[string]string{"declaration.json": declaration(`,"together":[["salt","protein"]]`, fat, protein, salt)})
+	for _, c := range []struct{ name, more, salt, protein, fat, finding string }{
+		{"none", "", "optional", "optional", "optional", "none"},
+		{"salt", `,"declares":{"xx":["salt"]}`, "optional", "mandatory", "mandatory", "none"},
+		{"salt by default", `,"declares":{"default":["salt","biotin"]}`, "optional", "mandatory", "mandatory", "none"},
+		{"what has no line", `,"declares":{"xx":["biotin"]}`, "optional", "optional", "optional", "warning"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"1 g"}`, c.more))
+			for q, want := range map[string]string{"salt": c.salt, "protein": c.protein, "fat": c.fat} {
+				if l, _, err := printedLine(m, q, ""); err != nil || l.Presence != want {
+					t.Errorf("%s is %s, want %s", q, l.Presence, want)
+				}
+			}
+			if got := severityOf(m, "no-such-line"); got != c.finding {
+				t.Errorf("the finding is %s, want %s", got, c.finding)
+			}
+		})
+	}
+}

@@ -23,6 +23,7 @@ type lineState struct {
 	line   *rulebook.Line
 	rule   rulebook.Active[rulebook.Declaration]
 	needed bool // a claim makes it mandatory
+	wanted bool // the maker wants it
 }
 
 // text writes what the line prints.
@@ -111,6 +112,23 @@ func (m *market) openLines() {
 		m.lines[l.line.Quantity] = l
 		m.order = append(m.order, l)
 	}
+	wanted, _ := m.c.recipe.Declares.For(m.j)
+	for _, q := range wanted {
+		if l, ok := m.lines[q]; ok {
+			l.wanted = true
+		}
+	}
+}
+
+// noLines finds what the maker wants to declare and the market's table has no line for.
+func (m *market) noLines() []Finding {
+	var out []Finding
+	for _, q := range m.c.recipe.Declares[m.j] { // what is wanted by default is wanted where there is a line
+		if l, ok := m.lines[q]; !ok || l.line.Presence == "forbidden" {
+			out = append(out, Finding{Kind: "coverage", Severity: "warning", Code: "no-such-line", Pointer: "/declares", Says: "the declaration has no line for “" + q + "”"})
+		}
+	}
+	return out
 }
 
 // stands tells whether a line is in the declaration: by itself, or because one it belongs together with is.
@@ -131,8 +149,11 @@ func (v *view) stands(l *lineState) bool {
 	return false
 }
 
-// standsAlone: mandatory, or raised by a condition or a claim.
-func (v *view) standsAlone(l *lineState) bool {
+// standsAlone: wanted by the maker, mandatory, or raised by a condition or a claim.
+func (v *view) standsAlone(l *lineState) bool { return l.wanted || v.raised(l) }
+
+// raised tells whether the law makes a line mandatory, or a claim.
+func (v *view) raised(l *lineState) bool {
 	return l.needed || l.line.Presence == "mandatory" || l.line.MandatoryIf != nil && v.truth(l.line.MandatoryIf) == quantity.Yes
 }
 
@@ -272,7 +293,7 @@ func (v *view) reportLine(l *lineState) (Line, bool) {
 	}
 	out := Line{Quantity: l.line.Quantity, Component: l.line.Component, Level: l.line.Level, Status: "determined", Presence: "optional",
 		Values: []Value{}, Term: l.line.Terms[v.language()][0], Terms: l.line.FirstTerms()}
-	if v.stands(l) {
+	if v.raised(l) || !l.wanted && v.stands(l) {
 		out.Presence = "mandatory"
 		if l.line.LeaveOutIf != nil && !l.needed && v.truth(l.line.LeaveOutIf) == quantity.Yes {
 			out.Presence = "may be left out"

@@ -62,6 +62,7 @@ func (m *market) judge() Market {
 	out.Findings = append(out.Findings, m.coverage()...)
 	m.openColumns(&out)
 	m.openLines()
+	out.Findings = append(out.Findings, m.noLines()...)
 	out.Claims = m.claims()
 	out.AlsoPermitted = m.alsoPermitted(out.Claims)
 	m.printability(out.Claims)

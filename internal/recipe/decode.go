@@ -154,6 +154,8 @@ func (d *decoder) sale(r *Recipe, name string, m int32) bool {
 		r.State = perMarket(d, m, d.state)
 	case "density":
 		r.Density = perMarket(d, m, d.density)
+	case "declares":
+		r.Declares = perMarket(d, m, d.quantities)
 	default:
 		return false
 	}

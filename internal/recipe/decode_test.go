@@ -63,6 +63,7 @@ var acceptedCases = []struct{ name, doc string }{
 	{"facts", sold(`"facts":{"alcohol by volume":"5 %","sold to":"other business","beverage":false,"protein efficiency ratio":"2.5","free acidity":"0.8 %",
 		"nutrients added as such":["vitamin-d","vitamin-e"]}`)},
 	{"claims", sold(`"claims":[{"text":"riche en oméga-3","language":"fr-CA"},{"claim":"fat-reduced","against":"r/1"}],"reference_foods":{"r/1":{"kind":"similar product","food":"sr:20038"}}`)},
+	{"lines that are wanted", sold(`"declares":{"us":["vitamin-d","polyunsaturated-fat"],"default":["starch"]}`)},
 	{"escapes", `{"\u0069d":"\ud83d\ude00","ingredients":[{"id":"a\u0000","amount":"1\u0020g","food":"sr:20038"}]}`},
 	{"8 levels", nested(MaxLevels)},
 	{"2000 ingredients", `{"id":"x","ingredients":[` + many(MaxIngredients-2) + `],"reference_foods":{"r":{"kind":"similar product","recipe":{"ingredients":[` + many(2) + `]}}}}`},

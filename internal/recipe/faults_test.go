@@ -158,6 +158,8 @@ var faultCases = []struct {
 	{"facts of the wrong form", sold(`"facts":{"beverage":["yes"],"sold to":["anybody"],"free acidity":"0.8","protein efficiency ratio":"2.5 g","nutrients added as such":["vitamin-z","iron"],"very low energy diet":[]}`),
 		[]string{"/facts/beverage wrong-fact-value", "/facts/sold to wrong-fact-value", "/facts/free acidity wrong-fact-value", "/facts/protein efficiency ratio wrong-fact-value",
 			"/facts/nutrients added as such/0 wrong-fact-value", "/facts/very low energy diet empty"}},
+	{"lines that are wanted", sold(`"declares":{"us":["vitamin-d","vitamin-d"],"eu":[],"ca":["Vitamin D"]}`),
+		[]string{"/declares/us/1 repeated", "/declares/eu empty", "/declares/ca/0 bad-format"}},
 	{"a list that is none", sold(`"facts":{"nutrients added as such":"iron"}`), []string{"/facts/nutrients added as such wrong-fact-value"}},
 	{"markets twice", sold(`"jurisdictions":["us","us"],"claims":[{"claim":"fat-low","in":["eu","eu"]}]`), []string{"/jurisdictions/1 repeated", "/claims/0/in/1 repeated"}},
 	{"claim of nothing", sold(`"claims":[{"in":["us"]}]`), []string{"/claims/0 empty-claim"}},
@@ -212,7 +214,7 @@ func TestEveryCodeIsReachedAndListed(t *testing.T) {
 func TestSentencesSayWhatIsRight(t *testing.T) {
 	cases := []struct{ name, doc, says string }{
 		{"misspelt member", `{"id":"x","ingredients":[{"id":"a","amount":"1 g","food":"sr:20038","amout":"1 g"}]}`, `"amout" is not known here; did you mean "amount"?`},
-		{"far from every member", sold(`"weather":"fine"`), `"weather" is not known here; known are id, name, ingredients, yield, package, serving, category, reference_amount, state, density, facts, jurisdictions, claims and reference_foods`},
+		{"far from every member", sold(`"weather":"fine"`), `"weather" is not known here; known are id, name, ingredients, yield, package, serving, category, reference_amount, state, density, declares, facts, jurisdictions, claims and reference_foods`},
 		{"missing member", one(`"label":{"jurisdiction":"us","declared":{"FAT":"4 g"}}`), `the member "serving" is missing: What the declared values are per: a mass, or a volume with the ingredient's density.`},
 		{"number for an amount", sold(`"yield":{"mass":655}`), `a number is given and a text in quotation marks is wanted, such as "420 g"`},
 		{"no unit", sold(`"yield":{"mass":"655"}`), `"655" has no unit; write for instance 655 g`},

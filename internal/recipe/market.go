@@ -1,6 +1,8 @@
 package recipe
 
 import (
+	"slices"
+
 	"gramlaw/internal/quantity"
 )
 
@@ -82,6 +84,19 @@ func (d *decoder) referenceAmount(at int32) ReferenceAmount {
 var States = []string{"solid", "liquid"}
 
 func (d *decoder) state(at int32) string { return d.oneOf(at, States) }
+
+// quantities is a list of names of quantities.
+func (d *decoder) quantities(at int32) []string {
+	out := make([]string, 0, d.nodes[at].count)
+	d.elements(at, func(m int32) {
+		name, ok := scalar(d, m, parseClaimName)
+		if ok && slices.Contains(out, name) {
+			d.fault(m, Repeated, quote(name)+" stands in the list twice")
+		}
+		out = append(out, name)
+	})
+	return out
+}
 
 func (d *decoder) markets(at int32) []string {
 	out := make([]string, 0, d.nodes[at].count)

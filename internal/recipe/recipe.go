@@ -26,6 +26,7 @@ type Recipe struct {
 	ReferenceAmount PerMarket[ReferenceAmount]
 	State           PerMarket[string]          // "solid" or "liquid"
 	Density         PerMarket[decimal.Decimal] // g per mL
+	Declares        PerMarket[[]string]        // optional lines the maker wants, by the names of quantities
 
 	Facts         map[string]Fact // by name of the register in facts.go
 	Jurisdictions []string

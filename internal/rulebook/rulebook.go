@@ -383,6 +383,8 @@ type Claim struct {
 	Wordings   Wordings    `json:"wordings,omitzero"`
 	NotOffered bool        `json:"not offered,omitzero"` // judged when asked for, and not listed unasked
 	Prohibited bool        `json:"prohibited,omitzero"`  // the law names the claim in order to forbid it
+	// ProhibitedSays tells how a claim is forbidden, where the law does not name it.
+	ProhibitedSays Words `json:"prohibited says,omitzero"`
 }
 
 // Stated checks the number in a claim against the exact value: a claim of "30 %" less must be true.
