@@ -138,7 +138,8 @@ func pageOf(f food.Food) foodPage {
 		Measures: []foodMeasure{}, Footnotes: []foodNote{}, Source: foodTable, Caution: check.Caution,
 	}
 	p.Refuse = number(f.Refuse())
-	p.NitrogenFactor = number(f.NitrogenFactor())
+	factor, ok := f.NitrogenFactor()
+	p.NitrogenFactor = number(factor, ok && factor.Mantissa > 0)
 	f.Each(func(id food.ID, v food.Value) bool {
 		c, _ := food.ByID(id)
 		p.Components[c.Tag] = valueOf(c, v)

@@ -6,6 +6,7 @@ import (
 	"log/slog"
 	"maps"
 	"net/http"
+	"os"
 	"regexp"
 	"slices"
 	"strings"
@@ -233,6 +234,23 @@ func TestMeasurementsAreInTheirFormat(t *testing.T) {
 		}
 		if _, ok := targets[line["Route"].(string)]; !ok {
 			t.Errorf("Route %v", line["Route"])
+		}
+	}
+}
+
+// The promise names every metric and property that is written.
+func TestMeasurementsAreDocumented(t *testing.T) {
+	page, err := os.ReadFile("../../schemas/API.md")
+	if err != nil {
+		t.Fatal(err)
+	}
+	var metrics bytes.Buffer
+	o := options()
+	o.Metrics = &metrics
+	ask(t, handler(t, o), "POST", "/v1/check", oats, "Content-Type: application/json")
+	for name := range lines(t, &metrics)[0] {
+		if name != "_aws" && !regexp.MustCompile(`(?m)^\|[^|]*\b`+name+`\b|`+"`"+name+"`").Match(page) {
+			t.Errorf("%s is not described", name)
 		}
 	}
 }
