@@ -21,7 +21,11 @@ func (m *market) gradeOf(q string) (grade, rule string) {
 		}
 	}
 	if e, ok := m.law.Energy.Get(q); ok {
-		lower(e.Head.Source.Evidence, e.ID)
+		if s := e.Body.Methods[0].Source; s != nil {
+			lower(s.Evidence, e.ID)
+		} else {
+			lower(e.Head.Source.Evidence, e.ID)
+		}
 		for _, t := range e.Body.Methods[0].Terms() {
 			lower(m.gradeOf(t.Name))
 		}
@@ -83,7 +87,7 @@ func (w *weakest) comparison(p *rulebook.Condition) {
 		w.lower(w.m.gradeOf(t.Name))
 		if p.As == "share of reference value" {
 			if r, ok := w.m.law.ReferenceOf(t.Name); ok {
-				w.lower(r.Head.Source.Evidence, r.ID)
+				w.lower(r.Body.Source(r.Head, w.m.as(nil).population()).Evidence, r.ID)
 			}
 		}
 	}

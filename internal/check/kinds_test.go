@@ -320,3 +320,15 @@ func TestLinesTheMakerWants(t *testing.T) {
 		})
 	}
 }
+
+// Factors of definitions are exact fractions: 3 g and five thirds of 1.2 g are 5 g.
+func TestFractionsInDefinitions(t *testing.T) {
+	b := smallMarket(t, map[string]string{"definitions.json": `{"id":"xx/quantity/fat","versions":[{SOURCE,"name":{"en":"fat"},"unit":"g","ways":[{"sum":{"FAT":"1","PROCNT":"5/3"}}]}]},
+		{"id":"xx/quantity/protein","versions":[{SOURCE,"name":{"en":"protein"},"unit":"g","ways":[{"of":{"fat":"1/5"}}]}]},{"id":"xx/quantity/salt","versions":[{SOURCE,"name":{"en":"salt"},"unit":"g","ways":[{"sum":{"NACL":"1"}}]}]}`})
+	m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"3 g","PROCNT":"1.2 g","NACL":"1 g"}`, ""))
+	for q, want := range map[string]string{"fat": "5", "protein": "1"} {
+		if _, v, err := printedLine(m, q, ""); err != nil || deref(v.Exact) != want {
+			t.Errorf("%s is %s, want %s", q, deref(v.Exact), want)
+		}
+	}
+}

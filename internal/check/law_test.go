@@ -208,6 +208,7 @@ type given struct {
 	Package         json.RawMessage            `json:"package"`
 	Facts           map[string]json.RawMessage `json:"facts"`
 	References      map[string]json.RawMessage `json:"reference_foods"`
+	Declares        []string                   `json:"declares"`
 }
 
 // document writes the case's food as a recipe of one ingredient.
@@ -238,6 +239,7 @@ func (g given) document(claims ...map[string]any) []byte {
 	put(doc, "category", every(g.Category), g.Category != "")
 	put(doc, "state", every(g.State), g.State != "")
 	put(doc, "density", every(g.Density), g.Density != "")
+	put(doc, "declares", every(g.Declares), len(g.Declares) > 0)
 	put(doc, "package", g.Package, len(g.Package) > 0)
 	put(doc, "facts", g.Facts, len(g.Facts) > 0)
 	put(doc, "reference_foods", g.References, len(g.References) > 0)

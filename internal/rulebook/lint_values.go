@@ -40,6 +40,9 @@ func (c *checker) quantities() {
 		for i := range e.Methods {
 			m := &e.Methods[i]
 			m.terms = terms(m.Factors)
+			if m.Source != nil {
+				c.source(c.j+"/energy.json", id, field+"/methods/source", *m.Source)
+			}
 			for _, q := range sorted(m.Factors) {
 				c.quantity("energy", id, field+"/methods/"+m.Method, q, quantity.Mass)
 			}
@@ -81,13 +84,13 @@ func (c *checker) way(id, field string, w *Way) {
 			if !ok {
 				c.bad("definitions", id, field+"/sum", "%q is no component of the register", tag)
 			}
-			w.parts = append(w.parts, Part{component.ID, quantity.FromDecimal(w.Sum[tag])})
+			w.parts = append(w.parts, Part{component.ID, w.Sum[tag].Ratio()})
 		}
 	}
 	if w.Of != nil {
 		set++
-		w.terms = terms(w.Of)
 		for _, q := range sorted(w.Of) {
+			w.terms = append(w.terms, Term{q, w.Of[q].Ratio()})
 			c.quantity("definitions", id, field+"/of", q, quantity.Mass)
 			c.depend("quantity/"+Name(id), "quantity/"+q)
 		}
@@ -134,6 +137,12 @@ func (c *checker) references() {
 		c.quantity("reference_values", id, field+"/quantity", r.Quantity, quantity.NoDimension)
 		if len(r.Amounts) == 0 {
 			c.bad("reference_values", id, field+"/amounts", "is empty")
+		}
+		for who, s := range r.Sources {
+			c.source(c.j+"/reference_values.json", id, field+"/sources/"+who, s)
+			if _, ok := r.Amounts[who]; !ok {
+				c.bad("reference_values", id, field+"/sources", "%q has no amount", who)
+			}
 		}
 		r.texts, r.ratios = make(map[string]string, len(r.Amounts)), make(map[string]quantity.Ratio, len(r.Amounts))
 		for who, a := range r.Amounts {

@@ -163,10 +163,10 @@ func (d *Definition) makeKey() string {
 
 // A Way is one route to a quantity. Exactly one of Acids, Sum and Of is set.
 type Way struct {
-	Acids *lipid.Predicate           `json:"acids,omitzero"` // over a complete fatty-acid profile
-	Sum   map[string]decimal.Decimal `json:"sum,omitzero"`   // over components, by tagname
-	Of    map[string]decimal.Decimal `json:"of,omitzero"`    // over quantities of the same law
-	Note  string                     `json:"note,omitzero"`
+	Acids *lipid.Predicate    `json:"acids,omitzero"` // over a complete fatty-acid profile
+	Sum   map[string]Fraction `json:"sum,omitzero"`   // over components, by tagname
+	Of    map[string]Fraction `json:"of,omitzero"`    // over quantities of the same law
+	Note  string              `json:"note,omitzero"`
 
 	class *lipid.Class
 	parts []Part
@@ -215,6 +215,7 @@ type Method struct {
 	Method  string                     `json:"method"`
 	Factors map[string]decimal.Decimal `json:"factors"`
 	Note    string                     `json:"note,omitzero"`
+	Source  *Source                    `json:"source,omitzero"` // where the method has another than the rule
 
 	terms []Term
 }
@@ -225,7 +226,8 @@ func (m *Method) Terms() []Term { return m.terms }
 // A Reference is a daily value, reference intake or the like, by population.
 type Reference struct {
 	Quantity string                     `json:"quantity"`
-	Amounts  map[string]quantity.Amount `json:"amounts"` // by the values of the fact "intended for"
+	Amounts  map[string]quantity.Amount `json:"amounts"`          // by the values of the fact "intended for"
+	Sources  map[string]Source          `json:"sources,omitzero"` // of a population, where it has another than the rule
 
 	texts  map[string]string
 	ratios map[string]quantity.Ratio
@@ -238,6 +240,14 @@ func (r *Reference) Text(population string) string { return r.texts[population] 
 func (r *Reference) Amount(population string) (quantity.Ratio, bool) {
 	a, ok := r.ratios[population]
 	return a, ok
+}
+
+// Source is where a population's amount stands; h is the rule's head.
+func (r *Reference) Source(h *Head, population string) Source {
+	if s, ok := r.Sources[population]; ok {
+		return s
+	}
+	return h.Source
 }
 
 // A Rounding turns exact values of some quantities into declared ones.
