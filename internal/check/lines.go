@@ -361,11 +361,15 @@ const mostNeeds = 50
 func (m *market) needs(vars []*quantity.Variable) []string {
 	var out []string
 	add := func(b *rollup.Batch, prefix string, x *quantity.Variable) {
-		if o, ok := b.Owner(x); ok {
-			s := prefix + o.Leaf.Path + " (" + o.What + ")"
-			if !slices.Contains(out, s) {
-				out = append(out, s)
-			}
+		s, ok := b.Owner(x)
+		if !ok {
+			return
+		}
+		if prefix != "" {
+			s = prefix + s
+		}
+		if !slices.Contains(out, s) {
+			out = append(out, s)
 		}
 	}
 	for _, x := range vars {

@@ -204,8 +204,8 @@ func (v *view) percentOf(from string, l *lineState, p *rulebook.Percent, ties qu
 			}
 			values = append(values, quantity.Amount{Value: d.Value, Unit: u}.Ratio())
 		}
-	} else {
-		values = []quantity.Ratio{x.Low(), x.High()}
+	} else if values = append(values, x.Low()); !x.Determined() {
+		values = append(values, x.High())
 	}
 	var out outcomes
 	for _, value := range values {

@@ -195,7 +195,15 @@ func (l Linear) Mul(r Ratio) Linear {
 	for i, t := range l.terms() {
 		terms[i] = term{t.v, t.c.Mul(r)}
 	}
-	return linear(l.Known.Mul(r), terms)
+	m := linear(l.Known.Mul(r), terms)
+	if e := l.uncertain.ends; e != nil {
+		low, high := e[0].Mul(r), e[1].Mul(r)
+		if r.Sign() < 0 {
+			low, high = high, low
+		}
+		m.uncertain.ends = &[2]Ratio{low, high}
+	}
+	return m
 }
 
 // Times is l multiplied by a decimal.

@@ -126,7 +126,7 @@ func (l *Leaf) Component(id food.ID) Amount {
 		return l.answers[at-1]
 	}
 	if l.answers == nil {
-		l.answers = make([]Amount, 0, 96) // about what three markets ask
+		l.answers = make([]Amount, 0, 112) // about what three markets ask
 	}
 	a := l.component(id)
 	l.answers = append(l.answers, a)
@@ -135,7 +135,9 @@ func (l *Leaf) Component(id food.ID) Amount {
 }
 
 // forget drops what was computed, because the leaf's share has changed.
-func (l *Leaf) forget() { l.asked, l.answers, l.acids = [food.Count + 1]uint16{}, nil, nil }
+func (l *Leaf) forget() {
+	l.asked, l.answers, l.acids, l.besides = [food.Count + 1]uint16{}, nil, nil, nil
+}
 
 func (l *Leaf) component(id food.ID) Amount {
 	if a, ok := l.folateEquivalents(id); ok {
@@ -232,9 +234,24 @@ func mostPerGram(id food.ID) int64 {
 }
 
 func (l *Leaf) remainder(id, whole food.ID, most quantity.Ratio) quantity.Ratio {
-	set := food.Beside(id, whole, l.known)
+	set, unit := food.Beside(id, whole, l.known), id.Unit()
+	for i := range l.besides {
+		if b := &l.besides[i]; b.whole == whole && b.unit == unit && b.set == set {
+			return b.rest
+		}
+	}
 	for beside, ok := set.Next(0); ok; beside, ok = set.Next(beside) {
 		most = most.Sub(l.Component(beside).Low())
 	}
-	return quantity.Max(most, quantity.Ratio{})
+	rest := quantity.Max(most, quantity.Ratio{})
+	l.besides = append(l.besides, besides{whole, unit, set, rest})
+	return rest
+}
+
+// besides is what a whole leaves, in a unit, after a set of its parts.
+type besides struct {
+	whole food.ID
+	unit  food.Unit
+	set   food.Set
+	rest  quantity.Ratio
 }

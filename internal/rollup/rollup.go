@@ -64,7 +64,7 @@ type Batch struct {
 	options Options
 	den     *big.Int // of masses
 	fine    *big.Int // of fatty acids: a multiple of den; nil without profiles in per cent
-	owners  []Owner
+	owners  []owner
 	slab    []quantity.Variable // for the next ones
 	totals  [food.Count + 1]*total
 	ingoing quantity.Ratio // g of ingredients, fat taken up included
@@ -76,13 +76,13 @@ type total struct {
 	covered quantity.Ratio
 }
 
-// An Owner says whose uncertainty a variable is.
-type Owner struct {
-	Leaf *Leaf
-	What string // tagname, notation or a plain word
-}
+// An owner says whose uncertainty a variable is.
+type owner struct {
+	leaf *Leaf
+	what string // tagname, notation or a plain word
 
-func (o Owner) String() string { return o.Leaf.Path + " (" + o.What + ")" }
+	text string
+}
 
 // A Leaf is one ingredient that is not itself a recipe, with its share of the batch.
 type Leaf struct {
@@ -102,6 +102,7 @@ type Leaf struct {
 	known      food.Set
 	asked      [food.Count + 1]uint16 // of a component in answers, counted from one
 	answers    []Amount
+	besides    []besides
 	acids      *acids
 	per        quantity.Ratio // 100 g over what the specification is per; zero without one
 	retentions []*recipe.Retention
@@ -155,7 +156,7 @@ type Amount struct {
 // Variable makes a variable of the leaf's; what names it.
 func (l *Leaf) Variable(what string, low, high, central quantity.Ratio, typical bool) *quantity.Variable {
 	b := l.batch
-	b.owners = append(b.owners, Owner{l, what})
+	b.owners = append(b.owners, owner{leaf: l, what: what})
 	if len(b.slab) == 0 {
 		b.slab = make([]quantity.Variable, 64)
 	}
@@ -165,13 +166,17 @@ func (l *Leaf) Variable(what string, low, high, central quantity.Ratio, typical 
 	return v
 }
 
-// Owner tells whose variable it is; false for another batch's.
-func (b *Batch) Owner(v *quantity.Variable) (Owner, bool) {
+// Owner says whose variable it is, "syrup/sugar (FIBTG)"; false for another batch's variable.
+func (b *Batch) Owner(v *quantity.Variable) (string, bool) {
 	i := v.Index - b.options.FirstVariable - 1
 	if i < 0 || i >= len(b.owners) {
-		return Owner{}, false
+		return "", false
 	}
-	return b.owners[i], true
+	o := &b.owners[i]
+	if o.text == "" {
+		o.text = o.leaf.Path + " (" + o.what + ")"
+	}
+	return o.text, true
 }
 
 // Total is the batch's content of a component, in base units.
