@@ -28,9 +28,9 @@ wrong one is told on standard error, the others go on, and the status is 2.
 
 // checkOptions are the flags of check.
 type checkOptions struct {
-	in, without                              words
-	on, transition, format, detail, language string
-	compact, gaps                            bool
+	in, without                                     words
+	on, transition, format, detail, language, rules string
+	compact, gaps                                   bool
 }
 
 func checkFlags(o *checkOptions) *flags {
@@ -43,6 +43,7 @@ func checkFlags(o *checkOptions) *flags {
 	f.Var(&o.without, "without", "`RULES` of presumption to leave out, by identifier, or all")
 	f.StringVar(&o.language, "language", "", "`LANGUAGE` of terms and statements in the text, such as fr, where the\nmarket's rules have it; without it the market's first")
 	f.BoolVar(&o.gaps, "gaps", false, "list the known gaps of the rules in the text")
+	rulesFlag(f, &o.rules)
 	f.BoolVar(&o.compact, "compact", false, "write JSON on one line")
 	return f
 }
@@ -60,6 +61,7 @@ func runCheck(c *call) (int, error) {
 	if err := known(o.format); err != nil {
 		return 0, err
 	}
+	c.place = o.rules
 	if len(args) == 1 {
 		return c.checkOne(args[0], &o)
 	}
@@ -112,19 +114,6 @@ func known(format string) error {
 		return fmt.Errorf("-format: %q is neither text nor json", format)
 	}
 	return nil
-}
-
-// rules loads the rule set once a call.
-func (c *call) rules() (*rulebook.Book, error) {
-	if c.book != nil {
-		return c.book, nil
-	}
-	book, err := c.env.Rules()
-	if err != nil {
-		return nil, &callError{fmt.Errorf("the rule set cannot be used:\n%w", err)}
-	}
-	c.book = book
-	return book, nil
 }
 
 func (c *call) check(r *recipe.Recipe, o *checkOptions, name string) (*check.Report, error) {

@@ -16,14 +16,15 @@ Usage: desk coverage [flags]
 `
 
 type coverageOptions struct {
-	in     words
-	format string
+	in            words
+	format, rules string
 }
 
 func coverageFlags(o *coverageOptions) *flags {
 	f := newFlags("coverage")
 	f.Var(&o.in, "in", "`MARKETS`, such as us,ca,eu; without it all of the rule set")
 	f.StringVar(&o.format, "format", "text", "`text` or json (without it text)")
+	rulesFlag(f, &o.rules)
 	return f
 }
 
@@ -40,6 +41,7 @@ func runCoverage(c *call) (int, error) {
 	if err := known(o.format); err != nil {
 		return 0, err
 	}
+	c.place = o.rules
 	book, err := c.rules()
 	if err != nil {
 		return 0, err

@@ -33,6 +33,7 @@ type call struct {
 	stdin          io.Reader
 	stdout, stderr io.Writer
 	env            Env
+	place          string         // of the rules; empty is the program's own
 	book           *rulebook.Book // once loaded
 }
 
@@ -50,6 +51,7 @@ func verbs() []verb {
 		{"check", "check recipes against the rules of markets", checkUsage, runCheck, func() *flags { return checkFlags(&checkOptions{}) }},
 		{"coverage", "tell what the rule set covers and what it lacks", coverageUsage, runCoverage, func() *flags { return coverageFlags(&coverageOptions{}) }},
 		{"foods", "search the open food table, or show one food of it", foodsUsage, runFoods, func() *flags { return foodsFlags(&foodsOptions{}) }},
+		{"rules", "keep rule sets in a store: put, list, use, back", rulesUsage, runRules, func() *flags { return rulesFlags(&rulesOptions{}) }},
 		{"serve", "answer over HTTP on this machine", serveUsage, runServe, func() *flags { return serveFlags(&serveOptions{}) }},
 	}
 }

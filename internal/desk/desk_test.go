@@ -48,6 +48,13 @@ func TestMain(m *testing.M) {
 	testscript.Main(m, map[string]func(){"status": status, "http": httpClient})
 }
 
+// digest NAME FOLDER sets a variable to the 64 digits of a rule set's digest.
+func digest(s *testscript.TestScript, _ bool, args []string) {
+	book, err := rulebook.Load(os.DirFS(s.MkAbs(args[1])))
+	s.Check(err)
+	s.Setenv(args[0], strings.TrimPrefix(book.Digest, "sha256:"))
+}
+
 // The scripts of testdata run against the invented market there; RULES= in a script takes the embedded rules.
 func TestScripts(t *testing.T) {
 	dir, err := filepath.Abs("testdata/rules")
@@ -58,7 +65,7 @@ func TestScripts(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	testscript.Run(t, testscript.Params{Dir: "testdata", RequireExplicitExec: true, RequireUniqueNames: true, Setup: func(e *testscript.Env) error {
+	testscript.Run(t, testscript.Params{Dir: "testdata", Cmds: map[string]func(*testscript.TestScript, bool, []string){"digest": digest}, RequireExplicitExec: true, RequireUniqueNames: true, Setup: func(e *testscript.Env) error {
 		e.Setenv("RULES", dir)
 		e.Setenv("DEMO", demo)
 		e.Setenv("ADDRESS", freeAddress(t))

@@ -31,14 +31,15 @@ const (
 )
 
 type serveOptions struct {
-	listen, log string
-	metrics     bool
+	listen, log, rules string
+	metrics            bool
 }
 
 func serveFlags(o *serveOptions) *flags {
 	f := newFlags("serve")
 	f.StringVar(&o.listen, "listen", "127.0.0.1:8080", "`ADDRESS` and port (without it 127.0.0.1:8080); port 0 takes a free one")
 	f.StringVar(&o.log, "log", "text", "`text` or json (without it text)")
+	rulesFlag(f, &o.rules)
 	f.BoolVar(&o.metrics, "metrics", false, "write measurements to standard output, one line of JSON a request")
 	return f
 }
@@ -55,23 +56,24 @@ func runServe(c *call) (int, error) {
 	case o.log != "text" && o.log != asJSON:
 		return 0, fmt.Errorf("-log: %q is neither text nor json", o.log)
 	}
-	if _, err := c.rules(); err != nil {
-		return 0, err
-	}
-	l, err := net.Listen("tcp", o.listen)
-	if err != nil {
-		return 0, fmt.Errorf("-listen: %w", err)
-	}
-	return AllWell, c.serve(l, &o)
-}
-
-func (c *call) serve(l net.Listener, o *serveOptions) error {
+	c.place = o.rules
 	log := slog.New(slog.NewTextHandler(c.stderr, nil))
 	if o.log == asJSON {
 		log = slog.New(slog.NewJSONHandler(c.stderr, nil))
 	}
-	rules := web.Rules{Book: c.book, Loaded: c.env.Now()}
-	options := web.Options{Rules: web.Always(rules), Now: c.env.Now, Version: web.Build(), Log: log}
+	rules, err := c.source(log)
+	if err != nil {
+		return 0, err
+	}
+	l, err := net.Listen("tcp", o.listen)
+	if err != nil {
+		return 0, errors.Join(fmt.Errorf("-listen: %w", err), rules.close())
+	}
+	return AllWell, errors.Join(c.serve(l, rules, log, &o), rules.close())
+}
+
+func (c *call) serve(l net.Listener, rules *ruleSource, log *slog.Logger, o *serveOptions) error {
+	options := web.Options{Rules: rules.set, Now: c.env.Now, Version: web.Build(), Log: log}
 	if o.metrics {
 		options.Metrics = c.stdout
 	}
@@ -79,7 +81,8 @@ func (c *call) serve(l net.Listener, o *serveOptions) error {
 	if err != nil {
 		return errors.Join(err, l.Close())
 	}
-	log.Info("listening", "url", "http://"+l.Addr().String(), "version", options.Version, "rules_version", c.book.Version, "rules_digest", c.book.Digest)
+	first := rules.set(context.Background(), "").Book
+	log.Info("listening", "url", "http://"+l.Addr().String(), "version", options.Version, "rules_version", first.Version, "rules_digest", first.Digest)
 	if a, ok := l.Addr().(*net.TCPAddr); ok && !a.IP.IsLoopback() {
 		log.Warn("other machines may reach this address; there are no accounts and no encryption")
 	}

@@ -3,6 +3,7 @@ package store
 import (
 	"context"
 	"errors"
+	"fmt"
 	"io"
 	"slices"
 	"strings"
@@ -35,4 +36,26 @@ func List(ctx context.Context, b *blob.Bucket) ([]Stored, error) {
 			out = append(out, Stored{digest, object.Size, object.ModTime.UTC()})
 		}
 	}
+}
+
+// Find is the digest of the one stored set whose digest begins like this, with or without "sha256:".
+func Find(ctx context.Context, b *blob.Bucket, start string) (string, error) {
+	list, err := List(ctx, b)
+	if err != nil {
+		return "", err
+	}
+	found := ""
+	for _, s := range list {
+		if start == "" || !strings.HasPrefix(strings.TrimPrefix(s.Digest, "sha256:"), strings.TrimPrefix(start, "sha256:")) {
+			continue
+		}
+		if found != "" {
+			return "", fmt.Errorf("more than one digest begins with %q", start)
+		}
+		found = s.Digest
+	}
+	if found == "" {
+		return "", fmt.Errorf("%w: %q", ErrNoSet, start)
+	}
+	return found, nil
 }

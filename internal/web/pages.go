@@ -44,6 +44,9 @@ type loadedSet struct {
 	check.RuleSet
 	Loaded     string `json:"loaded"` // RFC 3339, UTC
 	AgeSeconds int64  `json:"age_seconds"`
+	Canary     bool   `json:"canary,omitzero"`
+	Read       string `json:"read,omitzero"` // RFC 3339, UTC; absent where no store is followed
+	Stale      bool   `json:"stale,omitzero"`
 }
 
 func getSchemas(x *exchange) *Problem {
@@ -121,6 +124,11 @@ func getHealth(x *exchange) *Problem {
 	if _, p := x.parameters(); p != nil {
 		return p
 	}
-	age := x.Now().Sub(x.rules.Loaded)
-	return x.replyJSON(health{"ok", x.Version, loadedSet{x.ruleSet(), x.rules.Loaded.UTC().Format(time.RFC3339), int64(age / time.Second)}}, false)
+	set := loadedSet{RuleSet: x.ruleSet(), Loaded: utc(x.rules.Loaded), AgeSeconds: int64(x.Now().Sub(x.rules.Loaded) / time.Second), Canary: x.rules.Canary, Stale: x.rules.Stale}
+	if !x.rules.Read.IsZero() {
+		set.Read = utc(x.rules.Read)
+	}
+	return x.replyJSON(health{"ok", x.Version, set}, false)
 }
+
+func utc(t time.Time) string { return t.UTC().Format(time.RFC3339) }

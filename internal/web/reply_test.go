@@ -5,6 +5,7 @@ import (
 	"net/http/httptest"
 	"strings"
 	"testing"
+	"time"
 
 	"gramlaw/internal/check"
 )
@@ -81,5 +82,15 @@ func TestAnswersCarryTheCaution(t *testing.T) {
 	}
 	if w := ask(t, h, "POST", "/v1/check", oats, "Content-Type: application/json"); !strings.Contains(w.Body.String(), check.Caution) {
 		t.Error("a report has no caution")
+	}
+}
+
+// A set that comes from a store says what is known of it.
+func TestHealthTellsOfTheStore(t *testing.T) {
+	o := options()
+	o.Rules = Always(Rules{Book: book, Loaded: now().Add(-time.Hour), Canary: true, Read: now().Add(-time.Minute), Stale: true})
+	got := ask(t, handler(t, o), "GET", "/health", "").Body.String()
+	if want := `"age_seconds":3600,"canary":true,"read":"2026-12-01T08:59:00Z","stale":true`; !strings.Contains(got, want) {
+		t.Errorf("%s lacks %s", got, want)
 	}
 }

@@ -23,6 +23,11 @@ import (
 type Rules struct {
 	Book   *rulebook.Book
 	Loaded time.Time
+	// Of sets that come from a store: on trial beside the set in use; when it was last known what is in use; and whether a later look
+	// failed, so that this is no longer known for certain.
+	Canary bool
+	Read   time.Time
+	Stale  bool
 }
 
 // Options are what the service takes from outside. Rules and Now are needed.

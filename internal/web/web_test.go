@@ -27,7 +27,7 @@ var book = func() *rulebook.Book {
 func now() time.Time { return time.Date(2026, 12, 1, 9, 0, 0, 0, time.UTC) }
 
 func options() Options {
-	return Options{Rules: Always(Rules{book, now().Add(-time.Hour)}), Now: now, Version: "test"}
+	return Options{Rules: Always(Rules{Book: book, Loaded: now().Add(-time.Hour)}), Now: now, Version: "test"}
 }
 
 func handler(t testing.TB, o Options) http.Handler {
