@@ -211,7 +211,7 @@ func (m *market) printability(claims []Claim) {
 			}
 			if line, ok := v.reportLine(l); !ok || line.Status != "determined" {
 				claims[i].Printable = false
-				claims[i].Why = "the line “" + l.line.Terms[m.language()][0] + "” must stand in the declaration, and its value is not determined"
+				claims[i].Why = "the line “" + v.term(l) + "” must stand in the declaration, and its value is not determined"
 				for _, n := range line.Needs {
 					if !slices.Contains(claims[i].Needs, n) {
 						claims[i].Needs = append(claims[i].Needs, n)

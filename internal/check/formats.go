@@ -102,7 +102,7 @@ func (v *view) state(out *Simplified, f *rulebook.Simplified, named []string) {
 func (v *view) termsOf(quantities []string) []string {
 	out := make([]string, len(quantities))
 	for i, q := range quantities {
-		out[i] = v.lines[q].line.Terms[v.language()][0]
+		out[i] = v.term(v.lines[q])
 	}
 	return out
 }

@@ -332,3 +332,34 @@ func TestFractionsInDefinitions(t *testing.T) {
 		}
 	}
 }
+
+func TestServingSize(t *testing.T) {
+	b := smallMarket(t, map[string]string{"declaration.json": declaration(`,"serving size":{"bands":[{"below":"10","nearest":"0.1"},{"nearest":"1"}],"text":{"en":"Per {measure} ({amount})"},"plain":{"en":"Per {amount}"},
+		"single":{"en":"Per package ({amount})"},"single if":{"size of":"serving","as":"share of package","at least":"100 %"}},
+		"servings per package":{"bands":[{"nearest":"1"}],"text":{"en":"{n} per package"},"about":{"en":"about {n}"},"varied":{"en":"varied"},"varied if":{"fact":"random weight","is":"yes"}}`)})
+	for _, c := range []struct{ name, more, text, servings string }{
+		{"with a measure", `,"serving":{"default":{"amount":"30.4 g","measure":"2 biscuits"}},"package":{"net":"91.2 g"}`, "Per 2 biscuits (30 g)", "3 per package"},
+		{"a small one", `,"serving":{"default":{"amount":"9.96 g"}},"package":{"net":"100 g"}`, "Per 10 g", "about 10 per package"},
+		{"below ten", `,"serving":{"default":{"amount":"9.94 g"}},"package":{"net":"99.4 g"},"facts":{"random weight":true}`, "Per 9.9 g", "varied per package"},
+		{"by volume", `,"serving":{"default":{"amount":"1 cup","measure":"1 cup"}},"density":{"default":"1 g/mL"},"package":{"net":"480 g"}`, "Per 1 cup (240 mL)", "2 per package"},
+		{"the whole package", `,"serving":{"default":{"amount":"30 g","measure":"1 bar"}},"package":{"net":"30 g"}`, "Per package (30 g)", "1 per package"},
+	} {
+		t.Run(c.name, func(t *testing.T) {
+			d := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"1 g"}`, c.more)).Declaration
+			if d.Serving == nil || d.Serving.Text != c.text || d.Servings == nil || d.Servings.Text != c.servings {
+				t.Errorf("%+v and %+v, want %q and %q", d.Serving, d.Servings, c.text, c.servings)
+			}
+		})
+	}
+}
+
+func TestTermsByCondition(t *testing.T) {
+	salt := `{"quantity":"salt","component":"NACL","terms":{"en":["sodium chloride"]},"terms if":[{"if":{"fact":"salt added","is":"yes"},"terms":{"en":["salt"]}}],"unit":"g","percent":"none","presence":"mandatory"}`
+	b := smallMarket(t, map[string]string{"declaration.json": declaration("", salt)})
+	for more, want := range map[string]string{`,"facts":{"salt added":true}`: "salt", `,"facts":{"salt added":false}`: "sodium chloride", "": "sodium chloride"} {
+		l, _, err := printedLine(run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"1 g"}`, more)), "salt", "")
+		if err != nil || l.Term != want {
+			t.Errorf("%q: the term is %q, want %q", more, l.Term, want)
+		}
+	}
+}

@@ -350,6 +350,7 @@ type findingCase struct {
 	Findings   map[string]string // code -> severity; "none" says that it must be absent
 	Naming     []string          // parts of what is said of names
 	NotNamed   []string          `json:"not_named"` // parts that must not be said
+	Serving    string            // the line that tells the serving
 	Servings   string            // servings per package
 	Simplified *bool             // whether a shorter format applies
 	Format     string            // name of the format meant, where several apply
@@ -380,6 +381,9 @@ func TestFindingCases(t *testing.T) {
 			if named(not) {
 				t.Errorf("something named says %q: %v", not, m.Naming)
 			}
+		}
+		if s := m.Declaration.Serving; c.Serving != "" && (s == nil || s.Text != c.Serving) {
+			t.Errorf("the serving is %+v, want %q", s, c.Serving)
 		}
 		if s := m.Declaration.Servings; c.Servings != "" && (s == nil || s.Text != c.Servings) {
 			t.Errorf("servings per package are %+v, want %q", s, c.Servings)

@@ -229,7 +229,7 @@ func (m *market) table() Table {
 	for _, l := range m.order {
 		if v.open(l) {
 			q, _ := v.subject.Quantity(l.line.Quantity)
-			t.NotKnown = append(t.NotKnown, OpenLine{l.line.Quantity, l.line.Terms[v.language()][0], v.needs(q.Variables())})
+			t.NotKnown = append(t.NotKnown, OpenLine{l.line.Quantity, v.term(l), v.needs(q.Variables())})
 		} else if line, ok := v.reportLine(l); ok {
 			t.Lines = append(t.Lines, line)
 		}
@@ -237,13 +237,44 @@ func (m *market) table() Table {
 	if d, ok := m.law.Declaration(); ok {
 		t.Title, t.Rule = d.Body.Title.In(m.language()), d.ID
 		t.Statements = append(t.Statements, v.statements(d.Body.Statements, d.ID, nil)...)
-		t.Servings, t.NotRequired = v.servings(d.Body), v.required(d.Body)
+		t.Serving, t.Servings, t.NotRequired = v.servingSize(d.Body), v.servings(d.Body), v.required(d.Body)
 		t.free()
 		if f := v.formats(d.Body.Simplified); len(f) > 0 {
 			t.Simplified, t.OtherFormats = &f[0], f[1:]
 		}
 	}
 	return t
+}
+
+// conditional are the terms that stand in place of a line's own; nil where none do.
+func (v *view) conditional(l *lineState) rulebook.Terms {
+	for i := range l.line.TermsIf {
+		if v.surely(l.line.TermsIf[i].If) {
+			return l.line.TermsIf[i].Terms
+		}
+	}
+	return nil
+}
+
+// term is the preferred term of a line in the first language.
+func (v *view) term(l *lineState) string {
+	if t := v.conditional(l); t != nil {
+		return t[v.language()][0]
+	}
+	return l.line.Terms[v.language()][0]
+}
+
+// terms are the preferred terms by language, where there is more than one language.
+func (v *view) terms(l *lineState) map[string]string {
+	t := v.conditional(l)
+	if t == nil || l.line.FirstTerms() == nil {
+		return l.line.FirstTerms()
+	}
+	out := make(map[string]string, len(t))
+	for lang, words := range t {
+		out[lang] = words[0]
+	}
+	return out
 }
 
 // required tells why the law might ask for no declaration; nil where it asks for one.
@@ -292,7 +323,7 @@ func (v *view) reportLine(l *lineState) (Line, bool) {
 		return Line{}, false
 	}
 	out := Line{Quantity: l.line.Quantity, Component: l.line.Component, Level: l.line.Level, Status: "determined", Presence: "optional",
-		Values: []Value{}, Term: l.line.Terms[v.language()][0], Terms: l.line.FirstTerms()}
+		Values: []Value{}, Term: v.term(l), Terms: v.terms(l)}
 	if v.raised(l) || !l.wanted && v.stands(l) {
 		out.Presence = "mandatory"
 		if l.line.LeaveOutIf != nil && !l.needed && v.truth(l.line.LeaveOutIf) == quantity.Yes {

@@ -68,13 +68,14 @@ type Market struct {
 
 // A Table is the declaration.
 type Table struct {
-	Title      string      `json:"title"`
-	Rule       string      `json:"rule"`
-	Bases      []Basis     `json:"bases"`
-	Lines      []Line      `json:"lines"`
-	NotKnown   []OpenLine  `json:"not_known"` // optional lines whose value is not determined
-	Statements []Statement `json:"statements"`
-	Servings   *Servings   `json:"servings_per_package,omitzero"`
+	Title      string       `json:"title"`
+	Rule       string       `json:"rule"`
+	Bases      []Basis      `json:"bases"`
+	Lines      []Line       `json:"lines"`
+	NotKnown   []OpenLine   `json:"not_known"` // optional lines whose value is not determined
+	Statements []Statement  `json:"statements"`
+	Serving    *ServingSize `json:"serving_size,omitzero"`
+	Servings   *Servings    `json:"servings_per_package,omitzero"`
 	// NotRequired is set where the law might ask for no declaration.
 	NotRequired *NotRequired `json:"not_required,omitzero"`
 	Simplified  *Simplified  `json:"simplified_format,omitzero"`
@@ -87,6 +88,12 @@ type NotRequired struct {
 	Says  string   `json:"says"`
 	Open  bool     `json:"open,omitzero"`
 	Needs []string `json:"needs,omitzero"`
+}
+
+// ServingSize is the line that tells the serving.
+type ServingSize struct {
+	Text  string            `json:"text"`
+	Texts map[string]string `json:"texts,omitzero"`
 }
 
 // Servings is how many servings the package holds.

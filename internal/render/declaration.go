@@ -22,6 +22,7 @@ func (p *page) declaration(m *check.Market, o Options) {
 	p.legend(marks)
 	p.blank()
 	p.notRequired(d.NotRequired)
+	p.serving(d.Serving, o)
 	p.servings(d.Servings, o)
 	p.open(d.Lines, o)
 	p.additions(d, o)

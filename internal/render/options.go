@@ -79,6 +79,14 @@ func (p *page) notRequired(n *check.NotRequired) {
 	}
 }
 
+func (p *page) serving(s *check.ServingSize, o Options) {
+	if s == nil {
+		return
+	}
+	p.run("Serving size", "“"+in(o.Language, s.Text, s.Texts)+"”.")
+	p.languages(in(o.Language, s.Text, s.Texts), s.Texts)
+}
+
 func (p *page) servings(s *check.Servings, o Options) {
 	if s == nil {
 		return

@@ -9,6 +9,7 @@ type Declaration struct {
 	Lines      []Line            `json:"lines"`
 	Together   [][]string        `json:"together,omitzero"` // lines that all stand once one of them does
 	Simplified []Simplified      `json:"simplified,omitzero"`
+	Serving    *ServingSize      `json:"serving size,omitzero"`
 	Servings   *Servings         `json:"servings per package,omitzero"`
 	Statements []Statement       `json:"statements,omitzero"`
 	// RequiredUnless says where the law asks for no declaration; NotRequired says so in words.
@@ -38,12 +39,24 @@ type Insignificant struct {
 	If       *Condition `json:"if,omitzero"`
 }
 
+// ServingSize is the line that tells the serving: its household measure, and its amount in g or mL by bands of plain numbers.
+type ServingSize struct {
+	Bands    []CountBand `json:"bands"`
+	Text     Words       `json:"text"`            // "Per {measure} ({amount})"
+	Plain    Words       `json:"plain,omitzero"`  // where no measure is known: "Per {amount}"
+	Single   Words       `json:"single,omitzero"` // where SingleIf holds: "Per package ({amount})"
+	SingleIf *Condition  `json:"single if,omitzero"`
+}
+
 // Servings is how many servings a package holds, rounded by its own bands of plain numbers.
 type Servings struct {
 	Bands []CountBand `json:"bands"`
 	Text  Words       `json:"text"`         // "{n} servings per container"
 	One   Words       `json:"one,omitzero"` // for a single serving; Text where absent
 	About Words       `json:"about"`        // "about {n}", where the number was rounded
+
+	Varied   Words      `json:"varied,omitzero"` // in place of the number where VariedIf holds
+	VariedIf *Condition `json:"varied if,omitzero"`
 }
 
 // A CountBand is a step of a rounded count.
@@ -66,6 +79,7 @@ type Line struct {
 	Quantity    string     `json:"quantity"`
 	Component   string     `json:"component"` // INFOODS tagname nearest to the line
 	Terms       Terms      `json:"terms"`
+	TermsIf     []TermsIf  `json:"terms if,omitzero"` // terms in place of those, the first whose condition holds
 	Level       int        `json:"level,omitzero"`
 	Unit        string     `json:"unit,omitzero"`       // "" shows no amount
 	ShownUnit   Words      `json:"shown unit,omitzero"` // how the unit is printed, where not as itself
@@ -87,6 +101,12 @@ func (l *Line) FirstTerms() map[string]string { return l.first }
 
 // Terms are the words a line may carry, by language, the preferred first.
 type Terms map[string][]string
+
+// TermsIf are terms that a line may carry only where a condition holds.
+type TermsIf struct {
+	If    *Condition `json:"if"`
+	Terms Terms      `json:"terms"`
+}
 
 // A Statement is text that must or may stand somewhere.
 type Statement struct {

@@ -50,11 +50,30 @@ func (c *checker) shortForms(id, field string, d *Declaration, lines map[string]
 		c.simplified(id, field+"/simplified/"+strconv.Itoa(i), &d.Simplified[i], lines)
 	}
 	if s := d.Servings; s != nil {
-		for i, b := range s.Bands {
-			if open := b.Below == nil && b.AtMost == nil; open != (i == len(s.Bands)-1) || !b.Nearest.IsPositive() {
-				c.bad("declaration", id, field+"/servings per package/bands", "must have edges but for the last, and steps above zero")
-			}
+		c.countBands(id, field+"/servings per package", s.Bands)
+		c.condition("declaration", id, field+"/servings per package/varied if", "servings", s.VariedIf)
+		if (s.VariedIf != nil) != (len(s.Varied) > 0) {
+			c.bad("declaration", id, field+"/servings per package", "varied goes with varied if")
 		}
+	}
+	if s := d.Serving; s != nil {
+		c.countBands(id, field+"/serving size", s.Bands)
+		c.words("declaration", id, field+"/serving size/text", s.Text)
+		c.condition("declaration", id, field+"/serving size/single if", "servings", s.SingleIf)
+		if (s.SingleIf != nil) != (len(s.Single) > 0) {
+			c.bad("declaration", id, field+"/serving size", "single goes with single if")
+		}
+	}
+}
+
+func (c *checker) countBands(id, at string, bands []CountBand) {
+	for i, b := range bands {
+		if open := b.Below == nil && b.AtMost == nil; open != (i == len(bands)-1) || !b.Nearest.IsPositive() {
+			c.bad("declaration", id, at+"/bands", "must have edges but for the last, and steps above zero")
+		}
+	}
+	if len(bands) == 0 {
+		c.bad("declaration", id, at+"/bands", "is empty")
 	}
 }
 
@@ -115,6 +134,15 @@ func (c *checker) line(id, at string, line *Line) {
 		}
 	}
 	node := "line/" + line.Quantity
+	for i := range line.TermsIf {
+		o := &line.TermsIf[i]
+		c.condition("declaration", id, at+"/terms if", "terms/"+line.Quantity, o.If)
+		for _, lang := range c.m.Market.Languages {
+			if len(o.Terms[lang]) == 0 || o.If == nil {
+				bad("/terms if", "has no condition, or no words in %q", lang)
+			}
+		}
+	}
 	c.condition("declaration", id, at+"/mandatory if", node, line.MandatoryIf)
 	c.condition("declaration", id, at+"/forbidden if", node, line.ForbiddenIf)
 	c.condition("declaration", id, at+"/leave out if", node, line.LeaveOutIf)
