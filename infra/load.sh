@@ -3,7 +3,7 @@
 # takes, and whether its memory stays as it is. One client address may have 16 requests under way, so more connections come from more
 # loopback addresses. The load generator shares the machine with the server.
 #
-#   infra/load.sh [SECONDS A RUN [SECONDS OF THE MEMORY RUN]]      (without them 15 and 600)
+#   infra/load.sh [SECONDS A RUN [SECONDS OF THE MEMORY RUN]]      (without them 15 and 600; 0 leaves that run out)
 set -euo pipefail
 cd "$(dirname "$0")/.."
 each=${1:-15} long=${2:-600}
@@ -55,14 +55,16 @@ report many '256 connections of 16 clients: more than 64 requests under way are 
 attack 1 64 "$each" greedy
 report greedy '64 connections of one client: more than 16 requests under way are turned away with 429'
 
-printf '\n== memory over %s s with 8 connections, every 30 s\n' "$long"
-attack 1 8 "$long" memory &
-attacking=$!
-for _ in $(seq $((long / 30))); do
-  sleep 30
-  printf '%s ' "$(resident)"
-done
-echo KiB
-wait "$attacking"
-report memory "$long s"
+if [ "$long" -gt 0 ]; then
+  printf '\n== memory over %s s with 8 connections, every 30 s\n' "$long"
+  attack 1 8 "$long" memory &
+  attacking=$!
+  for _ in $(seq $((long / 30))); do
+    sleep 30
+    printf '%s ' "$(resident)"
+  done
+  echo KiB
+  wait "$attacking"
+  report memory "$long s"
+fi
 printf 'load after: %s\n' "$(cut -d' ' -f1-3 /proc/loadavg)"

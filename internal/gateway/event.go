@@ -50,7 +50,7 @@ func (e *event) request(ctx context.Context, open map[string]bool) (*http.Reques
 		}
 	}
 	target, err := url.ParseRequestURI(e.path())
-	if err != nil {
+	if err != nil || target.Host != "" || target.Path == "" {
 		return refuse(BadPath)
 	}
 	target.RawQuery = e.RawQueryString

@@ -201,6 +201,7 @@ func TestRefusals(t *testing.T) {
 	}{
 		"body is no base64": {func(e *events.APIGatewayV2HTTPRequest) { e.Body, e.IsBase64Encoded = "%", true }, nil, statuses[BadEncoding]},
 		"path is no path":   {func(e *events.APIGatewayV2HTTPRequest) { e.RawPath = "/%zz" }, nil, statuses[BadPath]},
+		"path is a URL":     {func(e *events.APIGatewayV2HTTPRequest) { e.RawPath = "http://example.org/v1/check" }, nil, statuses[BadPath]},
 		"panic":             {nil, func(http.ResponseWriter, *http.Request) { panic("a secret") }, statuses[Broken]},
 		"panic after a start": {nil, func(w http.ResponseWriter, r *http.Request) {
 			io.WriteString(w, "half")
