@@ -13,7 +13,8 @@ import (
 )
 
 // source gives the rules of each request: those that the program carries, those of a digest, or those in use in a bucket, looked at
-// again from time to time.
+// again from time to time. Rules that cannot be had keep the function from starting: a label by other rules than those in use is worse
+// than none.
 func source(ctx context.Context, url string, log *slog.Logger) (func(context.Context, string) web.Rules, error) {
 	if url == "" {
 		book, err := rulebook.Load(rules.FS)
@@ -32,7 +33,7 @@ func source(ctx context.Context, url string, log *slog.Logger) (func(context.Con
 		return nil, err
 	}
 	return func(ctx context.Context, requestID string) web.Rules {
-		set := r.Set(ctx, requestID)
-		return web.Rules{Book: set.Book, Loaded: set.Loaded}
+		set, state := r.Set(ctx, requestID), r.State()
+		return web.Rules{Book: set.Book, Loaded: set.Loaded, Canary: set.Canary, Read: state.Read, Stale: state.Failed != nil}
 	}, nil
 }
