@@ -180,7 +180,15 @@ func TestAnswersAreBounded(t *testing.T) {
 	if w := ask(t, h, "POST", "/v1/check", oats, "Content-Type: application/json", "Accept-Encoding: gzip"); w.Code != 200 {
 		t.Errorf("compressed: %d", w.Code)
 	}
-	o.Limits.Answer = 300_000
+	o.Limits.Answer, o.Limits.Report = 0, 10_000
+	h = handler(t, o)
+	if w := ask(t, h, "POST", "/v1/check", oats, "Content-Type: application/json", "Accept-Encoding: gzip"); w.Code != 413 || told(t, w).Type != "/problems/answer-too-large" {
+		t.Errorf("a long report: %d", w.Code)
+	}
+	if got := batch(t, ask(t, h, "POST", "/v1/check/batch", oats, "Content-Type: application/jsonl")); got[0].Status != 413 {
+		t.Errorf("a long report of a line: %d", got[0].Status)
+	}
+	o.Limits.Answer, o.Limits.Report = 300_000, 0
 	h = handler(t, o)
 	w := ask(t, h, "POST", "/v1/check/batch", strings.Repeat(oats+"\n", 100), "Content-Type: application/jsonl")
 	got := batch(t, w)

@@ -3,6 +3,7 @@ package web
 import (
 	"bytes"
 	"context"
+	"strconv"
 	"strings"
 
 	"gramlaw/internal/check"
@@ -52,6 +53,9 @@ func (x *exchange) check(ctx context.Context, doc []byte) ([]byte, *Problem) {
 	var b bytes.Buffer
 	if err := render.JSON(&b, report, true); err != nil {
 		return nil, problem(internal, "")
+	}
+	if b.Len() > x.Limits.Report {
+		return nil, problem(answerLarge, "The report has "+strconv.Itoa(b.Len())+" bytes.")
 	}
 	return b.Bytes(), nil
 }

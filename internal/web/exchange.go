@@ -28,11 +28,11 @@ type exchange struct {
 // serve wraps a route: identity, limits, the endpoint, problems, panics, and a line in the log.
 func (s *service) serve(t route) http.Handler {
 	return http.HandlerFunc(func(w http.ResponseWriter, r *http.Request) {
-		id := requestID(r)
-		x := &exchange{service: s, w: w, r: r, id: id, rules: s.Rules(r.Context(), id), record: newRecord(t.pattern, r.Method, s.Now())}
+		x := &exchange{service: s, w: w, r: r, id: requestID(r), record: newRecord(t.pattern, r.Method, s.Now())}
 		secure(w.Header(), x.id)
 		defer x.finish()
 		defer x.recover()
+		x.rules = s.Rules(r.Context(), x.id)
 		if p := x.run(t); p != nil {
 			x.refuse(p)
 		}

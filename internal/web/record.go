@@ -101,16 +101,24 @@ func (c *record) undetermined() float64 {
 
 // finish writes the record when the answer is out.
 func (x *exchange) finish() {
-	c, now := x.record, x.Now()
+	c, now, set := x.record, x.Now(), x.loaded()
 	took := float64(now.Sub(c.began)) / float64(time.Millisecond)
 	x.Log.LogAttrs(context.Background(), level(c.status), "request",
 		slog.String("request_id", x.id), slog.String("method", c.method), slog.String("route", c.route), slog.Int("status", c.status),
 		slog.String("problem", c.problem), slog.Float64("milliseconds", took), slog.Int64("bytes_in", c.bytesIn), slog.Int64("bytes_out", c.bytesOut),
 		slog.Int("recipes", c.recipes), slog.Any("verdicts", c.verdicts), slog.Any("refusals", c.refusals), slog.Any("faults", c.faults),
-		slog.String("version", x.Version), slog.String("rules_version", x.rules.Book.Version), slog.String("rules_digest", x.rules.Book.Digest))
+		slog.String("version", x.Version), slog.String("rules_version", set.Version), slog.String("rules_digest", set.Digest))
 	if x.Metrics != nil {
-		meter.Write(x.Metrics, now, c.line(x, took)) // a log that cannot be written is no reason to fail
+		meter.Write(x.Metrics, now, c.line(x, set, took)) // a log that cannot be written is no reason to fail
 	}
+}
+
+// loaded names the rule set; it is empty where a panic came before one was found.
+func (x *exchange) loaded() check.RuleSet {
+	if x.rules.Book == nil {
+		return check.RuleSet{}
+	}
+	return x.ruleSet()
 }
 
 func level(status int) slog.Level {
@@ -124,7 +132,7 @@ func level(status int) slog.Level {
 }
 
 // line is the record as metrics, over all and by route. What has many values stands beside them as properties, which make no metrics.
-func (c *record) line(x *exchange, took float64) meter.Line {
+func (c *record) line(x *exchange, set check.RuleSet, took float64) meter.Line {
 	count := func(name string, n int) meter.Metric {
 		return meter.Metric{Name: name, Unit: "Count", Value: float64(n)}
 	}
@@ -139,7 +147,7 @@ func (c *record) line(x *exchange, took float64) meter.Line {
 		},
 		Properties: map[string]any{
 			"RequestId": x.id, "Method": c.method, "Status": c.status, "RefusalsByRule": c.refusals, "FaultsByCode": c.faults, "Verdicts": c.verdicts,
-			"Version": x.Version, "RulesVersion": x.rules.Book.Version, "RulesDigest": x.rules.Book.Digest,
+			"Version": x.Version, "RulesVersion": set.Version, "RulesDigest": set.Digest,
 		},
 	}
 }

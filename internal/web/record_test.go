@@ -2,6 +2,7 @@ package web
 
 import (
 	"bytes"
+	"context"
 	"encoding/json"
 	"log/slog"
 	"maps"
@@ -277,5 +278,20 @@ func TestPanicsAreTold(t *testing.T) {
 	}
 	if at, _ := json.Marshal(first["at"]); !strings.Contains(string(at), "TestPanicsAreTold") || !strings.Contains(string(at), "web.(*exchange).today") {
 		t.Errorf("at %s", at)
+	}
+}
+
+// Rules that cannot be had are the service's fault, and told.
+func TestRulesThatBreak(t *testing.T) {
+	for name, rules := range map[string]func(context.Context, string) Rules{
+		"a panic": func(context.Context, string) Rules { panic("no bucket") }, "none": func(context.Context, string) Rules { return Rules{} },
+	} {
+		var log, metrics bytes.Buffer
+		o := options()
+		o.Rules, o.Log, o.Metrics = rules, slog.New(slog.NewJSONHandler(&log, nil)), &metrics
+		w := ask(t, handler(t, o), "POST", "/v1/check", oats, "Content-Type: application/json")
+		if w.Code != http.StatusInternalServerError || told(t, w).RequestID == "" || len(lines(t, &log)) != 2 || lines(t, &metrics)[0]["Panics"] != 1.0 {
+			t.Errorf("%s: %d", name, w.Code)
+		}
 	}
 }

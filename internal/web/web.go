@@ -53,6 +53,7 @@ type Limits struct {
 	BatchBody  int64         // bytes of a batch's body; 8 MiB
 	BatchLines int           // recipes of a batch; 100
 	Query      int           // bytes of a query; 2048
+	Report     int           // bytes of a report before it is compressed; 16 MiB
 	Answer     int64         // bytes of an answer as sent; no bound
 	InFlight   int           // requests at work or waiting, over all clients; 64
 	PerClient  int           // the same of one address; 16
@@ -63,7 +64,7 @@ type Limits struct {
 func (l Limits) orDefault() Limits {
 	return Limits{
 		Body: cmp.Or(l.Body, 1<<20+64<<10), BatchBody: cmp.Or(l.BatchBody, 8<<20), BatchLines: cmp.Or(l.BatchLines, 100),
-		Query: cmp.Or(l.Query, 2048), Answer: l.Answer, InFlight: cmp.Or(l.InFlight, 64), PerClient: cmp.Or(l.PerClient, 16),
+		Query: cmp.Or(l.Query, 2048), Report: cmp.Or(l.Report, 16<<20), Answer: l.Answer, InFlight: cmp.Or(l.InFlight, 64), PerClient: cmp.Or(l.PerClient, 16),
 		Workers: cmp.Or(l.Workers, runtime.GOMAXPROCS(0)), Wait: cmp.Or(l.Wait, 2*time.Second),
 	}
 }
