@@ -49,7 +49,7 @@ func fetch(method, url string, file []string) error {
 
 // once tries again while nobody listens yet.
 func once(r *http.Request) (*http.Response, error) {
-	for range 100 {
+	for range 600 {
 		w, err := http.DefaultClient.Do(r)
 		if !errors.Is(err, syscall.ECONNREFUSED) {
 			return w, err
