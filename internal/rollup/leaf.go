@@ -136,7 +136,7 @@ func (l *Leaf) Component(id food.ID) Amount {
 
 // forget drops what was computed, because the leaf's share has changed.
 func (l *Leaf) forget() {
-	l.asked, l.answers, l.acids, l.besides = [food.Count + 1]uint16{}, nil, nil, nil
+	l.asked, l.answers, l.acids = [food.Count + 1]uint16{}, nil, nil
 }
 
 func (l *Leaf) component(id food.ID) Amount {
@@ -234,24 +234,9 @@ func mostPerGram(id food.ID) int64 {
 }
 
 func (l *Leaf) remainder(id, whole food.ID, most quantity.Ratio) quantity.Ratio {
-	set, unit := food.Beside(id, whole, l.known), id.Unit()
-	for i := range l.besides {
-		if b := &l.besides[i]; b.whole == whole && b.unit == unit && b.set == set {
-			return b.rest
-		}
-	}
+	set := food.Beside(id, whole, l.known)
 	for beside, ok := set.Next(0); ok; beside, ok = set.Next(beside) {
 		most = most.Sub(l.Component(beside).Low())
 	}
-	rest := quantity.Max(most, quantity.Ratio{})
-	l.besides = append(l.besides, besides{whole, unit, set, rest})
-	return rest
-}
-
-// besides is what a whole leaves, in a unit, after a set of its parts.
-type besides struct {
-	whole food.ID
-	unit  food.Unit
-	set   food.Set
-	rest  quantity.Ratio
+	return quantity.Max(most, quantity.Ratio{})
 }

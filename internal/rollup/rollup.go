@@ -102,7 +102,6 @@ type Leaf struct {
 	known      food.Set
 	asked      [food.Count + 1]uint16 // of a component in answers, counted from one
 	answers    []Amount
-	besides    []besides
 	acids      *acids
 	per        quantity.Ratio // 100 g over what the specification is per; zero without one
 	retentions []*recipe.Retention
