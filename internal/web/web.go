@@ -74,6 +74,7 @@ type service struct {
 	Options
 	gate    *gate
 	mux     *http.ServeMux
+	nowhere http.Handler // every other path
 	openapi []byte
 }
 
@@ -94,17 +95,15 @@ func New(o Options) (http.Handler, error) {
 	for _, r := range routes() {
 		s.mux.Handle(r.pattern, s.serve(r))
 	}
+	s.nowhere = s.serve(route{pattern: unknownRoute})
+	s.mux.Handle("/", s.nowhere)
 	return s, nil
 }
 
 // ServeHTTP refuses paths that are not written plainly before they reach the routes, because the router would redirect them.
 func (s *service) ServeHTTP(w http.ResponseWriter, r *http.Request) {
 	if !plainPath(r.URL) {
-		s.serve(route{pattern: unknownRoute}).ServeHTTP(w, r)
-		return
-	}
-	if _, pattern := s.mux.Handler(r); pattern == "" {
-		s.serve(route{pattern: unknownRoute}).ServeHTTP(w, r)
+		s.nowhere.ServeHTTP(w, r)
 		return
 	}
 	s.mux.ServeHTTP(w, r)
