@@ -221,7 +221,7 @@ func (o outcomes) determined() bool {
 
 // table builds the declaration.
 func (m *market) table() Table {
-	t := Table{Lines: []Line{}, NotKnown: []OpenLine{}, Statements: []Statement{}, Bases: []Basis{}}
+	t := Table{Lines: make([]Line, 0, len(m.order)), NotKnown: []OpenLine{}, Statements: []Statement{}, Bases: []Basis{}}
 	for _, c := range m.columns {
 		t.Bases = append(t.Bases, c.Basis)
 	}

@@ -111,7 +111,10 @@ func (m *market) coverage() []Finding {
 		out = append(out, Finding{Kind: "coverage", Severity: "open", Code: "date-not-covered", Says: says})
 	}
 	category, stated := m.c.recipe.Category.For(m.j)
-	if _, ok := m.category(category); stated && !ok && len(m.law.ReferenceAmounts.All) > 0 {
+	if !stated || len(m.law.ReferenceAmounts.All) == 0 {
+		return out
+	}
+	if _, ok := m.category(category); !ok {
 		says := "“" + category + "” is no category of this market"
 		if near := suggest(category, m.categories()); near != "" {
 			says += "; did you mean “" + near + "”?"
