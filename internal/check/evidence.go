@@ -87,7 +87,7 @@ func (w *weakest) comparison(p *rulebook.Condition) {
 		w.lower(w.m.gradeOf(t.Name))
 		if p.As == "share of reference value" {
 			if r, ok := w.m.law.ReferenceOf(t.Name); ok {
-				w.lower(r.Body.Source(r.Head, w.m.as(nil).population()).Evidence, r.ID)
+				w.lower(r.Body.Source(r.Head, w.m.population(r.Body)).Evidence, r.ID)
 			}
 		}
 	}

@@ -363,3 +363,16 @@ func TestTermsByCondition(t *testing.T) {
 		}
 	}
 }
+
+// A narrower population takes its own reference value, or that of the wider one.
+func TestNarrowerPopulations(t *testing.T) {
+	b := smallMarket(t, map[string]string{"reference_values.json": `{"id":"xx/reference/protein","versions":[{SOURCE,"quantity":"protein","amounts":{"general population":"50 g","pregnant or lactating":"80 g","lactating":"100 g"}}]}`,
+		"claims.json": `{"id":"xx/claim/c","versions":[{SOURCE,"name":{"en":"c"},"about":[],"condition":{"all":[{"of":{"protein":"1"},"as":"share of reference value","per":"100 g","at least":"10 %"},
+			{"fact":"intended for","is":"pregnant or lactating"}]}}]}`})
+	for who, want := range map[string]string{"pregnant": "permitted", "pregnant or lactating": "permitted", "lactating": "refused", "general population": "refused"} {
+		m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"8 g","NACL":"1 g"}`, `,"facts":{"intended for":"`+who+`"},"claims":[{"claim":"c"}]`))
+		if got := m.Claims[0]; got.Verdict != want {
+			t.Errorf("%s: %s, want %s", who, got.Verdict, want)
+		}
+	}
+}

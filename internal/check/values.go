@@ -150,7 +150,7 @@ func (v *view) percent(l *lineState, r rulebook.Active[rulebook.Rounding], x qua
 		}
 		per = per.Mul(f)
 	}
-	out := &Percent{Reference: ref.Body.Text(v.population()), Rule: ref.ID, Source: ref.Body.Source(ref.Head, v.population()).Ref}
+	out := &Percent{Reference: ref.Body.Text(v.population(ref.Body)), Rule: ref.ID, Source: ref.Body.Source(ref.Head, v.population(ref.Body)).Ref}
 	if mid, known := x.Central(); known {
 		out.Exact = text(mid.Mul(per))
 	}

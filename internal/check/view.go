@@ -1,6 +1,7 @@
 package check
 
 import (
+	"cmp"
 	"slices"
 	"strings"
 
@@ -9,6 +10,7 @@ import (
 	"gramlaw/internal/claim"
 	"gramlaw/internal/food"
 	"gramlaw/internal/quantity"
+	"gramlaw/internal/recipe"
 	"gramlaw/internal/rollup"
 	"gramlaw/internal/rulebook"
 )
@@ -82,17 +84,13 @@ func (v *view) EnergyFactor(q, energy string) (quantity.Ratio, bool) {
 
 const everybody = "general population"
 
-// population is for whom the food is made, as reference values name it.
-func (m *market) population() string {
-	if m.eaters != "" {
-		return m.eaters
+// population is for whom the food is made, as a reference value names it: a wider population where it has no amount for a narrower one.
+func (m *market) population(r *rulebook.Reference) string {
+	if m.eaters == "" {
+		m.eaters = cmp.Or(m.c.recipe.Facts["intended for"].Text, everybody)
 	}
-	m.eaters = everybody
-	for _, p := range []string{"children 1 to 3", "infants", "pregnant or lactating"} {
-		if m.stated("intended for", p) == quantity.Yes {
-			m.eaters = p
-			break
-		}
+	if _, ok := r.Amounts[m.eaters]; !ok {
+		return cmp.Or(recipe.WiderFact("intended for", m.eaters), m.eaters)
 	}
 	return m.eaters
 }
@@ -103,7 +101,7 @@ func (v *view) ReferenceValue(q string) (quantity.Ratio, bool) {
 	if !ok {
 		return quantity.Ratio{}, false
 	}
-	return r.Body.Amount(v.population())
+	return r.Body.Amount(v.population(r.Body))
 }
 
 // stated compares a fact the recipe states.
@@ -113,7 +111,7 @@ func (m *market) stated(name, is string) quantity.Truth {
 		return quantity.Open
 	}
 	if f.Text != "" {
-		return quantity.TruthOf(f.Text == is)
+		return quantity.TruthOf(f.Text == is || recipe.WiderFact(name, f.Text) == is)
 	}
 	if f.Flag == quantity.Open {
 		return quantity.Open

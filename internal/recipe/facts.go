@@ -19,14 +19,31 @@ type FactRule struct {
 	Unit   string   // of Measure; empty is a plain number, which may also be written in per cent
 	Says   string
 
+	Within map[string]string // of OneOf: the wider value that a value belongs to
+
 	Implies   string // a yes-or-no fact that holds when a Listed one names one of ImpliedBy
 	ImpliedBy []string
 }
 
+// wider are the facts of which a value can belong to a wider one.
+var wider = func() map[string]map[string]string {
+	out := map[string]map[string]string{}
+	for i := range Facts {
+		if Facts[i].Within != nil {
+			out[Facts[i].Name] = Facts[i].Within
+		}
+	}
+	return out
+}()
+
+// WiderFact is the wider value of a fact that a value belongs to; empty where there is none.
+func WiderFact(name, value string) string { return wider[name][value] }
+
 // Facts is the closed register. An unstated fact is unknown, never false; what a market takes instead stands in its rules.
 var Facts = []FactRule{
 	{Name: "meal type", Kind: OneOf, Values: []string{"individual food", "main dish", "meal", "prepackaged meal"}, Says: "what the food is sold as"},
-	{Name: "intended for", Kind: OneOf, Values: []string{"general population", "children 1 to 3", "infants", "pregnant or lactating"}, Says: "for whom the food is made"},
+	{Name: "intended for", Kind: OneOf, Values: []string{"general population", "children 1 to 3", "infants", "pregnant or lactating", "pregnant", "lactating"},
+		Within: map[string]string{"pregnant": "pregnant or lactating", "lactating": "pregnant or lactating"}, Says: "for whom the food is made"},
 	{Name: "annual food sales", Kind: OneOf, Values: []string{"10 million or more", "under 10 million"}, Says: "the maker's yearly food sales in the market's currency, where transition dates depend on them"},
 	{Name: "alcohol by volume", Kind: Measure, Unit: "%", Says: "ethanol, per cent by volume"},
 	{Name: "naturally free", Kind: YesNo, Says: "foods of this kind are free of or low in the nutrient without special processing"},
