@@ -2,6 +2,7 @@ package rulebook
 
 import (
 	"fmt"
+	"maps"
 	"slices"
 	"strconv"
 	"strings"
@@ -100,6 +101,9 @@ type checker struct {
 	m    *Rules
 	dims map[string]quantity.Dimension // of every quantity
 	deps map[string][]string           // what a rule's result depends on
+
+	claimed    map[string]*Rule[Claim] // claims and health claims by identifier
+	conditions map[string]*Rule[Named]
 }
 
 func (c *checker) bad(kind, id, field, format string, args ...any) {
@@ -115,6 +119,8 @@ func (c *checker) market() {
 	}
 	c.editions()
 	c.page()
+	c.claimed, c.conditions = byID(c.m.Claims), byID(c.m.Conditions)
+	maps.Copy(c.claimed, byID(c.m.HealthClaims))
 	c.dims, c.deps = map[string]quantity.Dimension{}, map[string][]string{}
 	c.quantities()
 	c.bases()

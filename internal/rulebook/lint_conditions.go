@@ -84,7 +84,7 @@ func (c *checker) condition(kind, id, field, node string, cond *Condition) {
 				bad("%d of %d conditions cannot hold", p.N, len(p.Parts))
 			}
 		case OpHolds:
-			if !slices.ContainsFunc(c.m.Conditions, func(r Rule[Named]) bool { return r.ID == p.Name }) {
+			if _, ok := c.conditions[p.Name]; !ok {
 				bad("%q is no condition of this market", p.Name)
 			}
 			c.depend(node, "condition/"+Name(p.Name))
@@ -133,19 +133,15 @@ func (c *checker) relative(cond *Condition) (compares, reaches bool) {
 		cond.Walk(func(p *Condition) {
 			compares = compares || p.comparesFoods()
 			if p.Op == OpMeets && p.Subject == "" {
-				reaches = reaches || slices.ContainsFunc(slices.Concat(c.m.Claims, c.m.HealthClaims), func(r Rule[Claim]) bool {
-					return r.ID == p.Name && slices.ContainsFunc(r.Versions, func(v Version[Claim]) bool { return v.Body.Against })
-				})
+				reaches = reaches || c.comparesClaim(p.Name)
 			}
 			if p.Op != OpHolds || seen[p.Name] {
 				return
 			}
 			seen[p.Name] = true
-			for i := range c.m.Conditions {
-				for j := range c.m.Conditions[i].Versions {
-					if c.m.Conditions[i].ID == p.Name {
-						look(c.m.Conditions[i].Versions[j].Body.Condition)
-					}
+			if named, ok := c.conditions[p.Name]; ok {
+				for i := range named.Versions {
+					look(named.Versions[i].Body.Condition)
 				}
 			}
 		})
@@ -154,9 +150,22 @@ func (c *checker) relative(cond *Condition) (compares, reaches bool) {
 	return compares, compares || reaches
 }
 
+// comparesClaim tells whether a version of a claim compares with a reference food.
+func (c *checker) comparesClaim(id string) bool {
+	claim, ok := c.claimed[id]
+	if !ok {
+		return false
+	}
+	for i := range claim.Versions {
+		if claim.Versions[i].Body.Against {
+			return true
+		}
+	}
+	return false
+}
+
 func (c *checker) meets(kind, id, field, node string, p *Condition) {
-	same := func(r Rule[Claim]) bool { return r.ID == p.Name }
-	if !slices.ContainsFunc(c.m.Claims, same) && !slices.ContainsFunc(c.m.HealthClaims, same) {
+	if _, ok := c.claimed[p.Name]; !ok {
 		c.bad(kind, id, field, "%q is no claim of this market", p.Name)
 	}
 	if p.Subject == "" {
