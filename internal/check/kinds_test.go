@@ -376,3 +376,14 @@ func TestNarrowerPopulations(t *testing.T) {
 		}
 	}
 }
+
+func TestAnotherLessThan(t *testing.T) {
+	d := strings.Replace(declaration(""), `"less than":"<{n} {u}"`, `"less than":"<{n} {u}","or less than":"contains less than {n} {u}"`, 1)
+	b := smallMarket(t, map[string]string{"declaration.json": d, "rounding.json": `{"id":"xx/rounding/fat","versions":[{SOURCE,"quantities":["fat"],"ties":"up","bands":[{"below":"1 g","less than":"1 g"},{"nearest":"1 g"}]}]}`})
+	for fat, want := range map[string][]string{"0.9 g": {"contains less than 1 g"}, "1 g": {}} {
+		_, v, err := printedLine(run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"`+fat+`","PROCNT":"1 g","NACL":"1 g"}`, "")), "fat", "")
+		if err != nil || !slices.Equal(v.Alternatives, want) {
+			t.Errorf("%s: the law also allows %q, want %q", fat, v.Alternatives, want)
+		}
+	}
+}

@@ -19,11 +19,17 @@ type labelCase struct {
 // A tableCase is what a case wants of the declaration.
 type tableCase struct {
 	Basis     string
-	Declared  map[string]struct{ Text, Percent, Presence string }
+	Declared  map[string]printedCase
 	Absent    []string          // quantities that no line may declare
 	LeftOut   map[string]string `json:"left_out"`             // quantity -> part of what the label then states
 	States    []string          `json:"table_statements"`     // parts of statements that stand with the table
 	StatesNot []string          `json:"not_table_statements"` // parts that no such statement may hold
+}
+
+// A printedCase is what a line prints.
+type printedCase struct {
+	Text, Percent, Presence string
+	Alternatives            []string // what the law allows too
 }
 
 // claimed are claims by their names, as a recipe asks for them.
@@ -52,6 +58,11 @@ func (c tableCase) look(t *testing.T, m check.Market) {
 		}
 		if want.Text != "" && value.Text != want.Text {
 			t.Errorf("%s prints %q, want %q (exact %v)", q, value.Text, want.Text, deref(value.Exact))
+		}
+		for _, a := range want.Alternatives {
+			if !slices.Contains(value.Alternatives, a) {
+				t.Errorf("%s may not print %q: %q", q, a, value.Alternatives)
+			}
 		}
 		if got := percentOf(value); want.Percent != "" && got != want.Percent {
 			t.Errorf("%s has per cent %q, want %q", q, got, want.Percent)

@@ -28,11 +28,15 @@ type lineState struct {
 
 // text writes what the line prints.
 func (l *lineState) text(p declare.Printed, u quantity.Unit, lang string) string {
-	shown := u.String()
+	return declare.Text(p, l.shown(u, lang), l.rule.Body.Number[lang])
+}
+
+// shown is the unit as the line prints it.
+func (l *lineState) shown(u quantity.Unit, lang string) string {
 	if l.line.ShownUnit != nil {
-		shown = l.line.ShownUnit.In(lang)
+		return l.line.ShownUnit.In(lang)
 	}
-	return declare.Text(p, shown, l.rule.Body.Number[lang])
+	return u.String()
 }
 
 // openColumns settles the bases. A liquid is declared per 100 mL where a solid is per 100 g.

@@ -86,6 +86,10 @@ func (v *view) print(out *Value, l *lineState, printed outcomes, amount bool, u 
 	for _, a := range printed[0].Alternatives {
 		out.Alternatives = append(out.Alternatives, format(lang, a))
 	}
+	if f := l.rule.Body.Number[lang]; first.LessThan && f.OrLessThan != "" {
+		f.LessThan = f.OrLessThan
+		out.Alternatives = append(out.Alternatives, declare.Text(first, l.shown(u, lang), f))
+	}
 	out.Texts = v.otherTexts(l, first, u, out.Text)
 }
 

@@ -70,8 +70,9 @@ type CountBand struct {
 type Number struct {
 	Decimal       string `json:"decimal"`
 	TrailingZeros bool   `json:"trailing zeros,omitzero"`
-	Unit          string `json:"unit"`      // "{} g" with {} for number and the unit following: "{n} {u}"
-	LessThan      string `json:"less than"` // "less than {n} {u}"
+	Unit          string `json:"unit"`                  // "{} g" with {} for number and the unit following: "{n} {u}"
+	LessThan      string `json:"less than"`             // "less than {n} {u}"
+	OrLessThan    string `json:"or less than,omitzero"` // another way the law allows, "contains less than {n} {u}"
 }
 
 // A Line is one line of a declaration.
