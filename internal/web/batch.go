@@ -77,6 +77,7 @@ func (x *exchange) stream(mediaType string, lines []numbered) {
 	h.Set("Content-Type", mediaType)
 	h.Add("Vary", "Accept, Accept-Encoding")
 	out := &counter{w: x.w}
+	defer func() { x.record.bytesOut = out.n }()
 	var to io.Writer = out
 	flush := func() {}
 	if takesGzip(x.r) {
@@ -89,7 +90,6 @@ func (x *exchange) stream(mediaType string, lines []numbered) {
 	}
 	x.w.WriteHeader(http.StatusOK)
 	x.started, x.record.status = true, http.StatusOK
-	defer func() { x.record.bytesOut = out.n }()
 	for _, l := range lines {
 		if errors.Is(x.r.Context().Err(), context.Canceled) {
 			return // nobody listens any more
