@@ -19,7 +19,7 @@ const rulesUsage = `Keeps rule sets in a store, from which the service takes the
 change, are tried and go back without new code.
 
 Usage: desk rules put  -store URL [FOLDER]    store the program's own set, or a folder's
-       desk rules list -store URL             what is stored, and what was in use when
+       desk rules list -store URL             what is stored, and the last 50 changes
        desk rules use  -store URL DIGEST      take a stored set into use
        desk rules use  -store URL -canary DIGEST -percent N [DIGEST]
                                               try one on a share of the requests
@@ -29,6 +29,9 @@ A set is stored under its digest, of which the beginning will do. It must pass
 lint to be stored and to come into use; whoever reads it checks it again.
 Nothing is overwritten or deleted. Exit status: 0 done; 2 not done.
 `
+
+// mostChanges bounds what list tells of the past: each is a request.
+const mostChanges = 50
 
 type rulesOptions struct {
 	store, canary string
@@ -136,7 +139,7 @@ func (c *call) listRules(o *rulesOptions, _ []string) error {
 		if err != nil {
 			return err
 		}
-		history, err := store.History(ctx, b)
+		history, err := store.History(ctx, b, mostChanges)
 		if err != nil {
 			return err
 		}

@@ -105,7 +105,7 @@ func TestALostAnswerCountsOnce(t *testing.T) {
 	if err != nil || p.Number != 3 || p.Digest != d[0] {
 		t.Errorf("%+v, %v", p, err)
 	}
-	if history, err := store.History(ctx, b); err != nil || len(history) != 3 || !lost.Load() {
+	if history, err := store.History(ctx, b, 100); err != nil || len(history) != 3 || !lost.Load() {
 		t.Errorf("%d entries, %v", len(history), err)
 	}
 }

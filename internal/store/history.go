@@ -34,12 +34,13 @@ func Current(ctx context.Context, b *blob.Bucket) (*Pointer, error) {
 	return entry(ctx, b, numbers[len(numbers)-1])
 }
 
-// History is every entry, the oldest first.
-func History(ctx context.Context, b *blob.Bucket) ([]*Pointer, error) {
+// History is the newest entries, at most so many, the oldest of them first.
+func History(ctx context.Context, b *blob.Bucket, most int) ([]*Pointer, error) {
 	numbers, err := entries(ctx, b)
 	if err != nil {
 		return nil, err
 	}
+	numbers = numbers[max(0, len(numbers)-most):]
 	out := make([]*Pointer, len(numbers))
 	for i, n := range numbers {
 		if out[i], err = entry(ctx, b, n); err != nil {

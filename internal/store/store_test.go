@@ -105,9 +105,12 @@ func TestUseAndBack(t *testing.T) {
 		if p, err := store.Back(ctx, b, at); err != nil || p.Digest != d[0] || p.Restores != 1 {
 			t.Errorf("%+v, %v", p, err)
 		}
-		history, err := store.History(ctx, b)
+		history, err := store.History(ctx, b, 100)
 		if err != nil || len(history) != 7 || history[2].Digest != d[2] {
 			t.Errorf("%d entries, %v", len(history), err)
+		}
+		if newest, err := store.History(ctx, b, 2); err != nil || len(newest) != 2 || newest[0].Number != 6 {
+			t.Errorf("of the newest two: %+v, %v", newest, err)
 		}
 	})
 }
@@ -174,7 +177,7 @@ func TestWritersAtOnce(t *testing.T) {
 			}
 		}
 		list, err := store.List(ctx, b)
-		history, err2 := store.History(ctx, b)
+		history, err2 := store.History(ctx, b, 100)
 		if err != nil || err2 != nil || len(list) != 5 || len(history) != 10 {
 			t.Fatalf("%d sets, %d entries, %v, %v", len(list), len(history), err, err2)
 		}
@@ -204,7 +207,7 @@ func TestBackIsToldOfAnotherWriter(t *testing.T) {
 		})
 	}
 	wait.Wait()
-	history, err := store.History(ctx, b)
+	history, err := store.History(ctx, b, 100)
 	if err != nil {
 		t.Fatal(err)
 	}
