@@ -77,7 +77,7 @@ func (v *view) stays(f *rulebook.Simplified, q string) bool {
 
 // state writes what the label must then say, or may say.
 func (v *view) state(out *Simplified, f *rulebook.Simplified, named []string) {
-	if len(f.Says) == 0 {
+	if len(f.Says) == 0 || len(named) == 0 && len(f.Of) > 0 {
 		return
 	}
 	texts := map[string]string{}

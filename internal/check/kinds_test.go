@@ -387,3 +387,20 @@ func TestAnotherLessThan(t *testing.T) {
 		}
 	}
 }
+
+// A measured fact is the product's: of a reference food it is what the market assumes, or open.
+func TestMeasuredFactsAreTheProducts(t *testing.T) {
+	page := `{"jurisdiction":"xx","name":"X","languages":["en"],"editions":[],"assumed":[{"fact":"alcohol by volume","is":"0 %","why":"w"}],"unlisted_claims":null,"bases":[{"per":"100 g","presence":"mandatory"}],"gaps":[],"caution":"c"}`
+	b := smallMarket(t, map[string]string{"jurisdiction.json": page,
+		"claims.json": `{"id":"xx/claim/sober","versions":[{SOURCE,"name":{"en":"s"},"about":[],"condition":{"fact":"alcohol by volume","at most":"1.2 %"}}]},
+			{"id":"xx/claim/sour","versions":[{SOURCE,"name":{"en":"s"},"about":[],"condition":{"fact":"free acidity","at most":"1.2 %"}}]},
+			{"id":"xx/claim/against-sober","versions":[{SOURCE,"name":{"en":"a"},"about":[],"needs reference food":true,"condition":{"meets":"xx/claim/sober","subject":"reference food"}}]},
+			{"id":"xx/claim/against-sour","versions":[{SOURCE,"name":{"en":"a"},"about":[],"needs reference food":true,"condition":{"meets":"xx/claim/sour","subject":"reference food"}}]}`})
+	for claim, want := range map[string]string{"sober": "refused", "against-sober": "permitted", "sour": "refused", "against-sour": "undetermined"} {
+		m := run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"0 g"}`, `,"facts":{"alcohol by volume":"5 %","free acidity":"5 %"},"claims":[{"claim":"`+claim+`","against":"r"}],
+			"reference_foods":{"r":{"kind":"similar product","composition":{"per":"100 g","components":{"FAT":"4 g","PROCNT":"1 g","NACL":"0 g"}}}}`))
+		if got := m.Claims[0].Verdict; got != want {
+			t.Errorf("%s is %s, want %s", claim, got, want)
+		}
+	}
+}

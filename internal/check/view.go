@@ -151,13 +151,11 @@ func (v *view) Stated(name string) bool {
 	return ok
 }
 
-// Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted. Of another food than the product
-// nothing was measured.
+// Measured is a fact that is an amount: as stated, else as the market's rules assume, which is noted. What a recipe
+// states was measured of the product, not of another food.
 func (v *view) Measured(name string) (quantity.Ratio, bool) {
-	if v.subject != nil && v.subject != v.product {
-		return quantity.Ratio{}, false
-	}
-	if f, ok := v.c.recipe.Facts[name]; ok && f.Number != nil {
+	product := v.subject == nil || v.subject == v.product
+	if f, ok := v.c.recipe.Facts[name]; ok && f.Number != nil && product {
 		return f.Number.Ratio(), true
 	}
 	a, ok := v.assume(name)
