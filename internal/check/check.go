@@ -45,10 +45,7 @@ type checker struct {
 // Check judges a recipe. Faults are about the recipe or the request and point into the document ("/…") or name the
 // member of the request ("on", "in", "without").
 func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Faults) {
-	if q.Transition == "" {
-		q.Transition = rulebook.WhenRequired
-	}
-	c := &checker{recipe: r, book: book, request: q, refs: map[string]*rollup.Batch{}, laws: map[string]*rulebook.Law{}, shared: map[shared][]part{}}
+	c := newChecker(r, book, q)
 	if faults := c.accept(); len(faults) > 0 {
 		return nil, faults
 	}
@@ -57,7 +54,7 @@ func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Fa
 		return nil, faults
 	}
 	out := &Report{
-		Recipe: Identity{r.ID, r.Name, r.Digest}, Rules: RuleSet{book.Version, book.Digest}, Date: q.On, Transition: string(q.Transition),
+		Recipe: Identity{r.ID, r.Name, r.Digest}, Rules: RuleSet{book.Version, book.Digest}, Date: q.On, Transition: string(c.request.Transition),
 		Caution: Caution, Jurisdictions: []Market{}, Findings: []Finding{},
 	}
 	for _, f := range c.batch.Findings {
@@ -66,7 +63,7 @@ func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Fa
 	tags := map[string]bool{}
 	var markets []*market
 	for _, j := range c.request.In {
-		m := c.open(j, q.Transition)
+		m := c.open(j, c.request.Transition)
 		out.Jurisdictions = append(out.Jurisdictions, m.report(tags))
 		markets = append(markets, m)
 	}
@@ -75,6 +72,13 @@ func Check(r *recipe.Recipe, book *rulebook.Book, q Request) (*Report, recipe.Fa
 	}
 	out.Composition = c.contents(tags)
 	return out, nil
+}
+
+func newChecker(r *recipe.Recipe, book *rulebook.Book, q Request) *checker {
+	if q.Transition == "" {
+		q.Transition = rulebook.WhenRequired
+	}
+	return &checker{recipe: r, book: book, request: q, refs: map[string]*rollup.Batch{}, laws: map[string]*rulebook.Law{}, shared: map[shared][]part{}}
 }
 
 func name(ingredient string) string {

@@ -38,7 +38,7 @@ type Member struct {
 }
 
 // Changes lists the rules of which another version holds in one law than in the other, in the order of the files; rules
-// that end stand last. The laws are two of one rule set and one market.
+// that end stand last. The laws are two of one market, of one rule set or of two; versions that read alike are the same.
 func Changes(was, is *Law) []Change {
 	type side struct {
 		head *Head
@@ -52,7 +52,7 @@ func Changes(was, is *Law) []Change {
 		switch old, ok := before[id]; {
 		case !ok:
 			put(Change{Kind: kind, ID: id, Effect: Begins, Is: h}, nil, nil)
-		case old.head != h:
+		case old.head != h && !alike(old.head, h, old.body, body):
 			put(Change{Kind: kind, ID: id, Effect: Replaced, Was: old.head, Is: h}, old.body, body)
 		}
 		delete(before, id)
@@ -63,6 +63,11 @@ func Changes(was, is *Law) []Change {
 		}
 	})
 	return out
+}
+
+// alike tells whether two versions say the same in every member.
+func alike(was, is *Head, old, now any) bool {
+	return len(members(was, is)) == 0 && len(members(old, now)) == 0
 }
 
 // finish compares the bodies, where there are two, and says what was found.
