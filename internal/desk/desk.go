@@ -51,6 +51,7 @@ func verbs() []verb {
 		{"check", "check recipes against the rules of markets", checkUsage, runCheck, func() *flags { return checkFlags(&checkOptions{}) }},
 		{"coverage", "tell what the rule set covers and what it lacks", coverageUsage, runCoverage, func() *flags { return coverageFlags(&coverageOptions{}) }},
 		{"foods", "search the open food table, or show one food of it", foodsUsage, runFoods, func() *flags { return foodsFlags(&foodsOptions{}) }},
+		{"recheck", "tell what a change of date or rules does to stored recipes", recheckUsage, runRecheck, func() *flags { return recheckFlags(&recheckOptions{}) }},
 		{"rules", "keep rule sets in a store: put, list, use, back", rulesUsage, runRules, func() *flags { return rulesFlags(&rulesOptions{}) }},
 		{"serve", "answer over HTTP on this machine", serveUsage, runServe, func() *flags { return serveFlags(&serveOptions{}) }},
 	}

@@ -33,16 +33,27 @@ func (c *call) rules() (*rulebook.Book, error) {
 	return book, nil
 }
 
-func (c *call) load() (*rulebook.Book, error) {
+func (c *call) load() (*rulebook.Book, error) { return c.loadFrom(c.place) }
+
+// rulesAt loads the rule set of a place.
+func (c *call) rulesAt(place string) (*rulebook.Book, error) {
+	b, err := c.loadFrom(place)
+	if err != nil {
+		return nil, fmt.Errorf("the rule set %s cannot be used:\n%w", place, err)
+	}
+	return b, nil
+}
+
+func (c *call) loadFrom(place string) (*rulebook.Book, error) {
 	switch {
-	case c.place == "":
+	case place == "":
 		return c.env.Rules()
-	case bucket.IsURL(c.place):
+	case bucket.IsURL(place):
 		ctx, cancel := context.WithTimeout(context.Background(), storeTime)
 		defer cancel()
-		return bucket.Load(ctx, c.place)
+		return bucket.Load(ctx, place)
 	}
-	return rulebook.Load(os.DirFS(c.place))
+	return rulebook.Load(os.DirFS(place))
 }
 
 // withStore opens the store of a URL for one piece of work.

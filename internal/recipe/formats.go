@@ -162,7 +162,7 @@ func parseClaimName(s string) (string, error) {
 }
 
 func parseFood(s string) (string, error) {
-	return matching(s, foodName, `a food of an open table, such as "sr:20038"`)
+	return matching(s, foodName, `a food of an open table, such as "sr:20038", or an ingredient of your own store, such as "own:baking-fat"`)
 }
 
 func parseRetention(s string) (string, error) {

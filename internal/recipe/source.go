@@ -1,6 +1,8 @@
 package recipe
 
 import (
+	"strings"
+
 	"github.com/shopspring/decimal"
 
 	"gramlaw/internal/quantity"
@@ -64,7 +66,7 @@ func (d *decoder) part(at int32, level int) *Part {
 
 func (d *decoder) food(at int32) string {
 	name, ok := scalar(d, at, parseFood)
-	if ok && !foodExists(name) {
+	if ok && !strings.HasPrefix(name, ownPrefix) && !foodExists(name) {
 		d.fault(at, UnknownFood, "no open table in use has the food "+quote(name))
 	}
 	return name

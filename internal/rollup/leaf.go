@@ -2,6 +2,7 @@ package rollup
 
 import (
 	"fmt"
+	"strings"
 
 	"github.com/shopspring/decimal"
 
@@ -16,6 +17,9 @@ func (b *Batch) leaf(in *recipe.Ingredient, mass quantity.Ratio, path string) (*
 	switch {
 	case in.Food != "":
 		f, err := food.Find(in.Food)
+		if strings.HasPrefix(in.Food, "own:") {
+			return nil, &Fault{in.Pointer + "/food", "own-food", in.Food + " is an ingredient of the maker's own, which only a re-check over a store of recipes can look up"}
+		}
 		if err != nil {
 			return nil, &Fault{in.Pointer + "/food", "unknown-food", err.Error()}
 		}
