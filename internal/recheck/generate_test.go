@@ -27,12 +27,16 @@ func generated(n int) []byte {
 	}
 	claims := []string{"fat-low", "saturated-fat-low", "sugars-low", "fibre-source", "protein-source", "trans-fat-free", "omega-3-source", "energy-low"}
 	rnd.Shuffle(len(claims), func(i, j int) { claims[i], claims[j] = claims[j], claims[i] })
-	asked := []any{}
+	var asked []any
 	for _, c := range claims[:rnd.IntN(4)] {
 		asked = append(asked, map[string]any{"claim": c})
 	}
-	doc, err := json.Marshal(map[string]any{"id": fmt.Sprint("product-", n), "name": fmt.Sprint("Product ", n), "ingredients": in, "claims": asked,
-		"serving": map[string]any{"default": map[string]any{"amount": fmt.Sprintf("%d g", 15+rnd.IntN(200))}}, "reference_amount": map[string]any{"default": "55 g"}, "state": map[string]any{"default": "solid"}})
+	recipe := map[string]any{"id": fmt.Sprint("product-", n), "name": fmt.Sprint("Product ", n), "ingredients": in,
+		"serving": map[string]any{"default": map[string]any{"amount": fmt.Sprintf("%d g", 15+rnd.IntN(200))}}, "reference_amount": map[string]any{"default": "55 g"}, "state": map[string]any{"default": "solid"}}
+	if len(asked) > 0 {
+		recipe["claims"] = asked
+	}
+	doc, err := json.Marshal(recipe)
 	if err != nil {
 		panic(err)
 	}
