@@ -12,6 +12,7 @@ var Codes = []recipe.CodeRule{
 	{Code: "claim-twice", Says: "a claim is asked for by its words and by its name"},
 	{Code: "over-100", Says: "an ingredient holds more than 100 g of a component in 100 g"},
 	{Code: "no-mass", Says: "the finished food, or a part of it, has no mass left"},
+	{Code: "own-food", Says: "an ingredient is one of a store of recipes, which a single check does not read"},
 	{Code: "volume-without-density", Says: "an amount is a volume, and the ingredient has no density"},
 	{Code: "fat-loss-needs-fat", Says: "fat is lost in cooking, and how much comes in is not stated exactly"},
 	{Code: "fat-loss-too-large", Says: "more fat is lost than there is"},
