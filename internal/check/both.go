@@ -20,9 +20,13 @@ type Pair struct {
 	LawWas, LawIs *rulebook.Law
 }
 
-// Both checks a recipe on two sides, in the markets whose laws differ, and in no other. The composition is computed once where both sides
-// compute it alike. In a request only In, Transition and Without count. Faults are those of Check, on the first side that has any.
-func Both(r *recipe.Recipe, was, is Side, q Request, differ func(was, is *rulebook.Law) bool) ([]Pair, recipe.Faults) {
+// A Touch tells of a rule's identifier whether its result can differ between two laws; nil is all of them.
+type Touch func(id string) bool
+
+// Both checks a recipe on two sides, in the markets whose laws differ, and in no other; of these it leaves out the lines and the claims nobody
+// asked for that no difference touches. The composition is computed once where both sides compute it alike. In a request only In, Transition
+// and Without count. Faults are those of Check, on the first side that has any.
+func Both(r *recipe.Recipe, was, is Side, q Request, differ func(was, is *rulebook.Law) (bool, Touch)) ([]Pair, recipe.Faults) {
 	a, faults := start(r, was, q)
 	if len(faults) > 0 {
 		return nil, faults
@@ -32,10 +36,14 @@ func Both(r *recipe.Recipe, was, is Side, q Request, differ func(was, is *rulebo
 		return nil, faults
 	}
 	var out []Pair
+	var touches []Touch
 	for _, j := range a.request.In {
 		one, two := a.open(j, a.request.Transition), b.open(j, b.request.Transition)
-		if differ(one.law, two.law) {
-			out = append(out, Pair{Jurisdiction: j, LawWas: one.law, LawIs: two.law})
+		if differs, touch := differ(one.law, two.law); differs {
+			if one.asksTouched(touch) || two.asksTouched(touch) {
+				touch = nil // what a claim brings can reach everything
+			}
+			out, touches = append(out, Pair{Jurisdiction: j, LawWas: one.law, LawIs: two.law}), append(touches, touch)
 		}
 	}
 	if len(out) == 0 {
@@ -51,9 +59,28 @@ func Both(r *recipe.Recipe, was, is Side, q Request, differ func(was, is *rulebo
 	}
 	for i := range out {
 		p := &out[i]
-		p.Was, p.Is = a.open(p.Jurisdiction, a.request.Transition).judge(), b.open(p.Jurisdiction, b.request.Transition).judge()
+		p.Was, p.Is = a.judge(p.Jurisdiction, touches[i]), b.judge(p.Jurisdiction, touches[i])
 	}
 	return out, nil
+}
+
+func (c *checker) judge(j string, touch Touch) Market {
+	m := c.open(j, c.request.Transition)
+	m.touch = touch
+	return m.judge()
+}
+
+// asksTouched tells whether the recipe asks for a claim that can differ.
+func (m *market) asksTouched(touch Touch) bool {
+	return touch != nil && slices.ContainsFunc(m.asked(), func(a recipe.Claim) bool {
+		rule, ok := m.find(&a)
+		return a.Text != "" || ok && touch(rule.ID)
+	})
+}
+
+// untouched tells whether a line, or a claim nobody asked for, is the same on both sides of a comparison.
+func (m *market) untouched(ids ...string) bool {
+	return m.touch != nil && !slices.ContainsFunc(ids, m.touch)
 }
 
 // start is a check that has rolled nothing yet.

@@ -162,7 +162,7 @@ func (m *market) alsoPermitted(asked []Claim) []Candidate {
 	known := make([]decided, len(m.law.Needs))
 	for i := range m.law.Offers {
 		o := &m.law.Offers[i]
-		if !v.meetsAll(o.Needs, known) || o.Body.BarredIf != nil && v.truth(o.Body.BarredIf) != quantity.No {
+		if m.untouched(o.ID) || !v.meetsAll(o.Needs, known) || o.Body.BarredIf != nil && v.truth(o.Body.BarredIf) != quantity.No {
 			continue
 		}
 		if slices.ContainsFunc(asked, func(a Claim) bool { return a.Claim == o.ID }) {

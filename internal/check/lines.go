@@ -231,6 +231,9 @@ func (m *market) table() Table {
 	}
 	v := m.as(m.product)
 	for _, l := range m.order {
+		if rounding, _ := m.law.RoundingOf(l.line.Quantity); m.untouched(rounding.ID, l.rule.ID) {
+			continue
+		}
 		if v.open(l) {
 			q, _ := v.subject.Quantity(l.line.Quantity)
 			t.NotKnown = append(t.NotKnown, OpenLine{l.line.Quantity, v.term(l), v.needs(q.Variables())})

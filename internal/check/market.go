@@ -30,6 +30,7 @@ type market struct {
 	about   map[string]bool // subjects of the claims that stand
 	truths  map[*rulebook.Condition]quantity.Truth
 	eaters  string // population, once asked
+	touch   Touch  // of a comparison; nil where all is judged
 	lines   map[string]*lineState
 	order   []*lineState
 	columns []column

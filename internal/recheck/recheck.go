@@ -29,6 +29,7 @@ type between struct {
 	changes []rulebook.Change
 	changed map[string]bool
 	rests   [2]map[string][]string // before, after
+	touched map[string]bool        // changed, or resting on what is; nil where a change can reach everything
 }
 
 // New plans a comparison in the markets of In, none of which may be missing in one of the sets; without In, in all that both sets have.
@@ -88,8 +89,9 @@ func (p *Plan) Recipe(r *recipe.Recipe) (*Outcome, recipe.Faults) {
 	if q.In = p.markets(r.Jurisdictions); len(q.In) == 0 {
 		return out, nil
 	}
-	pairs, faults := check.Both(r, p.was, p.is, q, func(was, is *rulebook.Law) bool {
-		return len(p.practice) > 0 || len(p.between(was, is).changes) > 0
+	pairs, faults := check.Both(r, p.was, p.is, q, func(was, is *rulebook.Law) (bool, check.Touch) {
+		b := p.between(was, is)
+		return len(p.practice) > 0 || len(b.changes) > 0, p.touch(b)
 	})
 	if len(faults) > 0 {
 		return nil, faults
@@ -103,7 +105,41 @@ func (p *Plan) Recipe(r *recipe.Recipe) (*Outcome, recipe.Faults) {
 	return out, nil
 }
 
-// Rules lists the changed rules of a market that recipes met so far, in the order of the files.
+// touch tells which rules can give another result.
+func (p *Plan) touch(b *between) check.Touch {
+	if len(p.practice) > 0 || b.touched == nil {
+		return nil
+	}
+	return func(id string) bool { return b.touched[id] }
+}
+
+// reached are the changed rules and all that rest on them, directly or not. Of two sets it is nil: their markets' own pages may differ; and where
+// what holds for the whole label has changed.
+func (b *between) reached(oneSet bool) map[string]bool {
+	if !oneSet || slices.ContainsFunc(b.changes, func(c rulebook.Change) bool { return slices.Contains(wholeLabel, c.Kind) }) {
+		return nil
+	}
+	above := map[string][]string{}
+	for _, rests := range b.rests {
+		for id, list := range rests {
+			for _, on := range list {
+				above[on] = append(above[on], id)
+			}
+		}
+	}
+	touched := map[string]bool{}
+	for todo := sortedKeys(b.changed); len(todo) > 0; {
+		id := todo[len(todo)-1]
+		todo = todo[:len(todo)-1]
+		if !touched[id] {
+			touched[id] = true
+			todo = append(todo, above[id]...)
+		}
+	}
+	return touched
+}
+
+// between is what differs between two laws, worked out once.
 func (p *Plan) between(was, is *rulebook.Law) *between {
 	key := [2]*rulebook.Law{was, is}
 	p.mu.RLock()
@@ -118,6 +154,7 @@ func (p *Plan) between(was, is *rulebook.Law) *between {
 	}
 	if len(b.changes) > 0 {
 		b.rests = [2]map[string][]string{was.Rests(), is.Rests()}
+		b.touched = b.reached(p.was.Book == p.is.Book)
 	}
 	p.mu.Lock()
 	p.laws[key] = b

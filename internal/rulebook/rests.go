@@ -84,12 +84,19 @@ func (r *rests) rounding(id string, b *Rounding) {
 	}
 	if b.Percent != nil {
 		r.conditions(id, b.Percent.ZeroIf)
+		for _, q := range b.Quantities {
+			r.reference(id, q)
+		}
 	}
 }
 
 func (r *rests) declaration(id string, b *Declaration) {
+	r.conditions(id, b.RequiredUnless)
 	for i := range b.Lines {
 		l := &b.Lines[i]
+		for j := range l.TermsIf {
+			r.conditions(id, l.TermsIf[j].If)
+		}
 		r.conditions(id, l.MandatoryIf, l.ForbiddenIf, l.LeaveOutIf, l.NoPercentIf, l.PercentIf, l.NoAmountIf)
 	}
 	for i := range b.Statements {
