@@ -20,6 +20,7 @@ func Walk(m *rulebook.Rules, visit Visit) {
 	each("serving", m.Serving, visit)
 	each("naming", m.Naming, visit)
 	each("conditions", m.Conditions, visit)
+	each("wording", m.Wordings, visit)
 }
 
 // Practice visits what practice presumes, in all markets.

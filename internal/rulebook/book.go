@@ -27,10 +27,15 @@ type Book struct {
 	Digest  string // "sha256:" over all files
 	markets map[string]*Rules
 
+	languages map[string]*Language // words, by language
+	concepts  Concepts
+
 	Presumptions []Rule[Presumption]
 	Origins      []Rule[Origin]
 
 	chosen chosen
+
+	Memo Memo // what others work out from the book once
 }
 
 // Rules are all rules of one market.
@@ -49,6 +54,7 @@ type Rules struct {
 	HealthClaims     []Rule[Claim]
 	Naming           []Rule[Naming]
 	Conditions       []Rule[Named]
+	Wordings         []Rule[Wording]
 }
 
 // Jurisdictions lists the markets of the set, sorted.

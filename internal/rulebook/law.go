@@ -55,9 +55,12 @@ type Law struct {
 	HealthClaims     List[Claim]
 	Naming           List[Naming]
 	Conditions       List[Named]
+	Wordings         List[Wording]
 
 	Offers []Offer      // claims that need no asking
 	Needs  []*Condition // what they need
+
+	Memo Memo // what others work out from the law once
 
 	roundingOf  map[string]int // quantity -> index in Roundings
 	referenceOf map[string]int
@@ -125,6 +128,7 @@ func (m *Rules) at(s *selection) *Law {
 	law.HealthClaims = active(s, m.HealthClaims)
 	law.Naming = active(s, m.Naming)
 	law.Conditions = active(s, m.Conditions)
+	law.Wordings = active(s, m.Wordings)
 	law.index()
 	return law
 }

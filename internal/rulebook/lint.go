@@ -84,7 +84,7 @@ func (l *loader) check() {
 	if l.book.Version == "" {
 		l.problem("set.json", "", "version", "is missing")
 	}
-	work := []func(*loader){(*loader).presumptions}
+	work := []func(*loader){(*loader).presumptions, (*loader).words}
 	for _, j := range l.book.Jurisdictions() {
 		work = append(work, func(own *loader) {
 			c := &checker{loader: own, j: j, m: l.book.markets[j]}
@@ -130,6 +130,7 @@ func (c *checker) market() {
 	c.claims()
 	c.limits()
 	c.naming()
+	c.wordings()
 	c.cycles()
 }
 

@@ -70,7 +70,7 @@ func Lint(fsys fs.FS) (*Book, []Problem) {
 }
 
 func (f Files) lint() (*Book, []Problem) {
-	l := &loader{book: &Book{markets: map[string]*Rules{}}}
+	l := &loader{book: &Book{markets: map[string]*Rules{}, languages: map[string]*Language{}}}
 	files := f.sorted()
 	l.book.Digest = digest(files)
 	l.decodeAll(files)
@@ -94,11 +94,11 @@ func (f Files) sorted() []ruleFile {
 	return out
 }
 
-// ReadFiles reads the files that belong to a set; words/ and what is no .json are passed over.
+// ReadFiles reads the files that belong to a set; what is no .json is passed over.
 func ReadFiles(fsys fs.FS) (Files, error) {
 	files, total := Files{}, 0
 	err := fs.WalkDir(fsys, ".", func(p string, d fs.DirEntry, err error) error {
-		if err != nil || d.IsDir() || path.Ext(p) != ".json" || strings.HasPrefix(p, "words/") {
+		if err != nil || d.IsDir() || path.Ext(p) != ".json" {
 			return err
 		}
 		info, err := d.Info()
@@ -170,7 +170,7 @@ func (l *loader) sideBySide(work []func(*loader)) {
 	}
 }
 
-// reader finds what reads a file by its place: set.json, practice/<kind>.json, <market>/jurisdiction.json or
+// reader finds what reads a file by its place: set.json, words/<language>.json, practice/<kind>.json, <market>/jurisdiction.json or
 // <market>/<kind>.json. It is nil, and the problem told, for a file that has no place.
 func (l *loader) reader(f ruleFile) func(*loader) {
 	dir, kind := path.Dir(f.name), strings.TrimSuffix(path.Base(f.name), ".json")
@@ -180,6 +180,8 @@ func (l *loader) reader(f ruleFile) func(*loader) {
 	case !plainName(dir) || path.Ext(f.name) != ".json" || !fs.ValidPath(f.name):
 		l.problem(f.name, "", "", "is not at <jurisdiction>/<kind>.json")
 		return nil
+	case dir == wordsFolder:
+		return l.book.readWords(f, kind)
 	case dir == practice:
 		return l.kind(f, kind, dir, l.book.tables())
 	}

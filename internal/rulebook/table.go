@@ -34,6 +34,7 @@ func (m *Rules) tables() []table {
 		&rows[Claim]{"health_claims", "health-claim", &m.HealthClaims},
 		&rows[Naming]{"naming", "naming", &m.Naming},
 		&rows[Named]{"conditions", "condition", &m.Conditions},
+		&rows[Wording]{"wording", "wording", &m.Wordings},
 	}
 }
 

@@ -19,6 +19,7 @@ func (l *Law) Each(visit Visit) {
 	visitEach("serving", l.Serving, visit)
 	visitEach("naming", l.Naming, visit)
 	visitEach("conditions", l.Conditions, visit)
+	visitEach("wording", l.Wordings, visit)
 }
 
 func visitEach[T any](kind string, l List[T], visit Visit) {
