@@ -18,6 +18,9 @@ const RecipeID = "urn:gramlaw:schema:recipe"
 // ReportID is the $id of the report schema.
 const ReportID = "urn:gramlaw:schema:report"
 
+// WordingID is the $id of the schema of answers about words.
+const WordingID = "urn:gramlaw:schema:wording"
+
 // Recipe is the text of recipe.schema.json.
 //
 //go:embed recipe.schema.json

@@ -23,7 +23,7 @@ func OpenAPI() ([]byte, error) {
 	if !ok {
 		return nil, fmt.Errorf("openapi.json: components have no schemas")
 	}
-	for _, name := range []string{"recipe", "report"} {
+	for _, name := range []string{"recipe", "report", "wording"} {
 		if err := bundle(into, name); err != nil {
 			return nil, err
 		}

@@ -13,13 +13,14 @@ import (
 
 // claims judges what was asked for, in two passes: verdicts first, then the statements that depend on which claims stand.
 func (m *market) claims() []Claim {
-	asked := m.asked()
+	asked := m.spoken(m.asked())
 	out := make([]Claim, len(asked))
 	views := make([]*view, len(asked))
 	bodies := make([]*rulebook.Claim, len(asked))
 	for i, a := range asked {
 		views[i] = m.as(m.product)
-		out[i], bodies[i] = m.verdict(a, views[i])
+		out[i], bodies[i] = m.verdict(a.Claim, views[i])
+		a.told(&out[i])
 		if bodies[i] != nil && out[i].Verdict != Refused {
 			m.stand(bodies[i])
 		}
@@ -115,7 +116,7 @@ func (m *market) verdict(a recipe.Claim, v *view) (Claim, *rulebook.Claim) {
 
 // find reads a claim by its shared name, or by words that equal a listed wording; a number in the words becomes the stated one.
 func (m *market) find(a *recipe.Claim) (rulebook.Active[rulebook.Claim], bool) {
-	if a.Text == "" {
+	if a.Claim != "" {
 		if c, ok := m.law.Claims.Get(a.Claim); ok {
 			return c, true
 		}

@@ -1,6 +1,11 @@
 package check
 
-import "gramlaw/internal/recipe"
+import (
+	"fmt"
+
+	"gramlaw/internal/recipe"
+	"gramlaw/internal/wording"
+)
 
 // Codes is the closed list of codes of faults that Check finds. Like recipe.Codes they are stable.
 var Codes = []recipe.CodeRule{
@@ -8,6 +13,10 @@ var Codes = []recipe.CodeRule{
 	{Code: "unknown-transition", Says: `the transition is neither "required" nor "newest"`},
 	{Code: "unknown-detail", Says: `the detail is not "contributions"`},
 	{Code: "unknown-market", Says: "the rule set has no such market"},
+	{Code: wording.CodeEmpty, Says: "there are no words to read"},
+	{Code: wording.CodeLong, Says: fmt.Sprintf("the words have more than %d characters", wording.MaxText)},
+	{Code: wording.CodeLanguage, Says: "the code is that of no language"},
+	{Code: wording.CodeWords, Says: "the words of the rule set cannot be used"},
 	{Code: "unknown-presumption", Says: "the rule set has no such presumption"},
 	{Code: "claim-twice", Says: "a claim is asked for by its words and by its name"},
 	{Code: "over-100", Says: "an ingredient holds more than 100 g of a component in 100 g"},

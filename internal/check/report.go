@@ -210,6 +210,8 @@ const (
 // A Claim is a claim asked for, judged.
 type Claim struct {
 	Asked      string      `json:"asked"`
+	Words      string      `json:"words,omitzero"`   // the part of the words asked for that is this claim, where they were read
+	Matched    string      `json:"matched,omitzero"` // how they were matched
 	Claim      string      `json:"claim,omitzero"`
 	Name       string      `json:"name,omitzero"`
 	Verdict    string      `json:"verdict"`

@@ -9,6 +9,11 @@ import (
 	"gramlaw/internal/rulebook"
 )
 
+// A Namer names quantities in words.
+type Namer interface {
+	Name(quantity string) string
+}
+
 func quote(s string) string { return "“" + s + "”" }
 
 func list(words []string) string {
@@ -32,7 +37,7 @@ func basisName(p rulebook.Per) string {
 }
 
 // compareSays writes a comparison in words: "saturated fat at most 1 g per reference amount".
-func compareSays(c *rulebook.Condition, per string, x Context) string {
+func compareSays(c *rulebook.Condition, per string, x Namer) string {
 	var names []string
 	for _, q := range slices.Sorted(maps.Keys(c.Of)) {
 		name := x.Name(q)
@@ -77,7 +82,7 @@ func compareSays(c *rulebook.Condition, per string, x Context) string {
 }
 
 // atomSays writes a condition that is no comparison in words.
-func atomSays(c *rulebook.Condition, x Context) string {
+func atomSays(c *rulebook.Condition, x Namer) string {
 	switch c.Op {
 	case rulebook.OpDeclared:
 		return declaredSays(c, x)
@@ -124,7 +129,7 @@ func factSays(c *rulebook.Condition) string {
 	return c.Name + " " + string(c.Relation) + " " + c.Threshold.String()
 }
 
-func declaredSays(c *rulebook.Condition, x Context) string {
+func declaredSays(c *rulebook.Condition, x Namer) string {
 	if c.Is == "" {
 		return x.Name(c.Name) + " stands in the declaration"
 	}

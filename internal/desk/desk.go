@@ -54,6 +54,7 @@ func verbs() []verb {
 		{"recheck", "tell what a change of date or rules does to stored recipes", recheckUsage, runRecheck, func() *flags { return recheckFlags(&recheckOptions{}) }},
 		{"rules", "keep rule sets in a store: put, list, use, back", rulesUsage, runRules, func() *flags { return rulesFlags(&rulesOptions{}) }},
 		{"serve", "answer over HTTP on this machine", serveUsage, runServe, func() *flags { return serveFlags(&serveOptions{}) }},
+		{"wording", "tell what words on a pack are in law", wordingUsage, runWording, func() *flags { return wordingFlags(&wordingOptions{}) }},
 	}
 }
 

@@ -156,7 +156,7 @@ func TestPutFindsABrokenSet(t *testing.T) {
 func TestPutLeavesOtherFilesOut(t *testing.T) {
 	b := open(t, "mem://")
 	one := set("1")
-	one["words/en.json"] = &fstest.MapFile{Data: []byte(`{}`)}
+	one["words/README.md"] = &fstest.MapFile{Data: []byte("no rule")}
 	one[".env"] = &fstest.MapFile{Data: []byte("secret")}
 	book, err := store.Put(ctx, b, one)
 	if err != nil {

@@ -70,12 +70,20 @@ func (x *exchange) order(doc []byte) (*order, *Problem) {
 	if len(faults) > 0 {
 		return nil, faultyDocument(append(faults, o.place(o.request.Faults(book))...))
 	}
-	if o.rules != "" && o.rules != book.Digest {
-		p := problem(notLoaded, "The rule set "+o.rules+" is not loaded.")
-		p.Loaded = book.Digest
+	if p := x.pinned(o.rules); p != nil {
 		return nil, p
 	}
 	return o, nil
+}
+
+// pinned asks for the rule set that a request pins.
+func (x *exchange) pinned(digest string) *Problem {
+	if digest == "" || digest == x.rules.Book.Digest {
+		return nil
+	}
+	p := problem(notLoaded, "The rule set "+digest+" is not loaded.")
+	p.Loaded = x.rules.Book.Digest
+	return p
 }
 
 // place points faults of a check into the document that was sent.

@@ -116,6 +116,12 @@ func (e *envelope) fault(pointer, code, format string, args ...any) {
 // read turns members into an order.
 func (e *envelope) read() (*order, recipe.Faults) {
 	o := &order{within: "/recipe"}
+	e.each(func(m member, at string) { e.take(o, m, at) })
+	return o, e.faults
+}
+
+// each gives every member with its pointer, and tells members that stand twice and where reading stopped.
+func (e *envelope) each(take func(m member, at string)) {
 	seen := map[string]bool{}
 	for _, m := range e.members {
 		at := "/" + pointerToken(m.name)
@@ -124,21 +130,23 @@ func (e *envelope) read() (*order, recipe.Faults) {
 			e.fault(at, recipe.DuplicateName, "the object has the member %s twice; keep one", quote(m.name))
 		case m.broken && m.name != "recipe":
 		default:
-			e.take(o, m, at)
+			take(m, at)
 		}
 		seen[m.name] = true
 		if len(e.faults) > recipe.MaxFaults {
-			return o, e.faults
+			return
 		}
 	}
 	if e.broken != nil && !e.stopped() {
 		e.faults = append(e.faults, *e.broken)
 	}
-	return o, e.faults
 }
 
 // stopped tells whether the recipe's own faults say already where reading ended.
 func (e *envelope) stopped() bool {
+	if len(e.members) == 0 {
+		return false
+	}
 	last := e.members[len(e.members)-1]
 	return last.broken && last.name == "recipe" && len(e.faults) > 0
 }

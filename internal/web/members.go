@@ -15,14 +15,15 @@ import (
 
 // text reads a text that says something.
 func (e *envelope) text(m member, at string) string {
-	s, ok := e.unquote(m.value, at)
+	s, ok := e.unquote(m.value, at, maxNameText)
 	if ok && s == "" {
 		e.fault(at, recipe.Empty, "something is wanted here; leave the member out otherwise")
 	}
 	return s
 }
 
-func (e *envelope) unquote(v jsontext.Value, at string) (string, bool) {
+// unquote reads a text of so many bytes at most.
+func (e *envelope) unquote(v jsontext.Value, at string, most int) (string, bool) {
 	switch v.Kind() {
 	case '"':
 	case 'n':
@@ -37,8 +38,8 @@ func (e *envelope) unquote(v jsontext.Value, at string) (string, bool) {
 	case err != nil || !utf8.Valid(b):
 		e.fault(at, recipe.BadText, "the text is not valid UTF-8, or escapes half of a surrogate pair")
 		return "", false
-	case len(b) > maxNameText:
-		e.fault(at, recipe.StringTooLong, "the text has more than %d bytes", maxNameText)
+	case len(b) > most:
+		e.fault(at, recipe.StringTooLong, "the text has more than %d bytes", most)
 		return "", false
 	}
 	return string(b), true
@@ -73,7 +74,7 @@ func (e *envelope) texts(m member, at string) []string {
 }
 
 func (e *envelope) name(list []string, raw jsontext.Value, at string) []string {
-	s, ok := e.unquote(raw, at)
+	s, ok := e.unquote(raw, at, maxNameText)
 	switch {
 	case !ok:
 		return list
@@ -87,7 +88,7 @@ func (e *envelope) name(list []string, raw jsontext.Value, at string) []string {
 
 // digest reads the digest of a rule set.
 func (e *envelope) digest(m member, at string) string {
-	s, ok := e.unquote(m.value, at)
+	s, ok := e.unquote(m.value, at, maxNameText)
 	if !ok {
 		return ""
 	}

@@ -66,6 +66,7 @@ const (
 	codeRepeatedParameter = "repeated-parameter"
 	codeMissingParameter  = "missing-parameter"
 	codeBadQuery          = "bad-query"
+	codeTwoProducts       = "two-products"
 )
 
 func ownCodes() []recipe.CodeRule {
@@ -74,6 +75,7 @@ func ownCodes() []recipe.CodeRule {
 		{Code: codeRepeatedParameter, Says: "the query has the same parameter twice"},
 		{Code: codeMissingParameter, Says: "the query lacks a parameter that must be there"},
 		{Code: codeBadQuery, Says: "the query cannot be read"},
+		{Code: codeTwoProducts, Says: "a recipe and a food are given; one product is judged"},
 	}
 }
 

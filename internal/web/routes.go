@@ -25,6 +25,7 @@ func routes() []route {
 	return []route{
 		{pattern: "/v1/check", post: postCheck},
 		{pattern: "/v1/check/batch", post: postBatch},
+		{pattern: "/v1/wording", post: postWording},
 		{pattern: "/v1/rules", get: getRules},
 		{pattern: "/v1/rules/{jurisdiction}", get: getMarket},
 		{pattern: "/v1/rules/{jurisdiction}/changes", get: getChanges},

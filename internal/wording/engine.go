@@ -63,23 +63,25 @@ const (
 	CodeLong     = "text-too-long"
 	CodeBadText  = "bad-text"
 	CodeLanguage = "unknown-language"
+	CodeWords    = "words-unusable" // of a rule set
 )
 
-// Accept tells why a text in a language is not read; nil where it is. A language that exists and whose words the book does not know is no
-// fault: it is Unsupported. An empty one is English.
-func (e *Engine) Accept(text, code string) *Fault {
+// Faults tells why a text in a language is not read; none where it is. A language that exists and whose words the book does not know is no
+// fault: see Supports. An empty one is English.
+func (e *Engine) Faults(text, code string) []*Fault {
+	var out []*Fault
 	switch n := utf8.RuneCountInString(text); {
 	case !utf8.ValidString(text):
-		return &Fault{CodeBadText, "the text is not valid UTF-8", "text"}
+		out = append(out, &Fault{CodeBadText, "the text is not valid UTF-8", "text"})
 	case strings.TrimSpace(text) == "":
-		return &Fault{CodeEmpty, "words are wanted, and none are given", "text"}
+		out = append(out, &Fault{CodeEmpty, "words are wanted, and none are given", "text"})
 	case n > MaxText:
-		return &Fault{CodeLong, fmt.Sprintf("the text has %d characters; at most %d are read", n, MaxText), "text"}
+		out = append(out, &Fault{CodeLong, fmt.Sprintf("the text has %d characters; at most %d are read", n, MaxText), "text"})
 	}
 	if _, ok := Base(code); !ok {
-		return &Fault{CodeLanguage, fmt.Sprintf("%q is no language; write a code such as en or fr", clip(code)), "language"}
+		out = append(out, &Fault{CodeLanguage, fmt.Sprintf("%q is no language; write a code such as en or fr", clip(code)), "language"})
 	}
-	return nil
+	return out
 }
 
 // Base is the language of a tag, without region: "fr" of "fr-CA". It reports false for what is no language. None is English.
@@ -106,8 +108,8 @@ func (e *Engine) Languages() []string { return e.book.Languages() }
 
 // Read gives the frames of a text, in its order. It knows no law. The error is a *Fault; a language without words gives no frames.
 func (e *Engine) Read(text, code string) ([]Frame, error) {
-	if f := e.Accept(text, code); f != nil {
-		return nil, f
+	if f := e.Faults(text, code); len(f) > 0 {
+		return nil, f[0]
 	}
 	base, _ := Base(code)
 	l := e.languages[base]

@@ -33,8 +33,8 @@ func (e *Engine) Covers(law *rulebook.Law, code string) bool {
 // Judge gives the readings of a text in a law, in its order. The error is a *Fault; words of a language that the law or the book does not
 // cover (see Covers) give no reading.
 func (e *Engine) Judge(law *rulebook.Law, text, code string) ([]Reading, error) {
-	if f := e.Accept(text, code); f != nil {
-		return nil, f
+	if f := e.Faults(text, code); len(f) > 0 {
+		return nil, f[0]
 	}
 	if !e.Covers(law, code) {
 		return nil, nil
