@@ -72,6 +72,7 @@ type RelationWords struct {
 // PatternWords are patterns without a result of their own.
 type PatternWords struct {
 	Patterns []string `json:"patterns"`
+	Behind   []string `json:"behind,omitzero"` // of a comparison: relations that it must stand right behind
 	Source   Source   `json:"source"`
 }
 

@@ -9,6 +9,7 @@ import (
 // whose claim the law lists decides.
 type Wording struct {
 	Relations  []string `json:"relations,omitzero"`  // frames with one of these relations
+	Things     bool     `json:"things,omitzero"`     // frames about what is no nutrient, whatever the relation; other rules take none of them
 	Components []string `json:"components,omitzero"` // about one of these; none is any
 	Functions  []string `json:"functions,omitzero"`  // of one of these functions of the body; none is any
 	Forms      []string `json:"forms,omitzero"`      // said in one of these ways; none is any
@@ -54,8 +55,8 @@ func (l *Law) Page() *Wording {
 func (c *checker) wordings() {
 	bodies(c.m.Wordings, func(id, field string, w *Wording) {
 		bad := func(f, format string, args ...any) { c.bad("wording", id, field+f, format, args...) }
-		if page := len(w.Languages) > 0; page == (len(w.Relations) > 0) {
-			bad("", "is about relations, or about all words of the market")
+		if page := len(w.Languages) > 0; page == (len(w.Relations) > 0 || w.Things) {
+			bad("", "is about relations, about things, or about all words of the market")
 		} else if page {
 			c.wordingPage(bad, w)
 			return

@@ -178,7 +178,7 @@ func TestRecords(t *testing.T) {
 		want any
 	}{
 		{logged[0], "msg", "request"}, {logged[0], "request_id", "one"}, {logged[0], "route", "/v1/check"}, {logged[0], "status", 200.0}, {logged[0], "milliseconds", 5.0},
-		{logged[0], "recipes", 1.0}, {logged[0], "verdicts", map[string]any{"refused": 1.0, "unread": 1.0}}, {logged[0], "refusals", map[string]any{"us/claim/fat-low": 1.0}},
+		{logged[0], "recipes", 1.0}, {logged[0], "verdicts", map[string]any{"refused": 1.0, "not-listed": 1.0}}, {logged[0], "refusals", map[string]any{"us/claim/fat-low": 1.0}},
 		{logged[0], "version", "test"}, {logged[0], "rules_digest", book.Digest}, {logged[0], "rules_version", book.Version},
 		{logged[1], "status", 422.0}, {logged[1], "problem", "/problems/faulty-document"}, {logged[1], "faults", map[string]any{"unknown-member": 2.0, "wrong-type": 1.0, "missing-member": 1.0}},
 		{logged[2], "route", "none"}, {logged[2], "faults", map[string]any{"/problems/not-found": 1.0}},

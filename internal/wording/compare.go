@@ -8,8 +8,8 @@ import (
 // compare gives the frames before a comparison, or else those after it, the food compared with.
 func (r *reader) compare(frames []Frame) []Frame {
 	for i := 0; i < len(r.tokens); i++ {
-		_, end := r.compares.longest(r.ids, i)
-		if end == 0 || slices.ContainsFunc(frames, func(f Frame) bool { return f.from <= i && i < f.upTo }) {
+		end := r.comparing(frames, i)
+		if end == 0 {
 			continue
 		}
 		before, after := r.around(frames, i)
@@ -24,6 +24,26 @@ func (r *reader) compare(frames []Frame) []Frame {
 		i = max(end, upTo) - 1
 	}
 	return frames
+}
+
+// comparing is where words end that begin a comparison at a token; 0 where none do, or where another pattern has read them.
+func (r *reader) comparing(frames []Frame, at int) int {
+	means, end := r.compares.longest(r.ids, at)
+	if end == 0 {
+		return 0
+	}
+	c, behind := r.comparisons[means], false
+	for i := range frames {
+		f := &frames[i]
+		if f.from <= at && at < f.upTo {
+			return 0
+		}
+		behind = behind || f.upTo == at && slices.Contains(c.behind, f.Relation)
+	}
+	if len(c.behind) > 0 && !behind {
+		return 0
+	}
+	return end - c.ahead
 }
 
 // around lists the frames of a sentence before a token and behind it that compare with nothing yet.

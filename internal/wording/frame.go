@@ -63,6 +63,9 @@ func (r *reader) spread(m *match, rule rule) []Frame {
 		for _, name := range m.names {
 			out = append(out, f.about(name, r.isThing[name]))
 		}
+		if own := rule.component; own != "" && !slices.Contains(m.names, own) { // the end of a compound that others share
+			out = append(out, f.about(own, false))
+		}
 	default:
 		out = append(out, f)
 	}

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"maps"
 	"slices"
+	"strings"
 
 	"gramlaw/internal/rulebook"
 )
@@ -15,6 +16,12 @@ type rule struct {
 	denies, decoy, health              bool
 }
 
+// A comparison is what begins one: how many of its tokens belong to the food's name, and the relations that it must stand right behind.
+type comparison struct {
+	ahead  int
+	behind []string
+}
+
 // A phrasebook finds phrases and tells what they mean.
 type phrasebook struct {
 	*trie
@@ -23,28 +30,29 @@ type phrasebook struct {
 
 // A language is a language's words, compiled. It is never changed after compile.
 type language struct {
-	code       string
-	decimal    rune
-	vocabulary vocabulary
-	names      *phrasebook // of components, and of things
-	isThing    map[string]bool
-	before     *phrasebook // short forms of components before others
-	after      *phrasebook
-	units      *phrasebook
-	numbers    *phrasebook
-	bases      *phrasebook
-	functions  *phrasebook
-	joins      *phrasebook // conjunctions
-	joinOver   map[uint32]bool
-	denials    *phrasebook
-	denyOver   map[uint32]bool
-	compares   *phrasebook
-	cues       *phrasebook
-	sets       []*phrasebook // by slot, from firstSet on
-	setSlots   map[string]slot
-	patterns   *trie
-	rules      []rule
-	relations  map[string][]string // the first pattern of a relation, to name it
+	code        string
+	decimal     rune
+	vocabulary  vocabulary
+	names       *phrasebook // of components, and of things
+	isThing     map[string]bool
+	before      *phrasebook // short forms of components before others
+	after       *phrasebook
+	units       *phrasebook
+	numbers     *phrasebook
+	bases       *phrasebook
+	functions   *phrasebook
+	joins       *phrasebook // conjunctions
+	joinOver    map[uint32]bool
+	denials     *phrasebook
+	denyOver    map[uint32]bool
+	compares    *phrasebook
+	comparisons []comparison
+	cues        *phrasebook
+	sets        []*phrasebook // by slot, from firstSet on
+	setSlots    map[string]slot
+	patterns    *trie
+	rules       []rule
+	relations   map[string][]string // the first pattern of a relation, to name it
 }
 
 // compiling gathers a language and what is wrong with it.
@@ -112,7 +120,22 @@ func (c *compiling) lists() {
 	c.list(c.cues, nil, c.data.Cues)
 	for _, b := range c.data.Comparison {
 		for _, p := range b.Patterns {
-			c.put(c.compares, "", p)
+			c.comparison(p, b.Behind)
+		}
+	}
+}
+
+// comparison adds what begins a comparison. What stands behind "+" must follow, and belongs to the name of the food.
+func (c *compiling) comparison(pattern string, behind []string) {
+	begins, follows, _ := strings.Cut(pattern, "+")
+	ahead := [][]item{nil}
+	if follows != "" {
+		ahead = c.ways(follows)
+	}
+	for _, a := range c.ways(begins) {
+		for _, b := range ahead {
+			c.compares.add(slices.Concat(a, b), int32(len(c.comparisons)))
+			c.comparisons = append(c.comparisons, comparison{len(b), behind})
 		}
 	}
 }

@@ -3,6 +3,7 @@ package wording
 import (
 	"fmt"
 	"strings"
+	"unicode/utf8"
 )
 
 // A slot is a place of a pattern that takes more than one certain word.
@@ -184,6 +185,10 @@ func (p *parser) field(text string) ([]item, error) {
 func (p *parser) plain(text string) []item {
 	var out []item
 	for _, t := range tokens(text, p.decimal) {
+		if c, _ := utf8.DecodeRuneInString(t.key); t.kind == mark && t.glued && apostrophe(c) && len(out) > 0 {
+			out[len(out)-1].word += "'" // in a text a letter follows
+			continue
+		}
 		out = append(out, item{word: t.key})
 	}
 	return out

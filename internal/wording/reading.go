@@ -100,6 +100,9 @@ func (j *judge) byRule(r *Reading) {
 // takes tells whether a rule is about a frame.
 func takes(w *rulebook.Wording, f *Frame) bool {
 	in := func(list []string, name string) bool { return len(list) == 0 || slices.Contains(list, name) }
+	if w.Things || f.Thing != "" {
+		return w.Things && f.Thing != "" && in(w.Relations, f.Relation)
+	}
 	if !slices.Contains(w.Relations, f.Relation) || !in(w.Components, f.Component) || !in(w.Functions, f.Function) || !in(w.Forms, f.Form) {
 		return false
 	}

@@ -99,8 +99,8 @@ func (r *reader) gather(at int, phrases []found, book *phrasebook, short bool) [
 // joined is where a list goes on behind a conjunction, or two of them, and the words that may follow; 0 where there is none.
 func (r *reader) joined(at int) int {
 	from := at
-	for range 2 {
-		if at < len(r.tokens) && r.joins[at].end > 0 {
+	for second := range 2 {
+		if at < len(r.tokens) && r.joins[at].end > 0 && (second == 0 || r.after[at].end == 0) {
 			at = int(r.joins[at].end)
 		}
 	}
