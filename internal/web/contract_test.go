@@ -171,7 +171,7 @@ func documents(kind, body string) []string {
 
 // valid targets of each path, and bodies.
 var targets = map[string]string{
-	"/v1/check": "/v1/check", "/v1/check/batch": "/v1/check/batch", "/v1/rules": "/v1/rules", "/v1/rules/{jurisdiction}": "/v1/rules/us?on=2026-12-01",
+	"/v1/check": "/v1/check", "/v1/check/batch": "/v1/check/batch", "/v1/wording": "/v1/wording", "/v1/rules": "/v1/rules", "/v1/rules/{jurisdiction}": "/v1/rules/us?on=2026-12-01",
 	"/v1/rules/{jurisdiction}/changes": "/v1/rules/us/changes?from=2019-01-01&to=2026-12-01", "/v1/foods": "/v1/foods?q=oats", "/v1/foods/{reference}": "/v1/foods/sr:08120",
 	"/schemas": "/schemas", "/schemas/{name}": "/schemas/recipe.schema.json", "/problems": "/problems", "/problems/{name}": "/problems/busy",
 	"/openapi.json": "/openapi.json", "/health": "/health",
@@ -189,12 +189,14 @@ type trial struct {
 }
 
 func trials(method, path string) map[string]trial {
-	body, kind := "", ""
+	body, kind, pinned := "", "", `{"recipe": `+oats
 	switch path {
 	case "/v1/check":
 		body, kind = oats, typeJSON
 	case "/v1/check/batch":
 		body, kind = oats+"\n{}\n", typeNDJSON
+	case "/v1/wording":
+		body, kind, pinned = `{"text": "low in fat, keeps your heart healthy", "recipe": `+oats+`}`, typeJSON, `{"text": "low fat"`
 	}
 	other := map[string]string{"GET": "POST", "POST": "GET"}[method]
 	here := func(s string) string { return s }
@@ -217,7 +219,7 @@ func trials(method, path string) map[string]trial {
 		"405": {target: here, method: other, body: body, headers: ok},
 		"406": {target: here, body: body, headers: append(ok, "Accept: image/png")},
 		"408": {target: here, body: late, headers: ok},
-		"409": {target: here, body: `{"recipe": ` + oats + `, "rules": "sha256:` + strings.Repeat("0", 64) + `"}`, headers: ok},
+		"409": {target: here, body: pinned + `, "rules": "sha256:` + strings.Repeat("0", 64) + `"}`, headers: ok},
 		"413": {target: here, body: body + strings.Repeat(" ", 10), headers: ok, options: func(o *Options) { o.Limits.Answer = 1; o.Limits.BatchBody = 9 }},
 		"414": {target: with(strings.Repeat("a", 3000)), body: body, headers: ok},
 		"415": {target: here, body: body, headers: []string{"Content-Type: text/plain"}},
