@@ -164,7 +164,7 @@ func TestRecords(t *testing.T) {
 	clock := now()
 	o.Now = func() time.Time { clock = clock.Add(5 * time.Millisecond); return clock }
 	h := handler(t, o)
-	ask(t, h, "POST", "/v1/check", `{"recipe": {"id": "o", "ingredients": [{"id": "a", "amount": "100 g", "food": "sr:01001"}], "serving": {"default": {"amount": "30 g"}}, "reference_amount": {"default": "30 g"}, "claims": [{"claim": "fat-low"}, {"text": "unheard of"}]}, "in": ["us"], "on": "2026-12-01"}`,
+	ask(t, h, "POST", "/v1/check", `{"recipe": {"id": "o", "ingredients": [{"id": "a", "amount": "100 g", "food": "sr:01001"}], "serving": {"default": {"amount": "30 g"}}, "reference_amount": {"default": "30 g"}, "claims": [{"claim": "fat-low"}, {"text": "smart fats"}]}, "in": ["us"], "on": "2026-12-01"}`,
 		"Content-Type: application/json", "X-Request-Id: one")
 	ask(t, h, "POST", "/v1/check", `{"id": 1, "x": 1, "y": 2}`, "Content-Type: application/json")
 	ask(t, h, "GET", "/elsewhere", "")
@@ -178,7 +178,7 @@ func TestRecords(t *testing.T) {
 		want any
 	}{
 		{logged[0], "msg", "request"}, {logged[0], "request_id", "one"}, {logged[0], "route", "/v1/check"}, {logged[0], "status", 200.0}, {logged[0], "milliseconds", 5.0},
-		{logged[0], "recipes", 1.0}, {logged[0], "verdicts", map[string]any{"refused": 1.0, "not-listed": 1.0}}, {logged[0], "refusals", map[string]any{"us/claim/fat-low": 1.0}},
+		{logged[0], "recipes", 1.0}, {logged[0], "verdicts", map[string]any{"refused": 1.0, "unread": 1.0}}, {logged[0], "refusals", map[string]any{"us/claim/fat-low": 1.0}},
 		{logged[0], "version", "test"}, {logged[0], "rules_digest", book.Digest}, {logged[0], "rules_version", book.Version},
 		{logged[1], "status", 422.0}, {logged[1], "problem", "/problems/faulty-document"}, {logged[1], "faults", map[string]any{"unknown-member": 2.0, "wrong-type": 1.0, "missing-member": 1.0}},
 		{logged[2], "route", "none"}, {logged[2], "faults", map[string]any{"/problems/not-found": 1.0}},
