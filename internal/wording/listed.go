@@ -42,7 +42,7 @@ func (w *wordings) claims(claims []rulebook.Active[rulebook.Claim], l *language,
 		end := int32(len(w.of))
 		w.of = append(w.of, listed{c, health, how})
 		for _, text := range c.Body.Wordings[l.code] {
-			for _, way := range writtenOut(text, l.decimal) {
+			for _, way := range writtenOut(text, l.decimal, c.Body.Stated) {
 				w.add(way, end)
 			}
 		}
@@ -51,7 +51,7 @@ func (w *wordings) claims(claims []rulebook.Active[rulebook.Claim], l *language,
 
 // writtenOut turns a wording into patterns: a place for a number takes an amount, a per cent or a bare number, and of a wording with
 // other blanks the longest piece without one counts.
-func writtenOut(text string, decimal rune) [][]item {
+func writtenOut(text string, decimal rune, stated *rulebook.Stated) [][]item {
 	before, after, ok := strings.Cut(text, "{number}")
 	if !ok {
 		if way := longestPiece(text, decimal); len(way) > 0 {
@@ -61,11 +61,17 @@ func writtenOut(text string, decimal rune) [][]item {
 	}
 	p := &parser{decimal: decimal}
 	var out [][]item
-	for _, s := range []slot{amountSlot, percentSlot, energySlot} {
+	for _, s := range []slot{amountSlot, energySlot, percentSlot} {
+		if s == percentSlot && stated != nil && slices.Contains(plainAmounts, stated.As) {
+			continue
+		}
 		out = append(out, slices.Concat(p.plain(before), []item{{slot: s}}, p.plain(after)))
 	}
 	return out
 }
+
+// plainAmounts are stated numbers that are never a per cent.
+var plainAmounts = []string{"amount", "at most", "declared amount"}
 
 // longestPiece is a wording, or its longest piece between blanks such as [name of food].
 func longestPiece(text string, decimal rune) []item {

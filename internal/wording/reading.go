@@ -66,8 +66,11 @@ func (j *judge) read(f Frame) Reading {
 		r.Matched, r.Says = rulebook.MatchNone, "the words deny it"
 	case f.listed >= 0:
 		l := &j.wordings.of[f.listed]
-		r.Claim, r.Health, r.Matched = l.claim, l.health, l.how
-		r.Source = &l.claim.Head.Source
+		j.byRule(&r)
+		if r.Claim.ID != l.claim.ID || r.Matched == rulebook.MatchMeaning {
+			r.Says, r.Rule, r.Matched = "", "", l.how
+		}
+		r.Claim, r.Health, r.Source = l.claim, l.health, &l.claim.Head.Source
 	default:
 		j.byRule(&r)
 	}
