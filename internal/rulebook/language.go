@@ -86,6 +86,7 @@ type ListWords struct {
 // HealthWords are functions of the body and what may be said of them.
 type HealthWords struct {
 	Functions Phrases  `json:"functions,omitzero"`
+	Form      string   `json:"form,omitzero"` // which way of saying it, for laws that tell ways apart
 	Patterns  []string `json:"patterns,omitzero"`
 	Source    Source   `json:"source"`
 }

@@ -13,6 +13,8 @@ type Wording struct {
 	Components []string `json:"components,omitzero"` // about one of these; none is any
 	Functions  []string `json:"functions,omitzero"`  // of one of these functions of the body; none is any
 	Forms      []string `json:"forms,omitzero"`      // said in one of these ways; none is any
+	Bare       bool     `json:"bare,omitzero"`       // frames that name neither component nor function
+	Percent    string   `json:"percent,omitzero"`    // frames that state just this per cent
 	Amount     string   `json:"amount,omitzero"`     // one of FrameAmounts: how much is stated
 	Claims     []string `json:"claims,omitzero"`     // shared names in order of preference; {component} and {function} are filled in
 	Matched    string   `json:"matched,omitzero"`    // one of Matches, where it is not the same meaning
@@ -37,10 +39,11 @@ const (
 	MatchHealth     = "health statement"
 	MatchNone       = "no nutrition claim"
 	MatchNothing    = "unmatched"
+	MatchPassed     = "passed over" // nothing that the law or this rule set looks at; there is no reading
 )
 
 // matches are those that a rule may give.
-var matches = []string{"", MatchMeaning, MatchForbidden, MatchAmount, MatchHealth, MatchNone, MatchNothing}
+var matches = []string{"", MatchMeaning, MatchForbidden, MatchAmount, MatchHealth, MatchNone, MatchNothing, MatchPassed}
 
 // Page is the rule about all words of the market; nil where the law says nothing of words.
 func (l *Law) Page() *Wording {

@@ -1,5 +1,8 @@
 package wording
 
+// cued is the relation of a frame in which a component and a cue stand together and no pattern reads them.
+const cued = "cued"
+
 // near is how many tokens may stand between a cue and the component it makes a statement about.
 const near = 3
 
@@ -54,7 +57,7 @@ func (r *reader) unread(at, from, to int, read []bool) (Frame, bool) {
 		read[i] = true
 	}
 	from, to = min(from, at), max(to, int(n.end))
-	f := Frame{Component: r.language.names.means[n.means], from: from, upTo: to, listed: -1, Span: r.span(from, to)}
+	f := Frame{Relation: cued, Component: r.language.names.means[n.means], from: from, upTo: to, listed: -1, Span: r.span(from, to)}
 	f.words = f.Span
 	return f, true
 }

@@ -7,7 +7,7 @@ import (
 
 // A Frame is one thing that a text says: a relation of a component, a thing or a function of the body. It knows no law.
 type Frame struct {
-	Relation   string // of words/concepts.json; "health" for what is said of a function of the body; empty where no pattern reads a cue
+	Relation   string // of words/concepts.json; "health" for what is said of a function of the body; "cued" where no pattern reads them
 	Form       string // the way it was said, where languages tell ways apart
 	Component  string
 	Thing      string   // what is no nutrient, instead of a component

@@ -190,7 +190,7 @@ func (c *compiling) relationPatterns() {
 		c.addPatterns(rule{relation: r.Relation, form: r.Form, component: r.Component, percent: r.Percent, denies: r.Denies}, r.Patterns)
 	}
 	for _, h := range c.data.Health {
-		c.addPatterns(rule{relation: "health", health: true}, h.Patterns)
+		c.addPatterns(rule{relation: "health", form: h.Form, health: true}, h.Patterns)
 	}
 	for _, d := range c.data.Decoys {
 		c.addPatterns(rule{decoy: true}, d.Patterns)

@@ -18,6 +18,7 @@ type listed struct {
 	claim  rulebook.Active[rulebook.Claim]
 	health bool
 	how    string // prescribed or listed
+	blank  bool   // the wording holds a place for a number
 }
 
 // leastWords is how many words of a wording with blanks in it must stand together to be known by.
@@ -40,10 +41,14 @@ func wordingsOf(law *rulebook.Law, l *language) *wordings {
 func (w *wordings) claims(claims []rulebook.Active[rulebook.Claim], l *language, health bool, how string) {
 	for _, c := range claims {
 		end := int32(len(w.of))
-		w.of = append(w.of, listed{c, health, how})
+		w.of = append(w.of, listed{c, health, how, false}, listed{c, health, how, true})
 		for _, text := range c.Body.Wordings[l.code] {
 			for _, way := range writtenOut(text, l.decimal, c.Body.Stated) {
-				w.add(way, end)
+				at := end
+				if len(slotsOf(way)) > 0 {
+					at++
+				}
+				w.add(way, at)
 			}
 		}
 	}
@@ -68,6 +73,10 @@ func writtenOut(text string, decimal rune, stated *rulebook.Stated) [][]item {
 		out = append(out, slices.Concat(p.plain(before), []item{{slot: s}}, p.plain(after)))
 	}
 	return out
+}
+
+func slotsOf(way []item) []item {
+	return slices.DeleteFunc(slices.Clone(way), func(i item) bool { return i.slot == noSlot })
 }
 
 // plainAmounts are stated numbers that are never a per cent.

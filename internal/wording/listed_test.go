@@ -4,7 +4,17 @@ import (
 	"slices"
 	"strings"
 	"testing"
+
+	"gramlaw/internal/rulebook"
 )
+
+// number stands in the blank of a wording.
+func number(s *rulebook.Stated) string {
+	if s != nil && (s.As == "declared amount" || s.As == "amount" || s.As == "at most") {
+		return "5 g"
+	}
+	return "5 %"
+}
 
 // Every wording that a market lists, in a language with words, is read as a claim that lists it. One with a blank is read with a number in it.
 func TestEveryListedWordingIsRead(t *testing.T) {
@@ -17,7 +27,7 @@ func TestEveryListedWordingIsRead(t *testing.T) {
 					continue
 				}
 				for _, w := range words {
-					text := strings.ReplaceAll(w, "{number}", "5 %")
+					text := strings.ReplaceAll(w, "{number}", number(c.Body.Stated))
 					readings, err := e.Judge(law, text, language)
 					if err != nil {
 						t.Fatal(err)

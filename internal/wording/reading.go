@@ -48,7 +48,9 @@ func (e *Engine) Judge(law *rulebook.Law, text, code string) ([]Reading, error) 
 	for _, f := range l.reader(text).read(w, text) {
 		reading := j.read(f)
 		reading.Text = string(runes[f.Span[0]:f.Span[1]])
-		out = append(out, reading)
+		if reading.Matched != rulebook.MatchPassed {
+			out = append(out, reading)
+		}
 	}
 	return out, nil
 }
@@ -67,6 +69,9 @@ func (j *judge) read(f Frame) Reading {
 	case f.listed >= 0:
 		l := &j.wordings.of[f.listed]
 		j.byRule(&r)
+		if l.blank && r.Is() && r.Claim.ID != l.claim.ID { // a rule knows what the number makes of it
+			break
+		}
 		if r.Claim.ID != l.claim.ID || r.Matched == rulebook.MatchMeaning {
 			r.Says, r.Rule, r.Matched = "", "", l.how
 		}
@@ -107,6 +112,9 @@ func takes(w *rulebook.Wording, f *Frame) bool {
 		return w.Things && f.Thing != "" && in(w.Relations, f.Relation)
 	}
 	if !slices.Contains(w.Relations, f.Relation) || !in(w.Components, f.Component) || !in(w.Functions, f.Function) || !in(w.Forms, f.Form) {
+		return false
+	}
+	if w.Bare && (f.Component != "" || f.Function != "") || w.Percent != "" && w.Percent != f.Percent {
 		return false
 	}
 	switch w.Amount {
