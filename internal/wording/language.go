@@ -52,7 +52,6 @@ type language struct {
 	setSlots    map[string]slot
 	patterns    *trie
 	rules       []rule
-	relations   map[string][]string // the first pattern of a relation, to name it
 }
 
 // compiling gathers a language and what is wrong with it.
