@@ -49,6 +49,22 @@ func TestOpenStaysOpen(t *testing.T) {
 	}
 }
 
+// A statement that may stand only under a condition says what it waits for, as long as nobody has stated it.
+func TestOptionalStatementsWait(t *testing.T) {
+	b := smallMarket(t, map[string]string{"declaration.json": declaration(`,"statements":[{"text":{"en":"naturally salty"},"presence":"optional","if":{"fact":"salt added","is":"no"}}]`)})
+	for more, want := range map[string]string{"": "the fact “salt added”", `,"facts":{"salt added":false}`: "may stand", `,"facts":{"salt added":true}`: "absent"} {
+		got := "absent"
+		for _, s := range run(t, b, "xx", "2026-01-01", "", dish(`{"FAT":"1 g","PROCNT":"1 g","NACL":"1 g"}`, more)).Declaration.Statements {
+			if got = strings.Join(s.Needs, "; "); s.Presence == "optional" && got == "" {
+				got = "may stand"
+			}
+		}
+		if got != want {
+			t.Errorf("with %q: %s, want %s", more, got, want)
+		}
+	}
+}
+
 // A partially hydrogenated oil is refused only where its iodine value is above the limit at both ends, and an unknown process is not a
 // clean one.
 func TestOpenHydrogenation(t *testing.T) {

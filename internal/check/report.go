@@ -192,9 +192,9 @@ type Statement struct {
 	Place    string            `json:"place,omitzero"`
 	Presence string            `json:"presence"` // "mandatory", "optional" or "open"
 	Rule     string            `json:"rule"`
+	Needs    []string          `json:"needs,omitzero"` // what would settle whether it must stand, or whether an optional one may
 
-	open  bool     // an amount in it is not determined
-	needs []string // what would settle whether it must stand
+	open bool // an amount in it is not determined
 }
 
 // Verdicts on a claim.

@@ -21,7 +21,7 @@ func (m *market) accompany(out *Claim, b *rulebook.Claim, v *view) {
 		case out.Verdict != Permitted:
 		case s.Presence == "open":
 			out.Printable, out.Why = false, "it is not determined whether a statement must stand beside it"
-			out.Needs = union(out.Needs, s.needs)
+			out.Needs = union(out.Needs, s.Needs)
 		case s.Presence == "mandatory" && s.open:
 			out.Printable, out.Why = false, "a statement that must stand beside it holds an amount that is not determined"
 		}
@@ -98,8 +98,11 @@ func (v *view) statements(list []rulebook.Statement, rule string, c *Claim) []St
 		if s.Presence != "" {
 			st.Presence = s.Presence
 		}
-		if t == quantity.Open && s.Presence != "optional" {
-			st.Presence, st.needs = "open", v.needsFor(s.If)
+		if t == quantity.Open {
+			st.Needs = v.needsFor(s.If)
+			if s.Presence != "optional" {
+				st.Presence = "open"
+			}
 		}
 		out = append(out, st)
 	}
@@ -155,7 +158,7 @@ func (v *view) disclosures(out *Claim) []Statement {
 		st := v.statement(words, g.d.Place, g.id, out)
 		st.Presence = cmp.Or(g.d.Presence, st.Presence)
 		if g.truth == quantity.Open && g.d.Presence != "optional" {
-			st.Presence, st.needs = "open", g.needs
+			st.Presence, st.Needs = "open", g.needs
 		}
 		list = append(list, st)
 	}

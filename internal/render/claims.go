@@ -191,7 +191,7 @@ func terms(m *check.Market, quantities []string, o Options) []string {
 func (p *page) statementList(list []check.Statement, o Options) {
 	for _, s := range list {
 		shown := in(o.Language, s.Text, s.Texts)
-		p.hang(2, 4, "", "“"+shown+"” ("+presence(s.Presence)+place(s.Place)+")")
+		p.hang(2, 4, "", "“"+shown+"” ("+presence(&s)+place(s.Place)+")")
 		p.languages(shown, s.Texts)
 	}
 }
@@ -220,9 +220,13 @@ func (p *page) languages(shown string, texts map[string]string) {
 	}
 }
 
-func presence(s string) string {
-	if s == "open" {
+// presence tells whether a statement must stand; of one that may, what is still to be known before it may.
+func presence(s *check.Statement) string {
+	switch {
+	case s.Presence == "open":
 		return "needed only if a condition holds that is not determined"
+	case len(s.Needs) > 0:
+		return s.Presence + ", once it is settled by data on " + needed(s.Needs)
 	}
-	return s
+	return s.Presence
 }
