@@ -63,6 +63,7 @@ func parts(c *check.Condition) []check.Condition {
 }
 
 func (p *page) group(indent, rest int, label string, c *check.Condition) {
+	c = settled(c)
 	title := "all of these:"
 	switch {
 	case len(c.Any) == 1 || len(c.Any) == 0 && len(c.All) == 1:
@@ -87,6 +88,16 @@ func (p *page) group(indent, rest int, label string, c *check.Condition) {
 	for i := range parts(c) {
 		p.alternative(rest, &parts(c)[i])
 	}
+}
+
+// settled leaves open alternatives out where another one holds: they no longer matter.
+func settled(c *check.Condition) *check.Condition {
+	if len(c.Any) == 0 || c.Holds == nil || !*c.Holds {
+		return c
+	}
+	out := *c
+	out.Any = slices.DeleteFunc(slices.Clone(c.Any), func(x check.Condition) bool { return x.Holds == nil })
+	return &out
 }
 
 // alternative writes one of several conditions; one that is itself made of parts that must all hold keeps them together.
@@ -159,8 +170,8 @@ func figuresOf(c *check.Condition, headroom bool) string {
 			parts = append(parts, away)
 		}
 	}
-	if len(c.Needs) > 0 {
-		parts = append(parts, "settled by data on "+needed(c.Needs))
+	if needs := slices.DeleteFunc(slices.Clone(c.Needs), func(n string) bool { return n == c.Says }); len(needs) > 0 {
+		parts = append(parts, "settled by data on "+needed(needs))
 	}
 	if len(parts) == 0 {
 		return ""

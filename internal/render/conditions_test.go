@@ -29,6 +29,9 @@ func TestConditions(t *testing.T) {
 	}{
 		{"groups of one vanish", check.Condition{All: []check.Condition{{All: []check.Condition{leaf("a", yes)}, Holds: yes}}, Holds: yes}, "yes   a\n"},
 		{"any", check.Condition{Any: []check.Condition{leaf("a", yes), leaf("b", no)}, Holds: yes}, "yes   one of these at least:\n      yes   a\n      NO    b\n"},
+		{"an open alternative beside one that holds", check.Condition{Any: []check.Condition{leaf("a", yes), leaf("b", nil), leaf("c", no)}, Holds: yes},
+			"yes   one of these at least:\n      yes   a\n      NO    c\n"},
+		{"an open alternative where none holds", check.Condition{Any: []check.Condition{leaf("a", no), leaf("b", nil)}}, "open  one of these at least:\n      NO    a\n      open  b\n"},
 		{"count", check.Condition{AtLeast: 2, Of: []check.Condition{leaf("a", yes), leaf("b", nil)}}, "open  2 of these at least:\n      yes   a\n      open  b\n"},
 		{"not", check.Condition{Not: &check.Condition{Says: "a", Holds: no}, Holds: yes}, "yes   does not hold: a\n"},
 		{"not a group", check.Condition{Not: &check.Condition{All: []check.Condition{leaf("a", yes), leaf("b", no)}, Holds: no}, Holds: yes},
@@ -44,6 +47,7 @@ func TestConditions(t *testing.T) {
 			"open  fat at most 3 g: 2.5 to 4 g; settled by data on oats (FAT, FASAT), salt\n"},
 		{"an open range with a typical value", fat(check.Condition{Low: "2.5", High: "4", Exact: text("2.9"), Headroom: "0.1"}),
 			"open  fat at most 3 g: typically 2.9 g, possible 2.5 to 4 g; inside by 0.1 g\n"},
+		{"undecided by the law itself", check.Condition{Says: "the law does not say", Needs: []string{"the law does not say"}}, "open  the law does not say\n"},
 		{"no upper end", fat(check.Condition{Low: "2.5", High: "0"}), "open  fat at most 3 g: 2.5 g or more\n"},
 		{"nothing known", fat(check.Condition{Low: "0", High: "0"}), "open  fat at most 3 g: the value is not determined\n"},
 		{"no value", fat(check.Condition{Low: "0", High: "0", Holds: no}), "NO    fat at most 3 g: no single value can be told\n"},
