@@ -96,7 +96,7 @@ func (m *market) amountOf(p rulebook.Per) string {
 		if !ok {
 			return ""
 		}
-		if s.Measure != "" {
+		if s.Measure != "" && s.Measure != s.Amount.String() {
 			return s.Measure + " (" + s.Amount.String() + ")"
 		}
 		return s.Amount.String()
