@@ -16,6 +16,7 @@ const (
 	writeTimeout  = 60 * time.Second // from the end of the header; of a batch, for each line
 	idleTimeout   = 60 * time.Second
 	maxHeader     = 16 << 10
+	headerSlop    = 4 << 10 // net/http reads so much more than it is told
 	maxConns      = 512
 )
 
@@ -23,7 +24,7 @@ const (
 func Server(h http.Handler) *http.Server {
 	s := &http.Server{
 		Handler: h, ReadHeaderTimeout: headerTimeout, ReadTimeout: readTimeout, WriteTimeout: writeTimeout, IdleTimeout: idleTimeout,
-		MaxHeaderBytes: maxHeader, ErrorLog: log.New(io.Discard, "", 0), // its messages quote requests
+		MaxHeaderBytes: maxHeader - headerSlop, ErrorLog: log.New(io.Discard, "", 0), // its messages quote requests
 		Protocols: new(http.Protocols),
 	}
 	s.Protocols.SetHTTP1(true)

@@ -95,6 +95,8 @@ func TestHostileRequests(t *testing.T) {
 	address := listen(t, handler(t, options()), nil)
 	long := strings.Repeat("a", 32<<10)
 	for _, c := range []struct{ name, text, want string }{
+		{"a header just within the limit", "GET /health HTTP/1.1\r\nHost: x\r\nConnection: close\r\nX: " + long[:15<<10] + "\r\n\r\n", "200 "},
+		{"a header just over the limit", "GET /health HTTP/1.1\r\nHost: x\r\nX: " + long[:17<<10] + "\r\n\r\n", "431 "},
 		{"a long header", "GET /health HTTP/1.1\r\nHost: x\r\nX: " + long + "\r\n\r\n", "431 "},
 		{"many headers", "GET /health HTTP/1.1\r\nHost: x\r\n" + strings.Repeat("X: y\r\n", 8<<10) + "\r\n", "431 "},
 		{"a long path", "GET /" + long + " HTTP/1.1\r\nHost: x\r\n\r\n", "431 "},
