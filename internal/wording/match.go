@@ -136,16 +136,19 @@ func (r *reader) score(from, to int) int {
 
 // A cover is the best way to read a text from a token on.
 type cover struct {
-	score, parts, next int
-	take               int // index of the match taken, or -1
+	score, parts, tokens, next int
+	take                       int // index of the match taken, or -1
 }
 
-// better tells whether one cover is to be taken before another: more is read, else in fewer parts.
+// better tells whether one cover is to be taken before another: more is read, else in fewer parts, else with more marks.
 func (c cover) better(than cover) bool {
 	if c.score != than.score {
 		return c.score > than.score
 	}
-	return c.parts < than.parts
+	if c.parts != than.parts {
+		return c.parts < than.parts
+	}
+	return c.tokens > than.tokens
 }
 
 // best chooses matches that do not overlap and read the most.
@@ -157,8 +160,8 @@ func best(byStart [][]match, preferred func(a, b *match) bool) []*match {
 		covers[i].take, covers[i].next = -1, i+1
 		for k := range byStart[i] {
 			m := &byStart[i][k]
-			c := cover{score: m.score + covers[m.end].score, parts: 1 + covers[m.end].parts, next: m.end, take: k}
-			tie := c.score == covers[i].score && c.parts == covers[i].parts && covers[i].take >= 0
+			c := cover{score: m.score + covers[m.end].score, parts: 1 + covers[m.end].parts, tokens: m.end - i + covers[m.end].tokens, next: m.end, take: k}
+			tie := covers[i].take >= 0 && !c.better(covers[i]) && !covers[i].better(c)
 			if m.score > 0 && (c.better(covers[i]) || tie && preferred(m, &byStart[i][covers[i].take])) {
 				covers[i] = c
 			}
