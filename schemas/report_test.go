@@ -117,7 +117,10 @@ func (c *comparison) value(of reflect.Type, schema map[string]any, at string) {
 			c.value(of.Elem(), more, at+"/*")
 		}
 	case reflect.Struct:
-		name := strings.TrimPrefix(schema["$ref"].(string), "#/$defs/")
+		name, own := strings.CutPrefix(schema["$ref"].(string), "#/$defs/")
+		if !own { // another schema describes it
+			return
+		}
 		c.names = append(c.names, name)
 		c.object(of, c.defs[name].(map[string]any), at)
 	}

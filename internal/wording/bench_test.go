@@ -8,7 +8,7 @@ import (
 )
 
 // phrase200 has 200 characters.
-const phrase200 = "Now with 50 % less saturated fat than our classic: low in sugar and salt, rich in fibre, vitamins A, C and D, no trans fat, 0 g trans fat per serving; free from palm oil. Keeps your heart healthy! Yes."
+const phrase200 = "Now with 50 % less saturated fat than our classic: low in sugar and salt, rich in fibre, vitamins A, C and D, no trans fat, 0 g trans fat per serving; free from palm oil. Keeps your heart healthy!!!!!"
 
 func BenchmarkJudge200(b *testing.B) {
 	book, e := engine(b)
@@ -18,6 +18,7 @@ func BenchmarkJudge200(b *testing.B) {
 	for _, j := range book.Jurisdictions() {
 		b.Run(j, func(b *testing.B) {
 			law := lawOf(book, j)
+			e.Judge(law, phrase200, "en") // compiles the wordings of the law
 			b.ReportAllocs()
 			for b.Loop() {
 				if _, err := e.Judge(law, phrase200, "en"); err != nil {
