@@ -54,6 +54,7 @@ func bundle(into map[string]any, name string) error {
 
 const (
 	schemaSuffix = ".schema.json"
+	schemaURN    = "urn:gramlaw:schema:"
 	ownDef       = "#/$defs/"
 	component    = "#/components/schemas/"
 )
@@ -83,6 +84,9 @@ func here(ref, within string) string {
 	}
 	file, def, has := strings.Cut(ref, ownDef)
 	name, ok := strings.CutSuffix(file, schemaSuffix)
+	if !ok {
+		name, ok = strings.CutPrefix(file, schemaURN)
+	}
 	switch {
 	case ok && has:
 		return component + name + "." + def
