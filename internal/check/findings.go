@@ -144,7 +144,8 @@ func (c *checker) contents(tags map[string]bool) Contents {
 		}
 		scale := per.Mul(quantity.Scaled(1, -int32(e)))
 		total := c.batch.Total(f.ID).Mul(scale)
-		one := Component{Low: exactText(quantity.Max(total.Low(), quantity.Ratio{})), High: exactText(total.High()), Unit: string(f.Unit),
+		most := quantity.FromInt(100).Mul(quantity.Scaled(1, -int32(e))) // no food holds more than itself
+		one := Component{Low: exactText(quantity.Max(total.Low(), quantity.Ratio{})), High: exactText(quantity.Min(total.High(), most)), Unit: string(f.Unit),
 			Coverage: c.batch.Coverage(f.ID).Brief(4)}
 		if v, ok := total.Central(); ok {
 			one.Value = text(v)

@@ -11,7 +11,11 @@ const mandatory, voluntary, leftOut, determined = "mandatory", "optional", "may 
 // declaration writes what the label may state: a table for every basis, then what the table cannot show.
 func (p *page) declaration(m *check.Market, o Options) {
 	d := &m.Declaration
-	p.heading("Declaration: "+in(o.Language, d.Title, nil), '-')
+	title := "Declaration"
+	if d.Title != "" {
+		title += ": " + in(o.Language, d.Title, nil)
+	}
+	p.heading(title, '-')
 	if len(d.Lines) == 0 {
 		p.line(0, "The rules of this market have no line that can be computed for this product.")
 	}

@@ -109,7 +109,7 @@ func (p *page) formats(d *check.Table) {
 func (p *page) simplified(s *check.Simplified) {
 	title, text := "A shorter format is allowed", s.Name+", without "+strings.Join(s.LeaveOut, ", ")
 	if len(s.Repeats) > 0 {
-		title, text = "May be repeated elsewhere", strings.Join(s.Repeats, ", ")+" ("+s.Name+")"
+		title, text = "May be repeated elsewhere", strings.Join(slices.Compact(slices.Clone(s.Repeats)), ", ")+" ("+s.Name+")"
 	}
 	if s.Says != "" {
 		states := map[string]string{"": "then states", "optional": "may then state", "open": "then states, where it must (not determined),"}[s.SaysPresence]
