@@ -23,6 +23,7 @@ type wordsOrder struct {
 	order
 	check.WordingRequest
 	ofFood bool // the recipe was made of one food
+	stated bool // the text stands in the document
 }
 
 func wordingMembers() []string {
@@ -83,6 +84,9 @@ func (x *exchange) wording(ctx context.Context, doc []byte) ([]byte, *Problem) {
 // withOthers adds what is wrong with the request to what is wrong with the document, where the same member has no fault yet.
 func (o *wordsOrder) withOthers(faults recipe.Faults, book *rulebook.Book) recipe.Faults {
 	for _, f := range o.place(o.WordingRequest.Faults(book)) {
+		if f.Pointer == "/text" && o.Text == "" && !o.stated {
+			continue
+		}
 		if !slices.ContainsFunc(faults, func(had recipe.Fault) bool { return had.Pointer == f.Pointer }) {
 			faults = append(faults, f)
 		}
@@ -106,7 +110,7 @@ func readWording(doc []byte) (*wordsOrder, recipe.Faults) {
 	e := &envelope{doc: doc}
 	e.scan()
 	o := &wordsOrder{order: order{within: "/recipe"}}
-	if e.members == nil && e.broken == nil {
+	if doc := bytes.TrimLeft(doc, " \t\r\n"); e.broken == nil && (len(doc) == 0 || doc[0] != '{') {
 		e.fault("", recipe.WrongType, "an object with the member text is wanted")
 		return o, e.faults
 	}
@@ -115,6 +119,7 @@ func readWording(doc []byte) (*wordsOrder, recipe.Faults) {
 		stated[m.name] = true
 		e.words(o, m, at)
 	})
+	o.stated = stated["text"]
 	switch {
 	case stated["recipe"] && stated["food"]:
 		e.fault("/food", codeTwoProducts, "a recipe stands beside the food; keep one")
