@@ -22,7 +22,7 @@ type listEnd struct {
 	names []string
 }
 
-// mostNames bounds a list of names, mostEnds the ways in which one can end.
+// mostNames bounds a list of names.
 const mostNames = 12
 
 func (l *language) reader(text string) *reader {
@@ -67,25 +67,11 @@ func (r *reader) gather(at int, phrases []found, book *phrasebook, short bool) [
 	out := []listEnd{}
 	var names []string
 	for len(names) < mostNames && at < len(r.tokens) {
-		f, whole := phrases[at], true
-		name := ""
-		switch {
-		case f.end > 0:
-			name = book.means[f.means]
-			if b := r.before[at]; short && b.end > f.end && r.joined(int(b.end)) > 0 {
-				f, name, whole = b, r.language.before.means[b.means], false
-			}
-		case short && r.before[at].end > 0 && r.joined(int(r.before[at].end)) > 0:
-			f, whole = r.before[at], false
-			name = r.language.before.means[f.means]
-		case short && len(names) > 0 && r.after[at].end > 0:
-			f = r.after[at]
-			name = r.language.after.means[f.means]
-		default:
+		name, end, whole := r.member(at, phrases, book, short, len(names) > 0)
+		if end == 0 {
 			return out
 		}
 		names = append(names[:len(names):len(names)], name)
-		end := int(f.end)
 		if whole {
 			out = append(out, listEnd{end, names})
 		}
@@ -94,6 +80,21 @@ func (r *reader) gather(at int, phrases []found, book *phrasebook, short bool) [
 		}
 	}
 	return out
+}
+
+// member is a name of a list that begins at a token, and where it ends; 0 where none does. A short form in front of others does not end a
+// list. Of a name and a longer short form the latter counts where the list goes on.
+func (r *reader) member(at int, phrases []found, book *phrasebook, short, behind bool) (name string, end int, whole bool) {
+	f, b := phrases[at], r.before[at]
+	switch {
+	case short && b.end > f.end && r.joined(int(b.end)) > 0:
+		return r.language.before.means[b.means], int(b.end), false
+	case f.end > 0:
+		return book.means[f.means], int(f.end), true
+	case short && behind && r.after[at].end > 0:
+		return r.language.after.means[r.after[at].means], int(r.after[at].end), true
+	}
+	return "", 0, false
 }
 
 // joined is where a list goes on behind a conjunction, or two of them, and the words that may follow; 0 where there is none.
