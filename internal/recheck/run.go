@@ -148,7 +148,7 @@ func (w *work) list(ctx context.Context, out chan<- batch) ([]string, error) {
 			return nil, fmt.Errorf("the recipes cannot be listed: %w", err)
 		}
 		for _, o := range page {
-			if o.IsDir || !strings.HasSuffix(o.Key, ".json") || strings.HasPrefix(o.Key, ownPrefix) {
+			if o.IsDir || !strings.HasSuffix(o.Key, ".json") || strings.HasPrefix(o.Key, ownPrefix) || strings.HasPrefix(o.Key, partsPrefix) || o.Key == SummaryName {
 				continue
 			}
 			if objects = append(objects, o); len(objects) == w.batchSize() {

@@ -5,7 +5,6 @@ import (
 	"context"
 	"errors"
 	"fmt"
-	"io"
 	"slices"
 	"strconv"
 	"strings"
@@ -52,21 +51,19 @@ func History(ctx context.Context, b *blob.Bucket, most int) ([]*Pointer, error) 
 
 // entries lists the numbers of the history, rising. What is no entry is passed over.
 func entries(ctx context.Context, b *blob.Bucket) ([]int, error) {
+	objects, err := objects(ctx, b, pointerPrefix)
+	if err != nil {
+		return nil, err
+	}
 	var numbers []int
-	for it := b.List(&blob.ListOptions{Prefix: pointerPrefix}); ; {
-		object, err := it.Next(ctx)
-		if errors.Is(err, io.EOF) {
-			slices.Sort(numbers)
-			return numbers, nil
-		}
-		if err != nil {
-			return nil, err
-		}
+	for _, object := range objects {
 		name := strings.TrimSuffix(strings.TrimPrefix(object.Key, pointerPrefix), ".json")
 		if n, err := strconv.Atoi(name); err == nil && object.Key == pointerKey(n) {
 			numbers = append(numbers, n)
 		}
 	}
+	slices.Sort(numbers)
+	return numbers, nil
 }
 
 func entry(ctx context.Context, b *blob.Bucket, number int) (*Pointer, error) {

@@ -10,6 +10,7 @@ import (
 	"time"
 
 	"gocloud.dev/blob"
+	"gocloud.dev/gcerrors"
 )
 
 // A Stored is a set that lies in the store.
@@ -21,20 +22,47 @@ type Stored struct {
 
 // List is every set of the store, the oldest first. It reads none of them.
 func List(ctx context.Context, b *blob.Bucket) ([]Stored, error) {
+	objects, err := objects(ctx, b, setsPrefix)
+	if err != nil {
+		return nil, err
+	}
 	out := []Stored{}
-	for it := b.List(&blob.ListOptions{Prefix: setsPrefix}); ; {
+	for _, object := range objects {
+		digest := "sha256:" + strings.TrimSuffix(strings.TrimPrefix(object.Key, setsPrefix), setName)
+		if key, err := setKey(digest); err == nil && key == object.Key {
+			out = append(out, Stored{digest, object.Size, object.ModTime.UTC()})
+		}
+	}
+	slices.SortStableFunc(out, func(a, b Stored) int { return a.At.Compare(b.At) })
+	return out, nil
+}
+
+// looks is how often a list is begun again.
+const looks = 20
+
+// objects lists what lies under a prefix. In a folder a file that another writer has just given its name can vanish while the list is made;
+// then it is begun again.
+func objects(ctx context.Context, b *blob.Bucket, prefix string) (list []*blob.ListObject, err error) {
+	for range looks {
+		list, err = listOnce(ctx, b, prefix)
+		if err == nil || gcerrors.Code(err) != gcerrors.NotFound {
+			break
+		}
+	}
+	return list, err
+}
+
+func listOnce(ctx context.Context, b *blob.Bucket, prefix string) ([]*blob.ListObject, error) {
+	var out []*blob.ListObject
+	for it := b.List(&blob.ListOptions{Prefix: prefix}); ; {
 		object, err := it.Next(ctx)
 		if errors.Is(err, io.EOF) {
-			slices.SortStableFunc(out, func(a, b Stored) int { return a.At.Compare(b.At) })
 			return out, nil
 		}
 		if err != nil {
 			return nil, err
 		}
-		digest := "sha256:" + strings.TrimSuffix(strings.TrimPrefix(object.Key, setsPrefix), setName)
-		if key, err := setKey(digest); err == nil && key == object.Key {
-			out = append(out, Stored{digest, object.Size, object.ModTime.UTC()})
-		}
+		out = append(out, object)
 	}
 }
 

@@ -16,18 +16,18 @@ import (
 )
 
 // secret is a recipe in which every word of a text, and every amount, is found nowhere else.
-const secret = `{"id": "zzq-recipeid", "name": "Zzqname Zzqother", "ingredients": [
-	{"id": "zzq-one", "name": "zzqflour", "amount": "417.3 g", "food": "sr:20081"},
-	{"id": "zzq-two", "name": "zzqfat", "amount": "91.7 g", "process": "refined", "composition": {"per": "100 g", "source": "zzqsupplier zzqspec", "components": {"FAT": "98.7 g"},
+const secret = `{"id": "zzqvq-recipeid", "name": "Zzqvqname Zzqvqother", "ingredients": [
+	{"id": "zzqvq-one", "name": "zzqvqflour", "amount": "417.3 g", "food": "sr:20081"},
+	{"id": "zzqvq-two", "name": "zzqvqfat", "amount": "91.7 g", "process": "refined", "composition": {"per": "100 g", "source": "zzqvqsupplier zzqvqspec", "components": {"FAT": "98.7 g"},
 		"fatty_acids": {"basis": "percent of FAME", "profile": {"16:0": "44.17", "18:1 9c": "55.83"}}}},
-	{"id": "zzq-three", "amount": "13.9 g", "recipe": {"ingredients": [{"id": "zzq-inner", "amount": "7.7 g", "food": "sr:19335", "zero_by_nature": [{"component": "FATRN", "reason": "zzqreason"}]}]}}],
-	"yield": {"mass": "488.8 g", "explanation": "zzqoven"}, "package": {"net": "187.3 g"}, "serving": {"default": {"amount": "31.7 g", "measure": "zzqpieces"}},
-	"claims": [{"text": "zzqclaim free of zzqworry"}, {"claim": "fat-low"}, {"claim": "fat-reduced", "stated": "37 %", "against": "zzqclassic"}],
-	"reference_foods": {"zzqclassic": {"kind": "own regular product", "recipe": {"ingredients": [{"id": "zzq-ref", "amount": "53.1 g", "food": "sr:01001"}]}}}}`
+	{"id": "zzqvq-three", "amount": "13.9 g", "recipe": {"ingredients": [{"id": "zzqvq-inner", "amount": "7.7 g", "food": "sr:19335", "zero_by_nature": [{"component": "FATRN", "reason": "zzqvqreason"}]}]}}],
+	"yield": {"mass": "488.8 g", "explanation": "zzqvqoven"}, "package": {"net": "187.3 g"}, "serving": {"default": {"amount": "31.7 g", "measure": "zzqvqpieces"}},
+	"claims": [{"text": "zzqvqclaim free of zzqvqworry"}, {"claim": "fat-low"}, {"claim": "fat-reduced", "stated": "37 %", "against": "zzqvqclassic"}],
+	"reference_foods": {"zzqvqclassic": {"kind": "own regular product", "recipe": {"ingredients": [{"id": "zzqvq-ref", "amount": "53.1 g", "food": "sr:01001"}]}}}}`
 
 // words are the texts of a document, in the pieces a log could show: names of members that are data, words, numbers.
 func words(doc string) []string {
-	found := regexp.MustCompile(`[a-z]*zzq[a-z]*|[0-9]+[.][0-9]+|sr:[0-9]{5}|[0-9]{2}:[0-9] [0-9]c|percent of FAME|own regular|refined`).FindAllString(strings.ToLower(doc), -1)
+	found := regexp.MustCompile(`[a-z]*zzqvq[a-z]*|[0-9]+[.][0-9]+|sr:[0-9]{5}|[0-9]{2}:[0-9] [0-9]c|percent of FAME|own regular|refined`).FindAllString(strings.ToLower(doc), -1)
 	slices.Sort(found)
 	return slices.Compact(found)
 }
@@ -40,19 +40,19 @@ func breaks() map[string]func(string) string {
 	return map[string]func(string) string{
 		"as it is":              func(doc string) string { return doc },
 		"in an envelope":        func(doc string) string { return `{"recipe": ` + doc + `, "in": ["us"], "detail": "contributions"}` },
-		"an unknown market":     func(doc string) string { return `{"recipe": ` + doc + `, "in": ["zzqmarket"]}` },
-		"an unknown member":     replace(`"id"`, `"zzqmember": 1, "id"`),
-		"a wrong amount":        replace("417.3 g", "417.3 zzqunit"),
+		"an unknown market":     func(doc string) string { return `{"recipe": ` + doc + `, "in": ["zzqvqmarket"]}` },
+		"an unknown member":     replace(`"id"`, `"zzqvqmember": 1, "id"`),
+		"a wrong amount":        replace("417.3 g", "417.3 zzqvqunit"),
 		"an unknown food":       replace("sr:20081", "sr:99999"),
 		"an unknown component":  replace(`"FAT"`, `"ZZQTAG"`),
-		"an unknown acid":       replace("16:0", "zzq:0"),
-		"an id twice":           replace("zzq-two", "zzq-one"),
-		"an unknown reference":  replace(`"against": "zzqclassic"`, `"against": "zzqnone"`),
+		"an unknown acid":       replace("16:0", "zzqvq:0"),
+		"an id twice":           replace("zzqvq-two", "zzqvq-one"),
+		"an unknown reference":  replace(`"against": "zzqvqclassic"`, `"against": "zzqvqnone"`),
 		"too much fat":          replace("98.7 g", "99.9 mg"),
-		"a category":            replace(`"package"`, `"category": {"us": "zzqcategory"}, "package"`),
+		"a category":            replace(`"package"`, `"category": {"us": "zzqvqcategory"}, "package"`),
 		"broken":                func(doc string) string { return doc[:len(doc)/2] },
-		"followed by something": func(doc string) string { return doc + " zzqmore" },
-		"with bad text":         replace("zzqoven", "zzq\xff"),
+		"followed by something": func(doc string) string { return doc + " zzqvqmore" },
+		"with bad text":         replace("zzqvqoven", "zzqvq\xff"),
 	}
 }
 
@@ -65,7 +65,7 @@ func TestLogsHoldNothingOfARecipe(t *testing.T) {
 	seen := map[string]bool{}
 	for name, spoil := range breaks() {
 		doc := spoil(secret)
-		for _, w := range []string{"zzq", "417.3"} {
+		for _, w := range []string{"zzqvq", "417.3"} {
 			if !strings.Contains(doc, w) {
 				t.Errorf("%s: the document has no %s to be found", name, w)
 			}
@@ -74,12 +74,12 @@ func TestLogsHoldNothingOfARecipe(t *testing.T) {
 		for _, w := range []int{
 			ask(t, h, "POST", "/v1/check", doc, "Content-Type: application/json").Code,
 			ask(t, h, "POST", "/v1/check/batch", line+"\n"+line, "Content-Type: application/jsonl").Code,
-			ask(t, h, "POST", "/v1/check", doc, "Content-Type: text/zzqtype").Code,
-			ask(t, h, "POST", "/v1/check", doc, "Accept: zzq/zzq").Code,
-			ask(t, h, "POST", "/v1/check?zzqquery=417.3", doc, "Content-Type: application/json", "X-Request-Id: zzq\"id").Code,
-			ask(t, h, "GET", "/v1/foods?q=zzqflour", "").Code,
-			ask(t, h, "GET", "/v1/rules/zzqmarket", "").Code,
-			ask(t, h, "GET", "/zzqpath/417.3", "").Code,
+			ask(t, h, "POST", "/v1/check", doc, "Content-Type: text/zzqvqtype").Code,
+			ask(t, h, "POST", "/v1/check", doc, "Accept: zzqvq/zzqvq").Code,
+			ask(t, h, "POST", "/v1/check?zzqvqquery=417.3", doc, "Content-Type: application/json", "X-Request-Id: zzqvq\"id").Code,
+			ask(t, h, "GET", "/v1/foods?q=zzqvqflour", "").Code,
+			ask(t, h, "GET", "/v1/rules/zzqvqmarket", "").Code,
+			ask(t, h, "GET", "/zzqvqpath/417.3", "").Code,
 			ask(t, h, "ZZQ", "/v1/check", doc).Code,
 		} {
 			seen[http.StatusText(w)] = true
@@ -134,7 +134,7 @@ func hunt(t *testing.T, where, text string) {
 }
 
 func TestWordsOfTheSecret(t *testing.T) {
-	for _, w := range []string{"zzqflour", "417.3", "sr:20081", "18:1 9c", "zzqclaim", "zzqreason", "44.17"} {
+	for _, w := range []string{"zzqvqflour", "417.3", "sr:20081", "18:1 9c", "zzqvqclaim", "zzqvqreason", "44.17"} {
 		if !slices.Contains(words(secret), w) {
 			t.Errorf("%s is not looked for", w)
 		}
