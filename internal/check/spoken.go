@@ -32,9 +32,9 @@ func (m *market) spoken(asked []recipe.Claim) []spoken {
 
 // heard reads words. Without words of their language they stay unread.
 func (m *market) heard(a recipe.Claim) []spoken {
-	engine, err := wording.Of(m.c.book)
+	engine := wording.Of(m.c.book)
 	language := cmp.Or(a.Language, m.language())
-	if err != nil || !engine.Covers(m.law, language) || !m.covered() {
+	if !engine.Covers(m.law, language) || !m.covered() {
 		return []spoken{{Claim: a}}
 	}
 	readings, err := engine.Judge(m.law, a.Text, language)

@@ -114,19 +114,14 @@ func Wording(r *recipe.Recipe, book *rulebook.Book, q WordingRequest) (*WordingR
 	if faults := q.Faults(book); len(faults) > 0 {
 		return nil, faults
 	}
-	engine, _ := wording.Of(book) // it is sound: Faults has asked
-	w := &worder{engine: engine, book: book, recipe: r, q: q}
+	w := &worder{engine: wording.Of(book), book: book, recipe: r, q: q}
 	return w.report()
 }
 
 // Faults lists what is wrong with a request whatever the recipe. Each names the member: "text", "language", "on", "in" or "transition".
 func (q WordingRequest) Faults(book *rulebook.Book) recipe.Faults {
 	faults := Request{On: q.On, In: q.In, Transition: q.Transition}.Faults(book)
-	engine, err := wording.Of(book)
-	if err != nil {
-		return append(faults, recipe.Fault{Pointer: "language", Code: wording.CodeWords, Says: err.Error()})
-	}
-	for _, f := range engine.Faults(q.Text, q.Language) {
+	for _, f := range wording.Of(book).Faults(q.Text, q.Language) {
 		faults = append(faults, recipe.Fault{Pointer: f.Member, Code: f.Code, Says: f.Says})
 	}
 	return faults

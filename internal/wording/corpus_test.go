@@ -27,11 +27,7 @@ func engine(t testing.TB) (*rulebook.Book, *wording.Engine) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	e, err := wording.Of(book)
-	if err != nil {
-		t.Fatal(err)
-	}
-	return book, e
+	return book, wording.Of(book)
 }
 
 func lawOf(book *rulebook.Book, j string) *rulebook.Law {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"slices"
 	"strings"
+	"sync"
 	"unicode/utf8"
 
 	tags "golang.org/x/text/language"
@@ -14,39 +15,41 @@ import (
 // MaxText is the longest text that is read, in code points.
 const MaxText = 2000
 
-// An Engine reads texts with the words of one book. It is never changed after Of and may be used by many at once.
+// An Engine reads texts with the words of one book. It may be used by many at once.
 type Engine struct {
 	book      *rulebook.Book
-	languages map[string]*language
+	languages map[string]func() (*language, error) // compiled when first asked for
 }
 
 // kept is the key of what a book and its laws remember for this package.
 type kept string
 
-// Of compiles the languages of a book, once. The error lists what cannot be compiled; tests hold the book's own files free of it.
-func Of(book *rulebook.Book) (*Engine, error) {
-	type result struct {
-		engine *Engine
-		err    error
-	}
-	r := book.Memo.Keep(kept("engine"), func() any {
-		e, err := compileAll(book)
-		return result{e, err}
-	}).(result)
-	return r.engine, r.err
+// Of is the engine of a book, always the same one. A language is compiled when it is first read, once; one whose words cannot be compiled is a
+// *Fault then. Tests hold the book's own files free of that.
+func Of(book *rulebook.Book) *Engine {
+	return book.Memo.Keep(kept("engine"), func() any {
+		e := &Engine{book: book, languages: map[string]func() (*language, error){}}
+		for _, code := range book.Languages() {
+			e.languages[code] = sync.OnceValues(func() (*language, error) {
+				data, _ := book.Language(code)
+				return compile(data)
+			})
+		}
+		return e
+	}).(*Engine)
 }
 
-func compileAll(book *rulebook.Book) (*Engine, error) {
-	e := &Engine{book: book, languages: map[string]*language{}}
-	for _, code := range book.Languages() {
-		data, _ := book.Language(code)
-		l, err := compile(data)
-		if err != nil {
-			return nil, err
-		}
-		e.languages[code] = l
+// language is a language compiled; nil where the book does not know its words.
+func (e *Engine) language(base string) (*language, error) {
+	compiled, ok := e.languages[base]
+	if !ok {
+		return nil, nil
 	}
-	return e, nil
+	l, err := compiled()
+	if err != nil {
+		return nil, &Fault{CodeWords, err.Error(), "language"}
+	}
+	return l, nil
 }
 
 // A Fault tells why a text is not read.
@@ -112,9 +115,9 @@ func (e *Engine) Read(text, code string) ([]Frame, error) {
 		return nil, f[0]
 	}
 	base, _ := Base(code)
-	l := e.languages[base]
+	l, err := e.language(base)
 	if l == nil {
-		return nil, nil
+		return nil, err
 	}
 	r := l.reader(text)
 	return r.read(nil, text), nil

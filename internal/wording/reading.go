@@ -40,7 +40,10 @@ func (e *Engine) Judge(law *rulebook.Law, text, code string) ([]Reading, error) 
 		return nil, nil
 	}
 	base, _ := Base(code)
-	l := e.languages[base]
+	l, err := e.language(base)
+	if err != nil {
+		return nil, err
+	}
 	w := wordingsOf(law, l)
 	j := &judge{law: law, wordings: w}
 	runes := []rune(text)
