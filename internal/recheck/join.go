@@ -3,8 +3,12 @@ package recheck
 import (
 	"context"
 	"encoding/json"
+	"errors"
 	"fmt"
 	"io"
+
+	"gocloud.dev/blob"
+	"gocloud.dev/gcerrors"
 
 	"gramlaw/internal/check"
 )
@@ -49,7 +53,7 @@ func (w *work) join(ctx context.Context, parts []string) (*Summary, error) {
 	}); err != nil {
 		return nil, err
 	}
-	return s, w.clear(ctx, parts)
+	return s, w.clear(ctx)
 }
 
 // each reads the parts one by one.
@@ -82,14 +86,20 @@ func writeLines[T any](to io.Writer, lines []T, also func(*T)) error {
 	return nil
 }
 
-// clear takes the parts away; another start that finds none does them again.
-func (w *work) clear(ctx context.Context, parts []string) error {
-	for _, name := range parts {
-		if err := w.try(ctx, func() error { return w.Out.Delete(ctx, name) }); err != nil && !lasting(err) {
+// clear takes away the parts, and what a killed run may have left half-written beside them; another start that finds none does them again.
+func (w *work) clear(ctx context.Context) error {
+	for it := w.Out.List(&blob.ListOptions{Prefix: partsPrefix + w.id + "/"}); ; {
+		o, err := it.Next(ctx)
+		if errors.Is(err, io.EOF) {
+			return nil
+		}
+		if err == nil {
+			err = w.try(ctx, func() error { return w.Out.Delete(ctx, o.Key) })
+		}
+		if err != nil && gcerrors.Code(err) != gcerrors.NotFound {
 			return err
 		}
 	}
-	return nil
 }
 
 func ruleSet(s check.Side) check.RuleSet {
