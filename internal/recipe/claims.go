@@ -10,6 +10,9 @@ func (d *decoder) claims(at int32) []Claim {
 	return out
 }
 
+// claimMarkets is the member that lists the markets a claim is asked in.
+const claimMarkets = "in"
+
 func (d *decoder) claim(at int32) Claim {
 	c := Claim{Pointer: d.pointer(at)}
 	known := d.object(at, func(name string, m int32) bool {
@@ -20,7 +23,7 @@ func (d *decoder) claim(at int32) Claim {
 			c.Language, _ = scalar(d, m, parseLanguage)
 		case "claim":
 			c.Claim, _ = scalar(d, m, parseClaimName)
-		case "in":
+		case claimMarkets:
 			c.In = d.markets(m)
 		case "stated":
 			if a, ok := scalar(d, m, quantity.ParseAmount); ok {

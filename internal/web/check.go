@@ -12,7 +12,10 @@ import (
 )
 
 // postCheck checks one recipe.
-func postCheck(x *exchange) *Problem {
+func postCheck(x *exchange) *Problem { return x.document(x.check) }
+
+// document takes a JSON document from the body and gives what work makes of it.
+func (x *exchange) document(work func(context.Context, []byte) ([]byte, *Problem)) *Problem {
 	if _, p := x.parameters(); p != nil {
 		return p
 	}
@@ -27,7 +30,7 @@ func postCheck(x *exchange) *Problem {
 	if p != nil {
 		return p
 	}
-	report, p := x.check(x.r.Context(), doc)
+	report, p := work(x.r.Context(), doc)
 	if p != nil {
 		return p
 	}

@@ -151,13 +151,16 @@ func (e *envelope) stopped() bool {
 	return last.broken && last.name == "recipe" && len(e.faults) > 0
 }
 
+// memberMarkets lists markets in every request.
+const memberMarkets = "in"
+
 func (e *envelope) take(o *order, m member, at string) {
 	switch m.name {
 	case "recipe":
 		e.recipe(o, m)
 	case "on":
 		o.request.On = e.text(m, at)
-	case "in":
+	case memberMarkets:
 		o.request.In = e.texts(m, at)
 	case "detail":
 		o.request.Detail = e.text(m, at)

@@ -31,27 +31,7 @@ func wordingMembers() []string {
 }
 
 // postWording reads words.
-func postWording(x *exchange) *Problem {
-	if _, p := x.parameters(); p != nil {
-		return p
-	}
-	mediaType, p := x.choose(typeJSON)
-	if p != nil {
-		return p
-	}
-	if _, p := x.mediaType(typeJSON); p != nil {
-		return p
-	}
-	doc, p := x.body(x.Limits.Body)
-	if p != nil {
-		return p
-	}
-	report, p := x.wording(x.r.Context(), doc)
-	if p != nil {
-		return p
-	}
-	return x.reply(mediaType, report)
-}
+func postWording(x *exchange) *Problem { return x.document(x.wording) }
 
 // wording reads and judges one document, in turn with others.
 func (x *exchange) wording(ctx context.Context, doc []byte) ([]byte, *Problem) {
@@ -138,7 +118,7 @@ func (e *envelope) words(o *wordsOrder, m member, at string) {
 		o.Language = e.text(m, at)
 	case "on":
 		o.On = e.text(m, at)
-	case "in":
+	case memberMarkets:
 		o.In = e.texts(m, at)
 	case "rules":
 		o.rules = e.digest(m, at)
