@@ -16,14 +16,15 @@ import (
 func main() {
 	log.SetFlags(0)
 	in := flag.String("in", "register.csv", "reviewed register")
-	out := flag.String("out", "register_table.go", "generated Go file")
+	out := flag.String("out", "register_table.go", "generated Go file of components")
+	orders := flag.String("orders", "register_orders.go", "generated Go file of their orders")
 	flag.Parse()
-	if err := run(*in, *out); err != nil {
+	if err := run(*in, *out, *orders); err != nil {
 		log.Fatalf("register: %v", err)
 	}
 }
 
-func run(in, out string) error {
+func run(in, out, orders string) error {
 	rows, err := read(in)
 	if err != nil {
 		return err
@@ -32,11 +33,16 @@ func run(in, out string) error {
 	if err != nil {
 		return fmt.Errorf("%s: %w", in, err)
 	}
-	source, err := r.source()
-	if err != nil {
-		return err
+	for file, write := range map[string]func() ([]byte, error){out: r.source, orders: r.orders} {
+		source, err := write()
+		if err != nil {
+			return err
+		}
+		if err := os.WriteFile(file, source, 0o644); err != nil {
+			return err
+		}
 	}
-	return os.WriteFile(out, source, 0o644)
+	return nil
 }
 
 // row is one line of register.csv.

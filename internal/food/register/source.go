@@ -10,17 +10,27 @@ import (
 	"strings"
 )
 
+const head = "// Code generated from register.csv by internal/food/register. DO NOT EDIT.\n\npackage food\n\n"
+
 // source writes the Go table. IDs are indexes plus one.
 func (r *resolved) source() ([]byte, error) {
 	var b bytes.Buffer
-	fmt.Fprintf(&b, "// Code generated from register.csv by internal/food/register. DO NOT EDIT.\n\npackage food\n\n")
+	b.WriteString(head)
 	fmt.Fprintf(&b, "// Count is the number of components in the register.\nconst Count = %d\n\n", len(r.rows))
 	fmt.Fprintf(&b, "// SRCount is how many of them are published in SR28: IDs 1 to SRCount.\nconst SRCount = %d\n\n", r.published())
 	fmt.Fprintf(&b, "var register = [Count]entry{\n")
 	for i := range r.rows {
 		r.entry(&b, i)
 	}
-	fmt.Fprintf(&b, "}\n\nvar parentsFirst = [Count]ID{%s}\n\n", ids(r.order))
+	fmt.Fprintf(&b, "}\n")
+	return format.Source(b.Bytes())
+}
+
+// orders writes the orders in which components are looked for.
+func (r *resolved) orders() ([]byte, error) {
+	var b bytes.Buffer
+	b.WriteString(head)
+	fmt.Fprintf(&b, "var parentsFirst = [Count]ID{%s}\n\n", ids(r.order))
 	fmt.Fprintf(&b, "var placeOf = [Count]uint16{%s}\n\n", numbers(r.places()))
 	r.indexes(&b)
 	return format.Source(b.Bytes())
